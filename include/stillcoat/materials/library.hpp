@@ -1,0 +1,51 @@
+#pragma once
+/// The materials known to a run: those of the installed folder, of the user's folder, and what a design
+/// file replaces.
+
+#include <map>
+#include <optional>
+#include <string>
+#include <vector>
+
+#include "stillcoat/core/document.hpp"
+#include "stillcoat/materials/property.hpp"
+
+namespace stillcoat::materials {
+
+struct Material {
+    std::string name, title, form, composition, remark, file;
+    std::map<PropertyId, Property> properties;
+    std::map<PropertyId, std::string> unknown;  ///< left out, with the reason
+};
+
+struct Reference {
+    std::string citation, doi, seen;
+};
+
+struct Library {
+    std::map<std::string, Material> materials;
+    std::map<std::string, Reference> references;
+
+    /// @throws std::logic_error when there is none of that name
+    const Material& at(const std::string& name) const;
+    std::vector<std::string> names() const;
+};
+
+/// Reads the materials and references of a folder into `library`, replacing materials of the same name.
+/// All problems of all files are added to `problems`.
+void add_folder(Library& library, const std::string& folder, core::Problems& problems);
+
+/// Reads one material file; its references must be known to the library already.
+/// Absent when anything was wrong.
+std::optional<Material> read_material(const core::Document& document, const Library& library,
+                                      core::Problems& problems);
+
+/// Checks that the materials that rules point to exist and do not run in a circle.
+void check_links(const Library& library, core::Problems& problems);
+
+/// Applies a table [material."name"] of a design file: each key a property with a replacing value
+/// `{ value = "118 GPa", uncertainty = "5 GPa", source = "..." }` or `{ alternative = "name" }`.
+void override_properties(Library& library, const std::string& name, const core::Node& table,
+                         core::Problems& problems);
+
+}  // namespace stillcoat::materials

@@ -1,0 +1,71 @@
+#pragma once
+/// The design file: what the user writes about one mirror. Format: README, "The design file".
+
+#include <optional>
+#include <string>
+#include <vector>
+
+#include "stillcoat/core/document.hpp"
+#include "stillcoat/materials/library.hpp"
+
+namespace stillcoat::stack {
+
+inline constexpr std::size_t most_layers = 20'000;
+inline constexpr std::size_t most_frequencies = 20'000;
+
+enum class PolarisationChoice { s, p, unpolarised };
+
+struct Light {
+    double wavelength;  ///< in vacuum [m]
+    double angle;       ///< in the incident medium [rad]
+    PolarisationChoice polarisation;  ///< s at normal incidence
+    std::string medium;               ///< "vacuum", "air" or a material
+    std::optional<double> power;      ///< incident [W]
+};
+
+struct MirrorBody {
+    std::string substrate;
+    std::optional<double> diameter, thickness;  ///< [m]; both or neither, neither: a half-space
+};
+
+struct Band {
+    double from, to;  ///< [Hz]
+    int points_per_decade;
+    std::vector<double> spot;  ///< frequencies quoted in the text [Hz]
+};
+
+struct LayerInput {
+    std::string material;
+    std::optional<double> quarter_waves;  ///< counted at the design wavelength, normal incidence
+    std::optional<double> thickness;      ///< [m]
+    const core::Node* node;               ///< where it stands in the document
+};
+
+struct Coating {
+    double design_wavelength;      ///< [m]
+    double reference_temperature;  ///< thicknesses hold at this temperature [K]
+    double excess_loss;            ///< factor on the films' loss angles; 1 unless stated
+    bool excess_loss_stated;
+    std::vector<LayerInput> layers;  ///< from the light side to the substrate, repeats written out
+};
+
+struct Design {
+    core::Document document;
+    std::string title;
+    Light light;
+    double beam_radius;  ///< 1/e² intensity [m]
+    MirrorBody mirror;
+    double temperature;  ///< [K]
+    Band band;
+    Coating coating;
+    std::vector<std::string> overridden;  ///< materials whose values the file replaces
+};
+
+/// Reads a design; values of [material] tables replace those of `library`.
+/// @throws core::InputError with every problem of the file
+Design read_design(core::Document document, materials::Library& library);
+
+/// Frequencies of the band, evenly spaced in logarithm, ends included [Hz].
+std::vector<double> frequencies(const Band& band);
+
+}  // namespace stillcoat::stack

@@ -1,0 +1,154 @@
+#include "stillcoat/assess/appraisal.hpp"
+
+#include <fmt/format.h>
+
+#include <algorithm>
+#include <cmath>
+#include <set>
+
+#include "assess/noise_assembly.hpp"
+#include "assess/optical_view.hpp"
+#include "stillcoat/optics/standing_wave.hpp"
+
+namespace stillcoat::assess {
+namespace {
+
+using materials::PropertyId;
+
+FaceOptics face_optics(const stack::Mirror& mirror, const optics::Illumination& light) {
+    FaceOptics face{};
+    face.polarisation = light.polarisation;
+    const optics::OpticalStack stack = optical_stack(mirror);
+    face.response = optics::response(stack, light);
+    if (face.response.reflectance > 0.0) {
+        face.phase = optics::phase_response(dispersive_stack(mirror), light);
+    }
+    const optics::StandingWave wave = optics::standing_wave(stack, light);
+    face.stored_energy = optics::stored_energy(wave);
+    face.energy_penetration_depth = optics::energy_penetration_depth(wave);
+    face.face_intensity = optics::face_intensity(wave);
+    for (std::size_t j = 0; j < stack.layers.size(); ++j) {
+        const optics::Peak peak = optics::peak_intensity(wave, j);
+        face.peak_intensity.push_back(peak.intensity);
+        face.peak_depth.push_back(peak.depth);
+    }
+    return face;
+}
+
+std::vector<FieldSample> field_profile(const stack::Mirror& mirror, const optics::Illumination& light) {
+    constexpr int samples_per_layer = 24;
+    const optics::StandingWave wave = optics::standing_wave(optical_stack(mirror), light);
+    std::vector<FieldSample> field;
+    double top = 0.0;
+    for (std::size_t j = 0; j < mirror.layers.size(); ++j) {
+        const stack::MirrorLayer& layer = mirror.layers[j];
+        for (int i = 0; i <= samples_per_layer; ++i) {
+            const double depth = std::min(layer.thickness, layer.thickness * i / samples_per_layer);
+            field.push_back({top + depth, j, layer.optical.index.value, optics::relative_intensity(wave, j, depth)});
+        }
+        top += layer.thickness;
+    }
+    return field;
+}
+
+/// Layers whose absorption nobody stated count as transparent, which the result must say.
+void warn_of_unknown_absorption(const stack::Mirror& mirror, double wavelength,
+                                std::vector<std::string>& warnings) {
+    std::set<std::string> unknown;
+    for (const stack::MirrorLayer& layer : mirror.layers) {
+        if (!layer.optical.extinction_known) unknown.insert(layer.material);
+    }
+    for (const std::string& material : unknown) {
+        warnings.push_back(fmt::format(
+            "absorption of {} at {:g} nm is not stated: its layers count as transparent and the "
+            "absorptance below is a lower limit; give extinction_coefficient in [material.\"{}\"]",
+            material, wavelength * 1e9, material));
+    }
+}
+
+/// The non-dispersive energy is no energy where Re(n²) < 0.
+void note_metals(const stack::Mirror& mirror, std::vector<std::string>& notes) {
+    std::set<std::string> metals;
+    for (const stack::MirrorLayer& layer : mirror.layers) {
+        if (layer.optical.extinction > layer.optical.index.value) metals.insert(layer.material);
+    }
+    for (const std::string& material : metals) {
+        notes.push_back(fmt::format("stored energy of {} is given in the non-dispersive form, which in a metal is not "
+                                    "the whole energy",
+                                    material));
+    }
+}
+
+void note_shift(const stack::Design& design, const stack::Mirror& mirror,
+                   std::vector<std::string>& notes) {
+    if (design.temperature == design.coating.reference_temperature) return;
+    const double ppm = (mirror.optical_path_ratio - 1.0) * 1e6;
+    notes.push_back(fmt::format(
+        "from {:g} K to {:g} K the optical thickness of the coating changes by {:+.0f} ppm: its spectrum "
+        "moves by {:+.2f} nm",
+        design.coating.reference_temperature, design.temperature, ppm,
+        (mirror.optical_path_ratio - 1.0) * design.light.wavelength * 1e9));
+}
+
+std::vector<std::string> without_uncertainty(const std::vector<stack::Ledger::Use>& uses) {
+    std::vector<std::string> list;
+    for (const stack::Ledger::Use& use : uses) {
+        if (use.entry->width.form != materials::Width::Form::not_stated) continue;
+        list.push_back(fmt::format("{} of {}", materials::info(use.property).title, use.material));
+    }
+    return list;
+}
+
+std::vector<std::string> extrapolated_losses(const std::vector<stack::Ledger::Use>& uses) {
+    std::vector<std::string> list;
+    for (const stack::Ledger::Use& use : uses) {
+        if (!use.frequency_extrapolated || !use.entry->frequency) continue;
+        list.push_back(fmt::format("{} of {} was measured from {:g} Hz to {:g} Hz; its power law is used outside too",
+                                   materials::info(use.property).title, use.material,
+                                   use.entry->frequency->lower, use.entry->frequency->upper));
+    }
+    return list;
+}
+
+}  // namespace
+
+double mean_over_faces(const Appraisal& appraisal, double optics::Response::*member) {
+    double sum = 0.0;
+    for (const FaceOptics& face : appraisal.faces) sum += face.response.*member;
+    return sum / static_cast<double>(appraisal.faces.size());
+}
+
+Appraisal appraise(const stack::Design& design, const materials::Library& library) {
+    Appraisal result;
+    stack::Ledger ledger;
+    result.mirror = stack::at_operating_point(design, library, ledger);
+    using stack::PolarisationChoice;
+    const PolarisationChoice choice = design.light.polarisation;
+    std::vector<optics::Polarisation> polarisations;
+    if (choice != PolarisationChoice::p) polarisations.push_back(optics::Polarisation::s);
+    if (choice != PolarisationChoice::s) polarisations.push_back(optics::Polarisation::p);
+    if (design.light.angle == 0.0) polarisations = {optics::Polarisation::s};
+    for (const optics::Polarisation polarisation : polarisations) {
+        result.faces.push_back(
+            face_optics(result.mirror, {design.light.wavelength, design.light.angle, polarisation}));
+    }
+    result.field =
+        field_profile(result.mirror, {design.light.wavelength, design.light.angle, polarisations[0]});
+    warn_of_unknown_absorption(result.mirror, design.light.wavelength, result.warnings);
+    note_metals(result.mirror, result.notes);
+    note_shift(design, result.mirror, result.notes);
+    if (design.light.angle == 0.0) {
+        result.noise = assemble_noise(design, library, result.mirror, ledger, result.warnings);
+    } else {
+        result.noise.missing =
+            "noise is computed for normal incidence only; the optics above hold at this angle";
+    }
+    for (const std::string& note : ledger.notes()) result.notes.push_back(note);
+    for (std::string& note : extrapolated_losses(ledger.uses())) result.notes.push_back(std::move(note));
+    result.analogies = ledger.analogies();
+    result.fixed = without_uncertainty(ledger.uses());
+    result.uses = ledger.uses();
+    return result;
+}
+
+}  // namespace stillcoat::assess

@@ -1,0 +1,127 @@
+#include "stillcoat/core/errors.hpp"
+
+#include <fmt/format.h>
+
+#include <algorithm>
+#include <numeric>
+
+namespace stillcoat::core {
+namespace {
+
+constexpr int longest_excerpt = 100;
+
+std::string where(const Place& place) {
+    if (place.line == 0) return place.file;
+    return fmt::format("{}:{}:{}", place.file, place.line, place.column);
+}
+
+/// Characters, not bytes: continuation bytes of UTF-8 take no room on the screen.
+int width_of(const std::string& text) {
+    return static_cast<int>(std::count_if(
+        text.begin(), text.end(), [](char c) { return (static_cast<unsigned char>(c) & 0xC0) != 0x80; }));
+}
+
+std::string excerpt(const Place& place) {
+    if (place.line == 0 || place.text.empty()) return "";
+    // A long line is shown from a little before the marked stretch.
+    const int size = static_cast<int>(place.text.size());
+    const int mark = std::clamp(place.column - 1, 0, size);
+    int first = mark > longest_excerpt / 2 && size > longest_excerpt ? mark - longest_excerpt / 2 : 0;
+    while (first > 0 && (static_cast<unsigned char>(place.text[first]) & 0xC0) == 0x80) --first;
+    std::string shown = place.text.substr(first, longest_excerpt);
+    while (!shown.empty() && size > first + longest_excerpt &&
+           (static_cast<unsigned char>(shown.back()) & 0x80) != 0) {
+        shown.pop_back();
+    }
+    std::replace(shown.begin(), shown.end(), '\t', ' ');
+    const int before = width_of(place.text.substr(first, mark - first));
+    const int room = std::max(1, static_cast<int>(shown.size()) - (mark - first));
+    const int marked = std::clamp(place.length, 1, room);
+    return fmt::format("\n {:>5} | {}\n       | {}{}", place.line, shown, std::string(before, ' '),
+                       std::string(marked, '^'));
+}
+
+}  // namespace
+
+std::string describe(const Problem& problem) {
+    std::string text;
+    if (!problem.place.file.empty()) text = where(problem.place) + ": ";
+    text += problem.message + excerpt(problem.place);
+    if (problem.other_place) {
+        text += fmt::format("\n       and here: {}", where(*problem.other_place));
+        text += excerpt(*problem.other_place);
+    }
+    if (!problem.hint.empty()) text += "\n       " + problem.hint;
+    return text;
+}
+
+namespace {
+
+std::string describe_all(const std::vector<Problem>& problems) {
+    std::string text;
+    for (const Problem& problem : problems) {
+        if (!text.empty()) text += "\n";
+        text += describe(problem);
+    }
+    return text;
+}
+
+}  // namespace
+
+InputError::InputError(std::vector<Problem> problems)
+    : std::runtime_error(describe_all(problems)), problems_(std::move(problems)) {}
+
+InputError::InputError(const std::string& message, const std::string& hint)
+    : InputError(std::vector<Problem>{Problem{Place{}, message, hint, std::nullopt}}) {}
+
+void Problems::add(Problem problem) { list_.push_back(std::move(problem)); }
+
+void Problems::add(const Place& place, std::string message, std::string hint) {
+    list_.push_back(Problem{place, std::move(message), std::move(hint), std::nullopt});
+}
+
+void Problems::throw_if_any() const {
+    if (list_.empty()) return;
+    std::vector<Problem> sorted = list_;
+    std::stable_sort(sorted.begin(), sorted.end(), [](const Problem& a, const Problem& b) {
+        if (a.place.file != b.place.file) return false;
+        return std::pair(a.place.line, a.place.column) < std::pair(b.place.line, b.place.column);
+    });
+    throw InputError(std::move(sorted));
+}
+
+DomainError::DomainError(const std::string& quantity, double value, const std::string& unit,
+                         const std::string& allowed, const std::string& source)
+    : std::domain_error(fmt::format("{} is {:.6g}{}{}; allowed: {} ({})", quantity, value,
+                                    unit.empty() ? "" : " ", unit, allowed, source)) {}
+
+std::optional<std::string> nearest_spelling(const std::string& word,
+                                            const std::vector<std::string>& candidates) {
+    // Levenshtein distance, one row at a time.
+    const auto distance = [&word](const std::string& other) {
+        std::vector<std::size_t> row(other.size() + 1);
+        std::iota(row.begin(), row.end(), std::size_t{0});
+        for (std::size_t i = 0; i < word.size(); ++i) {
+            std::size_t diagonal = row[0];
+            row[0] = i + 1;
+            for (std::size_t j = 0; j < other.size(); ++j) {
+                const std::size_t substitution = diagonal + (word[i] == other[j] ? 0 : 1);
+                diagonal = row[j + 1];
+                row[j + 1] = std::min({substitution, row[j] + 1, row[j + 1] + 1});
+            }
+        }
+        return row.back();
+    };
+    std::optional<std::string> best;
+    std::size_t best_distance = std::max<std::size_t>(2, word.size() / 2) + 1;
+    for (const std::string& candidate : candidates) {
+        const std::size_t d = distance(candidate);
+        if (d < best_distance) {
+            best_distance = d;
+            best = candidate;
+        }
+    }
+    return best;
+}
+
+}  // namespace stillcoat::core

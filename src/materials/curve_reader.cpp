@@ -1,0 +1,210 @@
+#include "materials/curve_reader.hpp"
+
+#include <fmt/format.h>
+
+#include <algorithm>
+#include <cmath>
+
+namespace stillcoat::materials {
+namespace {
+
+using core::Node;
+using core::TableReader;
+
+/// Factor from the unit that the table names to SI; 1 for pure numbers.
+double unit_scale(TableReader& reader, const core::QuantityKind& kind, bool needed) {
+    if (kind.si_unit == "1") return 1.0;
+    if (!reader.has("unit")) {
+        if (needed) reader.missing("unit", fmt::format("\"{}\"", kind.si_unit));
+        return 1.0;
+    }
+    const std::string unit = reader.required_text("unit");
+    const core::QuantityReading reading = core::read_quantity(1.0, unit, kind);
+    if (!reading.ok) reader.problem_at("unit", "unit in " + reader.name() + ": " + reading.failure.message,
+                                       reading.failure.hint);
+    return reading.ok ? reading.value : 1.0;
+}
+
+void check_values(TableReader& reader, const std::string& key, std::vector<double>& values,
+                  PropertyId property, double scale) {
+    const core::Limits& limits = info(property).limits;
+    for (double& value : values) {
+        value *= scale;
+        const bool ok = (value > limits.lower || (limits.lower_itself && value == limits.lower)) &&
+                        value < limits.upper;
+        if (!ok) {
+            reader.problem_at(key, fmt::format("{} in {} holds {}", key, reader.name(), value / scale),
+                              "each must be " + limits.words);
+            return;
+        }
+    }
+}
+
+bool increasing(const std::vector<double>& list) {
+    return std::adjacent_find(list.begin(), list.end(), std::greater_equal<>()) == list.end();
+}
+
+/// Abscissa and values of a table with equal lengths and strictly increasing abscissa.
+std::pair<std::vector<double>, std::vector<double>> read_table(TableReader& reader,
+                                                               const std::string& axis,
+                                                               PropertyId property, double scale) {
+    std::vector<double> x = reader.numbers(axis).value_or(std::vector<double>{});
+    if (!reader.has("values")) reader.missing("values", "[...]");
+    std::vector<double> y = reader.numbers("values").value_or(std::vector<double>{});
+    check_values(reader, "values", y, property, scale);
+    if (x.size() != y.size() || x.size() < 2) {
+        reader.problem_at("values", fmt::format("{} in {} has {} entries, values has {}", axis,
+                                                reader.name(), x.size(), y.size()),
+                          "both need the same number, two or more");
+        return {{1.0, 2.0}, {1.0, 1.0}};
+    }
+    if (!increasing(x) || x.front() <= 0.0) {
+        reader.problem_at(axis, axis + " in " + reader.name() + " must increase from entry to entry");
+        return {{1.0, 2.0}, {1.0, 1.0}};
+    }
+    return {x, y};
+}
+
+/// A list of numbers, or a list of lists of numbers (polynomials in T).
+std::vector<std::vector<double>> read_polynomials(TableReader& reader, const std::string& key,
+                                                  bool& nested) {
+    std::vector<std::vector<double>> list;
+    const Node* node = reader.find(key);
+    nested = node != nullptr && !node->items.empty() && node->items[0].type == Node::Type::array;
+    if (!nested) {
+        for (double number : reader.numbers(key).value_or(std::vector<double>{})) list.push_back({number});
+        return list;
+    }
+    for (const Node& row : node->items) {
+        std::vector<double> coefficients;
+        for (const Node& item : row.items) {
+            if (!item.is_number() || !std::isfinite(item.number)) {
+                reader.problem_at(key, key + " in " + reader.name() + " must hold finite numbers only");
+                return {};
+            }
+            coefficients.push_back(item.number);
+        }
+        list.push_back(std::move(coefficients));
+    }
+    return list;
+}
+
+Sellmeier read_sellmeier(TableReader& reader) {
+    Sellmeier formula{};
+    bool nested_strength = false;
+    bool nested_resonance = false;
+    formula.strength = read_polynomials(reader, "sellmeier_strength", nested_strength);
+    formula.resonance = read_polynomials(reader, "sellmeier_resonance_um", nested_resonance);
+    formula.constant = reader.number("sellmeier_constant", core::any_value()).value_or(0.0);
+    formula.depends_on_temperature = nested_strength || nested_resonance;
+    if (formula.strength.empty() || formula.strength.size() != formula.resonance.size()) {
+        reader.problem_at("sellmeier_strength",
+                          fmt::format("{} has {} strengths and {} resonances", reader.name(),
+                                      formula.strength.size(), formula.resonance.size()),
+                          "each strength needs its resonance");
+    }
+    return formula;
+}
+
+Curve read_scalar(TableReader& reader, const EntryContext& context, double& scale) {
+    const PropertyInfo& about = info(context.property);
+    const Node* node = reader.node().find("value");
+    const bool with_unit_inside = node != nullptr && node->type == Node::Type::text;
+    if (context.from_design || with_unit_inside || about.kind->si_unit == "1") {
+        if (reader.has("unit")) {
+            reader.find("unit");
+            reader.problem_at("unit", "unit in " + reader.name() + " is not used here",
+                              fmt::format("write value = \"{}\"", about.kind->example));
+        }
+        return Scalar{reader.quantity("value", *about.kind, about.limits).value_or(1.0)};
+    }
+    scale = unit_scale(reader, *about.kind, true);
+    core::Limits limits = about.limits;
+    const double number = reader.number("value", core::any_value()).value_or(1.0) * scale;
+    if (!(number > limits.lower || (limits.lower_itself && number == limits.lower)) || !(number < limits.upper)) {
+        reader.problem_at("value", fmt::format("value in {} is {}", reader.name(), number / scale),
+                          "it must be " + limits.words);
+    }
+    return Scalar{number};
+}
+
+void read_index_keys(TableReader& reader, const EntryContext& context, Entry& entry) {
+    entry.offset = reader.number("offset", core::any_value()).value_or(0.0);
+    const bool follows = std::holds_alternative<SameAs>(entry.curve);
+    if (!reader.has("medium") && !context.from_design && !follows) reader.missing("medium", "\"vacuum\"");
+    const std::string medium = reader.choice("medium", {"vacuum", "air", "unstated"}).value_or("vacuum");
+    entry.medium = medium == "air" ? Medium::air : medium == "vacuum" ? Medium::vacuum : Medium::unstated;
+    if (const Node* node = reader.table("rescaled_to"); node != nullptr) {
+        TableReader point(*node, "rescaled_to of " + reader.name(), reader.problems());
+        const auto wavelength = point.number("wavelength_nm", core::positive("nm"));
+        const auto value = point.number("value", core::positive(""));
+        if (wavelength && value) entry.rescaled_to = {*wavelength * 1e-9, *value};
+        point.finish();
+    }
+}
+
+}  // namespace
+
+TemperatureTable read_temperature_table(TableReader& reader, PropertyId property, double scale) {
+    auto [temperature, value] = read_table(reader, "temperature_K", property, scale);
+    return {std::move(temperature), std::move(value)};
+}
+
+double read_curve(TableReader& reader, const EntryContext& context, Entry& entry) {
+    const std::vector<std::string> forms{"value",           "temperature_K",      "wavelength_nm",
+                                         "value_at_1_Hz",   "sellmeier_strength", "cauchy",
+                                         "same_as"};
+    std::vector<std::string> given;
+    std::copy_if(forms.begin(), forms.end(), std::back_inserter(given),
+                 [&reader](const std::string& key) { return reader.has(key); });
+    if (given.empty()) {
+        reader.missing("value", fmt::format("... (or one of {})", fmt::join(forms, ", ")));
+        entry.curve = Scalar{1.0};
+        return 1.0;
+    }
+    if (given.size() > 1) {
+        reader.contradiction(given[0], given[1], "a property has one datum: keep one of the two");
+        for (const std::string& key : forms) reader.find(key);
+        entry.curve = Scalar{1.0};
+        return 1.0;
+    }
+    const PropertyInfo& about = info(context.property);
+    const bool optical = context.property == PropertyId::refractive_index ||
+                         context.property == PropertyId::extinction_coefficient;
+    double scale = 1.0;
+    const std::string& form = given[0];
+    if (form == "value") {
+        entry.curve = read_scalar(reader, context, scale);
+    } else if (form == "temperature_K") {
+        scale = unit_scale(reader, *about.kind, true);
+        entry.curve = read_temperature_table(reader, context.property, scale);
+    } else if (form == "wavelength_nm" && optical) {
+        auto [nanometres, value] = read_table(reader, form, context.property, 1.0);
+        for (double& x : nanometres) x *= 1e-9;
+        entry.curve = WavelengthTable{std::move(nanometres), std::move(value)};
+    } else if (form == "value_at_1_Hz" && is_loss(context.property)) {
+        const double at_1_hz = reader.number(form, about.limits).value_or(0.0);
+        if (!reader.has("exponent")) reader.missing("exponent", "0.0");
+        entry.curve = PowerLaw{at_1_hz, reader.number("exponent", core::any_value()).value_or(0.0)};
+    } else if (form == "sellmeier_strength" && context.property == PropertyId::refractive_index) {
+        entry.curve = read_sellmeier(reader);
+    } else if (form == "cauchy" && context.property == PropertyId::refractive_index) {
+        const std::vector<double> c = reader.numbers(form).value_or(std::vector<double>{});
+        if (c.size() != 3) reader.problem_at(form, "cauchy in " + reader.name() + " needs [A, B, C]");
+        entry.curve = c.size() == 3 ? Cauchy{c[0], c[1], c[2]} : Cauchy{1.0, 0.0, 0.0};
+    } else if (form == "same_as") {
+        entry.curve = SameAs{reader.required_text(form),
+                             reader.number("factor", core::positive("")).value_or(1.0)};
+    } else {
+        reader.find(form);
+        reader.problem_at(form, fmt::format("{} is no form of {}", form, about.key));
+        entry.curve = Scalar{1.0};
+    }
+    if (context.property == PropertyId::refractive_index) read_index_keys(reader, context, entry);
+    entry.at_temperature = reader.number("at_temperature_K", core::positive("K"));
+    reader.number("at_wavelength_nm", core::positive("nm"));
+    reader.number("at_frequency_Hz", core::positive("Hz"));
+    return scale;
+}
+
+}  // namespace stillcoat::materials

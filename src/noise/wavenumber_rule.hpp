@@ -1,0 +1,26 @@
+#pragma once
+/// Quadrature over the transverse wavenumber of a Gaussian beam on a medium that conducts heat:
+///     ∫ k e^{−k²w²/4} f(k) dk ≈ Σ weight_i f(wavenumber_i).
+///
+/// k = k_T sinh u spreads the nodes evenly over the decades between the diffusion length 1/k_T and
+/// the beam radius w, and the branch point of √(k² + i k_T²) stays away from the path.
+/// Gauss–Legendre in u, in as many equal panels as the range asks for; beyond 13/w the Gaussian is
+/// below 1e-18.
+///
+/// Accuracy: 1e-11 and better against twelve times as many nodes, 1e-4 Hz … 1 MHz and w = 30 µm …
+/// 0.1 m.
+
+#include <vector>
+
+namespace stillcoat::noise {
+
+struct WavenumberRule {
+    std::vector<double> wavenumber;  ///< [1/m], > 0
+    std::vector<double> weight;      ///< [1/m²]
+};
+
+/// @param beam_radius w [m], @param diffusion_wavenumber k_T = √(ωC/κ) [1/m], the smallest of all
+/// media, @param refinement multiplies the number of panels; for tests of convergence
+WavenumberRule wavenumber_rule(double beam_radius, double diffusion_wavenumber, int refinement = 1);
+
+}  // namespace stillcoat::noise

@@ -1,0 +1,239 @@
+#include "present/appraisal_json.hpp"
+
+#include <fmt/format.h>
+
+#include <cmath>
+#include <nlohmann/json.hpp>
+#include <numeric>
+#include <stdexcept>
+
+#include "present/sources.hpp"
+
+namespace stillcoat::present {
+namespace {
+
+using Json = nlohmann::ordered_json;
+using assess::Appraisal;
+
+/// The library would write a number that is not finite as null; here that is our mistake.
+Json number(double value) {
+    if (!std::isfinite(value)) throw std::logic_error("a result is not a finite number");
+    return value;
+}
+
+Json number_or_null(std::optional<double> value) { return value ? number(*value) : Json(nullptr); }
+
+Json numbers(const std::vector<double>& list) {
+    Json array = Json::array();
+    for (const double value : list) array.push_back(number(value));
+    return array;
+}
+
+Json operating_point(const stack::Design& design, const Appraisal& appraisal) {
+    const bool normal = design.light.angle == 0.0;
+    const char* names[] = {"s", "p", "unpolarised"};
+    return {{"wavelength_m", number(design.light.wavelength)},
+            {"angle_rad", number(design.light.angle)},
+            {"polarisation", normal ? Json(nullptr) : Json(names[static_cast<int>(design.light.polarisation)])},
+            {"medium", design.light.medium},
+            {"medium_index", number(appraisal.mirror.incident_index.value)},
+            {"incident_power_W", number_or_null(design.light.power)},
+            {"beam_radius_m", number(design.beam_radius)},
+            {"temperature_K", number(design.temperature)}};
+}
+
+Json coating(const stack::Design& design, const Appraisal& appraisal) {
+    Json layers = Json::array();
+    int count = 0;
+    for (const stack::MirrorLayer& layer : appraisal.mirror.layers) {
+        layers.push_back({{"number", ++count},
+                          {"material", layer.material},
+                          {"reference_thickness_m", number(layer.reference_thickness)},
+                          {"thickness_m", number(layer.thickness)},
+                          {"quarter_waves", number(layer.quarter_waves)},
+                          {"refractive_index", number(layer.optical.index.value)},
+                          {"extinction_coefficient",
+                           layer.optical.extinction_known ? number(layer.optical.extinction) : Json(nullptr)}});
+    }
+    return {{"layer_count", count},
+            {"thickness_m", number(appraisal.mirror.coating_thickness)},
+            {"design_wavelength_m", number(design.coating.design_wavelength)},
+            {"reference_temperature_K", number(design.coating.reference_temperature)},
+            {"optical_thickness_ratio", number(appraisal.mirror.optical_path_ratio)},
+            {"excess_loss", number(design.coating.excess_loss)},
+            {"layers", std::move(layers)}};
+}
+
+Json face(const assess::FaceOptics& optics) {
+    const optics::Response& r = optics.response;
+    Json layers = Json::array();
+    for (std::size_t j = 0; j < optics.stored_energy.size(); ++j) {
+        layers.push_back({{"number", j + 1},
+                          {"absorptance", number(r.layer_absorptance[j])},
+                          {"stored_energy_J_per_W", number(optics.stored_energy[j])},
+                          {"peak_intensity_ratio", number(optics.peak_intensity[j])},
+                          {"peak_depth_m", number(optics.peak_depth[j])}});
+    }
+    const bool dark = !std::isfinite(r.log_transmittance);
+    Json document{{"polarisation", optics.polarisation == optics::Polarisation::s ? "s" : "p"},
+                  {"reflectance", number(r.reflectance)},
+                  {"transmittance", number(r.transmittance)},
+                  {"log_transmittance", dark ? Json(nullptr) : number(r.log_transmittance)},
+                  {"absorptance", number(r.absorptance)},
+                  {"loss", number(r.loss)},
+                  {"reflection_amplitude_real", number(r.reflection.real())},
+                  {"reflection_amplitude_imaginary", number(r.reflection.imag())}};
+    std::optional<double> phase, delay, dispersion;
+    if (optics.phase) {
+        phase = optics.phase->reflection_phase;
+        delay = optics.phase->group_delay;
+        dispersion = optics.phase->group_delay_dispersion;
+    }
+    document["reflection_phase_rad"] = number_or_null(phase);
+    document["group_delay_s"] = number_or_null(delay);
+    document["group_delay_dispersion_s2"] = number_or_null(dispersion);
+    document["stored_energy_J_per_W"] =
+        number(std::accumulate(optics.stored_energy.begin(), optics.stored_energy.end(), 0.0));
+    document["energy_penetration_depth_m"] = number(optics.energy_penetration_depth);
+    document["face_intensity_ratio"] = number(optics.face_intensity);
+    document["layers"] = std::move(layers);
+    return document;
+}
+
+Json term(const assess::NoiseTerm& noise_term) {
+    const bool computed = noise_term.missing.empty();
+    return {{"key", noise_term.key},
+            {"title", noise_term.title},
+            {"in_total", noise_term.in_total},
+            {"psd_m2_per_Hz", computed ? numbers(noise_term.psd) : Json(nullptr)},
+            {"spot_psd_m2_per_Hz", computed ? numbers(noise_term.spot_psd) : Json(nullptr)},
+            {"not_computed_because", computed ? Json(nullptr) : Json(noise_term.missing)},
+            {"source", noise_term.source}};
+}
+
+Json noise(const assess::Noise& result) {
+    if (!result.computed) return {{"computed", false}, {"not_computed_because", result.missing}};
+    Json terms = Json::array();
+    for (const assess::NoiseTerm& item : result.terms) terms.push_back(term(item));
+    Json comparisons = Json::array();
+    for (const assess::NoiseTerm& item : result.comparisons) comparisons.push_back(term(item));
+    Json layers = Json::array();
+    for (std::size_t j = 0; j < result.layers.size(); ++j) {
+        layers.push_back({{"number", j + 1},
+                          {"bulk_energy_J_per_N2", number(result.layers[j].bulk_energy)},
+                          {"shear_energy_J_per_N2", number(result.layers[j].shear_energy)},
+                          {"psd_m2_per_Hz", number(result.layers[j].psd)}});
+    }
+    Json dominance = Json::array();
+    for (const assess::Dominance& stretch : result.dominance) {
+        dominance.push_back({{"from_Hz", number(stretch.from)}, {"to_Hz", number(stretch.to)}, {"title", stretch.title}});
+    }
+    return {{"computed", true},
+            {"complete", result.complete},
+            {"frequencies_Hz", numbers(result.frequencies)},
+            {"spot_frequencies_Hz", numbers(result.spot)},
+            {"terms", std::move(terms)},
+            {"total_psd_m2_per_Hz", numbers(result.total)},
+            {"spot_total_psd_m2_per_Hz", numbers(result.spot_total)},
+            {"comparisons", std::move(comparisons)},
+            {"coating_brownian_layer_frequency_Hz", number(result.layer_frequency)},
+            {"coating_brownian_layers", std::move(layers)},
+            {"largest_term", std::move(dominance)}};
+}
+
+Json sources(const materials::Library& library, const Appraisal& appraisal, double temperature) {
+    Json data = Json::array();
+    for (const SourceUse& source : data_sources(library, appraisal, temperature)) {
+        data.push_back({{"key", source.key}, {"citation", source.citation}, {"used_for", source.used_for}});
+    }
+    return {{"formulas", formula_sources(appraisal)}, {"data", std::move(data)}};
+}
+
+std::string layers_csv(const Appraisal& appraisal) {
+    std::string text =
+        "number,material,reference_thickness_m,thickness_m,quarter_waves,refractive_index,"
+        "extinction_coefficient,absorptance,stored_energy_J_per_W,peak_intensity_ratio,"
+        "brownian_psd_m2_per_Hz\n";
+    const assess::FaceOptics& optics = appraisal.faces.front();
+    for (std::size_t j = 0; j < appraisal.mirror.layers.size(); ++j) {
+        const stack::MirrorLayer& layer = appraisal.mirror.layers[j];
+        const bool known = layer.optical.extinction_known;
+        text += fmt::format("{},{},{},{},{},{},{},{},{},{},{}\n", j + 1, layer.material,
+                            layer.reference_thickness, layer.thickness, layer.quarter_waves,
+                            layer.optical.index.value, known ? fmt::format("{}", layer.optical.extinction) : "",
+                            known ? fmt::format("{}", optics.response.layer_absorptance[j]) : "",
+                            optics.stored_energy[j], optics.peak_intensity[j],
+                            appraisal.noise.layers.empty() ? ""
+                                                           : fmt::format("{}", appraisal.noise.layers[j].psd));
+    }
+    return text;
+}
+
+std::string field_csv(const Appraisal& appraisal) {
+    std::string text = "depth_m,layer,material,refractive_index,intensity_ratio\n";
+    for (const assess::FieldSample& sample : appraisal.field) {
+        text += fmt::format("{},{},{},{},{}\n", sample.depth, sample.layer + 1,
+                            appraisal.mirror.layers[sample.layer].material, sample.index, sample.intensity);
+    }
+    return text;
+}
+
+std::string noise_csv(const assess::Noise& result) {
+    if (!result.computed) throw core::InputError("there is no noise table: " + result.missing, "");
+    std::string text = "frequency_Hz,total_psd_m2_per_Hz";
+    std::vector<const assess::NoiseTerm*> columns;
+    for (const auto* group : {&result.terms, &result.comparisons}) {
+        for (const assess::NoiseTerm& item : *group) {
+            if (!item.missing.empty()) continue;
+            columns.push_back(&item);
+            text += "," + item.key + "_psd_m2_per_Hz";
+        }
+    }
+    text += "\n";
+    for (std::size_t i = 0; i < result.frequencies.size(); ++i) {
+        text += fmt::format("{},{}", result.frequencies[i], result.total[i]);
+        for (const assess::NoiseTerm* item : columns) text += fmt::format(",{}", item->psd[i]);
+        text += "\n";
+    }
+    return text;
+}
+
+}  // namespace
+
+std::string appraisal_json(const stack::Design& design, const materials::Library& library,
+                           const Appraisal& appraisal) {
+    Json faces = Json::array();
+    for (const assess::FaceOptics& item : appraisal.faces) faces.push_back(face(item));
+    const Json document{
+        {"document", "appraisal"},
+        {"program", "stillcoat"},
+        {"version", STILLCOAT_VERSION},
+        {"title", design.title},
+        {"operating_point", operating_point(design, appraisal)},
+        {"mirror",
+         {{"substrate", design.mirror.substrate},
+          {"substrate_index", number(appraisal.mirror.substrate_optical.index.value)},
+          {"diameter_m", number_or_null(design.mirror.diameter)},
+          {"thickness_m", number_or_null(design.mirror.thickness)}}},
+        {"coating", coating(design, appraisal)},
+        {"faces", std::move(faces)},
+        {"noise", noise(appraisal.noise)},
+        {"warnings", appraisal.warnings},
+        {"assumed_or_left_out", appraisal.notes},
+        {"values_by_analogy", appraisal.analogies},
+        {"uncertainty", {{"propagated", false}, {"inputs_without_uncertainty", appraisal.fixed}}},
+        {"sources", sources(library, appraisal, design.temperature)},
+    };
+    return document.dump(2) + "\n";
+}
+
+std::string appraisal_csv(const Appraisal& appraisal, CsvTable table) {
+    switch (table) {
+        case CsvTable::noise: return noise_csv(appraisal.noise);
+        case CsvTable::layers: return layers_csv(appraisal);
+        case CsvTable::field: return field_csv(appraisal);
+    }
+    throw std::logic_error("no such table");
+}
+
+}  // namespace stillcoat::present

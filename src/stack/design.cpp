@@ -1,0 +1,178 @@
+#include "stillcoat/stack/design.hpp"
+
+#include <fmt/format.h>
+
+#include <cmath>
+#include <limits>
+
+#include "stack/coating_reader.hpp"
+#include "stillcoat/core/constants.hpp"
+#include "stillcoat/core/reader.hpp"
+
+namespace stillcoat::stack {
+namespace {
+
+using core::Node;
+using core::Problems;
+using core::TableReader;
+namespace kind = core::kind;
+
+const double infinity = std::numeric_limits<double>::infinity();
+
+/// The reader of a required table of the document.
+std::optional<TableReader> section(TableReader& document, const std::string& key,
+                                   const std::string& example) {
+    if (!document.has(key)) {
+        document.find(key);
+        document.problems().add(core::Place{document.node().place().file, 0, 0, 1, ""},
+                                fmt::format("[{}] is missing", key), "add " + example);
+        return std::nullopt;
+    }
+    const Node* node = document.table(key);
+    if (node == nullptr) return std::nullopt;
+    return TableReader(*node, "[" + key + "]", document.problems());
+}
+
+Light read_light(TableReader& document, const materials::Library& library) {
+    Light light{};
+    auto reader = section(document, "light", "[light] with wavelength = \"1064 nm\"");
+    if (!reader) return light;
+    light.wavelength = reader->required_quantity("wavelength", kind::length, core::positive("m"));
+    const core::Limits acute{0.0, core::pi / 2.0, true, false, "from 0 deg to less than 90 deg"};
+    light.angle = reader->quantity("angle", kind::angle, acute).value_or(0.0);
+    const auto polarisation = reader->choice("polarisation", {"s", "p", "unpolarised"});
+    if (light.angle > 0.0 && !reader->has("polarisation")) {
+        reader->missing("polarisation", "\"s\", \"p\" or \"unpolarised\" (off normal incidence)");
+    }
+    light.polarisation = polarisation == "p"             ? PolarisationChoice::p
+                         : polarisation == "unpolarised" ? PolarisationChoice::unpolarised
+                                                         : PolarisationChoice::s;
+    light.medium = reader->text("medium").value_or("vacuum");
+    if (light.medium != "vacuum" && light.medium != "air") {
+        check_material(*reader, "medium", light.medium, library, {"vacuum", "air"});
+    }
+    light.power = reader->quantity("power", kind::power, core::positive("W"));
+    reader->finish();
+    return light;
+}
+
+MirrorBody read_mirror(TableReader& document, const materials::Library& library) {
+    MirrorBody mirror;
+    auto reader = section(document, "mirror", "[mirror] with substrate = \"fused-silica\"");
+    if (!reader) return mirror;
+    mirror.substrate = reader->required_text("substrate");
+    if (!mirror.substrate.empty()) check_material(*reader, "substrate", mirror.substrate, library, {});
+    mirror.diameter = reader->quantity("diameter", kind::length, core::positive("m"));
+    mirror.thickness = reader->quantity("thickness", kind::length, core::positive("m"));
+    if (reader->has("diameter") != reader->has("thickness")) {
+        const bool diameter = reader->has("diameter");
+        reader->problem_at(diameter ? "diameter" : "thickness",
+                           fmt::format("{} in [mirror] stands alone", diameter ? "diameter" : "thickness"),
+                           "give diameter and thickness for a finite mirror, neither for a half-space");
+    }
+    reader->finish();
+    return mirror;
+}
+
+Band read_band(TableReader& document) {
+    Band band{1.0, 1e4, 20, {1.0, 10.0, 100.0, 1000.0}};
+    if (!document.has("band")) {
+        document.find("band");
+        return band;
+    }
+    const Node* node = document.table("band");
+    if (node == nullptr) return band;
+    TableReader reader(*node, "[band]", document.problems());
+    band.from = reader.quantity("from", kind::frequency, core::positive("Hz")).value_or(band.from);
+    band.to = reader.quantity("to", kind::frequency, core::positive("Hz")).value_or(band.to);
+    band.points_per_decade = reader.whole_number("points_per_decade", 1, 1000).value_or(20);
+    const auto spot = reader.quantities("spot", kind::frequency, core::positive("Hz"));
+    if (spot) {
+        band.spot = *spot;
+    } else if (!reader.has("spot")) {
+        std::erase_if(band.spot, [&band](double f) { return f < band.from || f > band.to; });
+    }
+    if (band.from >= band.to) {
+        reader.problem_at("to", fmt::format("the band ends at {:g} Hz, before it begins at {:g} Hz", band.to, band.from),
+                          "to must lie above from");
+    } else if (std::log10(band.to / band.from) * band.points_per_decade >
+               static_cast<double>(most_frequencies)) {
+        reader.problem_at("points_per_decade",
+                          fmt::format("the band has more than {} frequencies", most_frequencies),
+                          "take fewer points per decade");
+    }
+    reader.finish();
+    return band;
+}
+
+void read_overrides(TableReader& document, Design& design, materials::Library& library) {
+    const Node* node = document.table("material");
+    if (node == nullptr) return;
+    for (const core::Entry& entry : node->entries) {
+        const std::string& name = entry.first;
+        if (library.materials.count(name) == 0) {
+            const auto near = core::nearest_spelling(name, library.names());
+            document.problems().add(entry.second.place(), fmt::format("unknown material \"{}\"", name),
+                                    near ? fmt::format("did you mean \"{}\"?", *near)
+                                         : "`stillcoat materials` lists the known ones");
+            continue;
+        }
+        materials::override_properties(library, name, entry.second, document.problems());
+        design.overridden.push_back(name);
+    }
+}
+
+}  // namespace
+
+void check_material(TableReader& reader, const std::string& key, const std::string& name,
+                    const materials::Library& library, const std::vector<std::string>& others) {
+    if (library.materials.count(name) != 0) return;
+    std::vector<std::string> names = library.names();
+    names.insert(names.end(), others.begin(), others.end());
+    const auto near = core::nearest_spelling(name, names);
+    reader.problem_at(key, fmt::format("unknown material \"{}\"", name),
+                      near ? fmt::format("did you mean \"{}\"? `stillcoat materials` lists all", *near)
+                           : "`stillcoat materials` lists the known ones");
+}
+
+Design read_design(core::Document document, materials::Library& library) {
+    Problems problems;
+    Design design{};
+    design.document = std::move(document);
+    TableReader reader(design.document.root, "the design file", problems);
+    design.title = reader.text("title").value_or("Untitled mirror");
+    read_overrides(reader, design, library);
+    design.light = read_light(reader, library);
+    if (auto beam = section(reader, "beam", "[beam] with radius = \"0.42 mm\" (1/e² intensity radius)")) {
+        design.beam_radius = beam->required_quantity("radius", kind::length, core::positive("m"));
+        beam->finish();
+    }
+    design.mirror = read_mirror(reader, library);
+    if (auto room = section(reader, "environment", "[environment] with temperature = \"295 K\"")) {
+        design.temperature = room->required_quantity("temperature", kind::temperature, core::positive("K"));
+        room->finish();
+    }
+    design.band = read_band(reader);
+    if (auto coating = section(reader, "coating", "[coating] and at least one [[coating.block]]")) {
+        design.coating = read_coating(*coating, design.light.wavelength, library);
+        coating->finish();
+    }
+    reader.finish();
+    problems.throw_if_any();
+    return design;
+}
+
+std::vector<double> frequencies(const Band& band) {
+    const double decades = std::log10(band.to / band.from);
+    const int intervals = std::max(1, static_cast<int>(std::lround(decades * band.points_per_decade)));
+    std::vector<double> list;
+    for (int i = 0; i < intervals; ++i) {
+        // Round to twelve digits so that 10 Hz prints as 10 Hz.
+        const double exact = band.from * std::pow(10.0, decades * i / intervals);
+        list.push_back(std::stod(fmt::format("{:.11e}", exact)));
+    }
+    list.push_back(band.to);
+    return list;
+}
+
+}  // namespace stillcoat::stack

@@ -1,0 +1,322 @@
+"""Numerical solutions behind noise_reference.py: elasticity, wave optics and heat flow from first principles.
+
+No closed formula of a noise article is used here, except where a function says so; every quantity is found
+by solving its field equation numerically. z points into the mirror, time factor e^{-iωt} in the optics,
+e^{+iωt} in the heat equation, w is the 1/e² intensity radius, spectra are one-sided.
+"""
+
+import functools
+
+import mpmath as mp
+import numpy as np
+from scipy.integrate import quad_vec
+from scipy.linalg import solve_banded
+
+BOLTZMANN = 1.380649e-23  # [J/K], exact
+
+
+# --- Elasticity ------------------------------------------------------------------------------------------
+
+
+def lame(youngs, poisson):
+    return youngs * poisson / ((1 + poisson) * (1 - 2 * poisson)), youngs / (2 * (1 + poisson))
+
+
+def half_space_wave(youngs, poisson, pressure, shear):
+    """Coefficients (a, b, c, e) of U = (a+bz)e^{-z}, W = (c+ez)e^{-z} [m], u = (iU, W)e^{ix}, at wavenumber 1/m.
+
+    Equilibrium along x in both powers of z, σ_zz(0) = -pressure, σ_xz(0) = i·shear.
+    """
+    lam, mu = lame(youngs, poisson)
+    rows = [
+        [-(lam + mu), -2 * mu, -(lam + mu), lam + mu],  # z⁰ of λ(W'-U) - 2μU + μ(U''+W') = 0
+        [0, 1, 0, 1],                                   # z¹ of the same
+        [-lam, 0, -(lam + 2 * mu), lam + 2 * mu],       # σ_zz(0)
+        [-mu, mu, mu, 0],                               # σ_xz(0)/i
+    ]
+    scaled = np.array(rows, float)
+    scaled[[0, 2, 3]] /= mu
+    return np.linalg.solve(scaled, np.array([0, 0, -pressure, shear], float) / mu)
+
+
+def face_dilatation(substrate):
+    """In-plane dilatation of the face per unit pull [1/Pa]; independent of the wavenumber."""
+    youngs, poisson = substrate["youngs_modulus_Pa"], substrate["poisson_ratio"]
+    return half_space_wave(youngs, poisson, 1.0, 0.0)[0]
+
+
+def half_space_energies(substrate, beam_radius):
+    """(bulk, shear) strain energy of a half-space under a Gaussian force, per squared force [J/N²]."""
+    youngs, poisson = substrate["youngs_modulus_Pa"], substrate["poisson_ratio"]
+    lam, mu = lame(youngs, poisson)
+    a, b, c, e = half_space_wave(youngs, poisson, 1.0, 0.0)
+    node, weight = np.polynomial.laguerre.laggauss(8)  # exact: polynomials times e^{-2z}
+    z, weight = node / 2, weight / 2
+    shrink = -(a + b * z)                              # ε_xx, ε_zz, ε_xz/i without e^{-z}
+    along = e - c - e * z
+    slide = (b - a - b * z + c + e * z) / 2
+    theta = shrink + along
+    squares = (shrink - theta / 3) ** 2 + (along - theta / 3) ** 2 + (theta / 3) ** 2 + 2 * slide**2
+    bulk = np.sum(weight * (lam + 2 * mu / 3) * theta**2) / 2
+    shear = np.sum(weight * mu * squares)
+    # A unit wave stores this energy density times 1/k; Parseval: ∫(k dk/2π) e^{-k²w²/4}/k.
+    scale = float(mp.quad(lambda x: mp.exp(-x * x / 4), [0, 4, 16, 40]) / (2 * mp.pi)) / beam_radius
+    return bulk * scale, shear * scale
+
+
+def layer_energies(layer, substrate, beam_radius, depth_weights, strain_weights):
+    """(bulk, shear) energy of one layer per squared force [J/N²], from the strain tensor at every point.
+
+    The substrate's face imposes ε_rr(r), ε_θθ(r) of a Gaussian pressure p(r); σ_zz = -p(r) g(z).
+    """
+    lam, mu = lame(layer[3], layer[4])
+    node, weight = np.polynomial.legendre.leggauss(160)
+    near, tail = 3 * (node + 1), (node + 1) / 2
+    radius = beam_radius * np.concatenate([near, 6 / tail])
+    measure = beam_radius * np.concatenate([3 * weight, 3 / tail**2 * weight]) * 2 * np.pi * radius
+    ratio = radius / beam_radius
+    pressure = 2 / (np.pi * beam_radius**2) * np.exp(-2 * ratio**2)
+    enclosed = -np.expm1(-2 * ratio**2) / (2 * np.pi * radius**2)  # ∫p r dr / r²
+    eta = face_dilatation(substrate)
+    hoop = -eta * enclosed
+    radial = -eta * (pressure - enclosed)
+    stress = -pressure[:, None] * np.asarray(strain_weights)[None, :]
+    normal = (stress - lam * (radial + hoop)[:, None]) / (lam + 2 * mu)
+    strain = np.stack(np.broadcast_arrays(radial[:, None], hoop[:, None], normal))
+    theta = strain.sum(axis=0)
+    deviator = strain - theta / 3
+    bulk = (lam + 2 * mu / 3) / 2 * theta**2
+    shear = mu * (deviator**2).sum(axis=0)
+    return measure @ bulk @ depth_weights, measure @ shear @ depth_weights
+
+
+def expansion_lengths(layer, substrate):
+    """Motion of the face per kelvin and metre of heated layer: (own thickness, bulge of the substrate).
+
+    Forward: a layer that may not widen grows in thickness and pushes sideways; the sideways force, varying
+    along the face as e^{ikx}, drags the substrate's face and lifts it.
+    """
+    youngs, poisson, alpha = layer[3:6]
+    lam, mu = lame(youngs, poisson)
+    # Unknown ε_zz and σ_∥ of the layer with ε_xx = ε_yy = 0, σ_zz = 0 at 1 K.
+    thermal = (3 * lam + 2 * mu) * alpha
+    own, membrane = np.linalg.solve([[lam + 2 * mu, 0], [lam, -1]], [thermal, thermal])
+    wave = half_space_wave(substrate["youngs_modulus_Pa"], substrate["poisson_ratio"], 0.0, -membrane)
+    return own, -wave[2]
+
+
+def substrate_source(substrate, steepness=2.7):
+    """q_s of the face's motion ∫ q_s e^{-kz} Θ dz, from the thermo-elastic field of Θ = e^{-qz}cos kx, k = 1."""
+    youngs, poisson = substrate["youngs_modulus_Pa"], substrate["poisson_ratio"]
+    mu = lame(youngs, poisson)[1]
+    q = steepness
+    potential = substrate["expansion_per_K"] * (1 + poisson) / (1 - poisson) / (q * q - 1)
+    wave = half_space_wave(youngs, poisson, 2 * mu * potential, 2 * mu * q * potential)
+    return (q * potential - wave[2]) * (q + 1)
+
+
+# --- Optics ----------------------------------------------------------------------------------------------
+
+
+def interface(above, below):
+    """Forward and backward amplitudes just above an interface from those just below it."""
+    total, change = (above + below) / (2 * above), (above - below) / (2 * above)
+    return mp.matrix([[total, change], [change, total]])
+
+
+def propagation(phase):
+    """Amplitudes at the top of a slab from those at its bottom."""
+    return mp.matrix([[mp.expj(-phase), 0], [0, mp.expj(phase)]])
+
+
+def indices(case):
+    end = case["substrate"]
+    inside = [mp.mpc(layer[0], layer[1]) for layer in case["layers"]]
+    return [mp.mpc(case["incident_index"])] + inside + [mp.mpc(end["index"], end["extinction"])]
+
+
+def reflection(wavelength, index, thickness):
+    """Amplitude reflection coefficient referred to the face."""
+    amplitude = mp.matrix([1, 0])
+    for j in range(len(index) - 2, -1, -1):
+        amplitude = interface(index[j], index[j + 1]) * amplitude
+        if j > 0:
+            amplitude = propagation(2 * mp.pi * index[j] * thickness[j - 1] / wavelength) * amplitude
+    return amplitude[1] / amplitude[0]
+
+
+def readout_weights(case, points):
+    """g(z), h(z) at relative depths `points` of every layer, by perturbing the chain of wave matrices.
+
+    Stretching a slice adds phase, an index change couples the two waves; δr follows from the matrices
+    above and the amplitudes below. Photoelasticity: δn = -(n³/2) p12 ε_zz with the complex index.
+    """
+    index = indices(case)
+    layers, count = case["layers"], len(case["layers"])
+    k0 = 2 * mp.pi / mp.mpf(case["wavelength_m"])
+    bottom = [None] * (count + 1)  # amplitudes at the bottom of each layer
+    amplitude = mp.matrix([1, 0])
+    for j in range(count, -1, -1):
+        bottom[j] = interface(index[j], index[j + 1]) * amplitude
+        amplitude = bottom[j] if j == 0 else propagation(k0 * index[j] * layers[j - 1][2]) * bottom[j]
+    incident, r = amplitude[0], amplitude[1] / amplitude[0]
+    above, stretch, change = mp.eye(2), [], []
+    for j in range(1, count + 1):
+        above = above * interface(index[j - 1], index[j])
+        phase = k0 * index[j] * layers[j - 1][2]
+        rows = ([], [])
+        for s in points[j - 1]:
+            field = propagation(phase * (1 - s)) * bottom[j]
+            chain = above * propagation(phase * s)
+            grow = mp.mpc(0, 1) * k0 * index[j] * mp.matrix([field[0], -field[1]])
+            couple = mp.mpc(0, 1) * k0 * (field[0] + field[1]) * mp.matrix([1, -1])
+            for row, slope in zip(rows, (grow, couple)):
+                moved = -(chain * slope)
+                row.append((moved[1] - r * moved[0]) / incident / r)
+        above = above * propagation(phase)
+        elastic_optic = -index[j] ** 3 / 2 * layers[j - 1][10]
+        scale = 2 * mp.mpf(case["incident_index"]) * k0
+        stretch.append(np.array([float(1 - mp.im(a + elastic_optic * b) / scale) for a, b in zip(*rows)]))
+        change.append(np.array([float(-mp.im(b) / scale) for b in rows[1]]))
+    return stretch, change
+
+
+def clamped_index_slope(layer):
+    """dn/dT at fixed strain [1/K] from the value at zero stress, real part of the index."""
+    return layer[6] + layer[0] ** 3 / 2 * (layer[9] + 2 * layer[10]) * layer[5]
+
+
+# --- Heat flow -------------------------------------------------------------------------------------------
+
+
+@functools.lru_cache(maxsize=None)
+def lobatto(order):
+    """Reference element: Gauss points and weights, basis values there, mass and stiffness matrices."""
+    interior = np.polynomial.legendre.Legendre.basis(order).deriv().roots()
+    node = np.concatenate([[-1.0], np.sort(interior.real), [1.0]])
+    point, weight = np.polynomial.legendre.leggauss(order + 8)
+    vandermonde = np.polynomial.legendre.legvander(node, order)
+    modes = np.polynomial.legendre.legvander(point, order)
+    slopes = np.stack([np.polynomial.legendre.Legendre.basis(n).deriv()(point) for n in range(order + 1)], 1)
+    basis = np.linalg.solve(vandermonde.T, modes.T).T
+    slope = np.linalg.solve(vandermonde.T, slopes.T).T
+    slope -= slope.mean(axis=1, keepdims=True)  # a constant has no gradient
+    mass = basis.T @ (weight[:, None] * basis)
+    stiffness = slope.T @ (weight[:, None] * slope)
+    return point, weight, basis, slope, mass, stiffness
+
+
+class HeatStack:
+    """High-order finite elements (Galerkin, Lobatto nodes) through the layers; the substrate is exact."""
+
+    def __init__(self, conductivity, capacity, thickness, loads, order, substrate, source):
+        self.conductivity, self.capacity, self.thickness = map(np.asarray, (conductivity, capacity, thickness))
+        self.loads = loads  # (elements, order+1, sources): ∫ q φ dz
+        self.order, self.substrate, self.source = order, substrate, np.asarray(source)
+
+    def nodal(self, k, omega):
+        """Nodal Θ of iωC Θ - (κΘ')' + κk²Θ = q for all sources, (elements, nodes, sources)."""
+        count = len(self.thickness)
+        _, _, _, _, mass, stiffness = lobatto(self.order)
+        kappa, half = self.conductivity[:, None, None], self.thickness[:, None, None] / 2
+        matrix = kappa / half * stiffness + (kappa * k * k + 1j * omega * self.capacity[:, None, None]) * half * mass
+        edge, inner = [0, self.order], slice(1, self.order)
+        right = np.concatenate([matrix[:, inner][:, :, edge], self.loads[:, inner]], axis=2)
+        solved = np.linalg.solve(matrix[:, inner, inner], right)
+        reduced = matrix[:, edge][:, :, edge] - matrix[:, edge, inner] @ solved[:, :, :2]
+        load = self.loads[:, edge] - matrix[:, edge, inner] @ solved[:, :, 2:]
+        band = np.zeros((3, count + 1), complex)
+        band[0, 1:], band[2, :-1] = reduced[:, 0, 1], reduced[:, 1, 0]
+        band[1, :-1] += reduced[:, 0, 0]
+        band[1, 1:] += reduced[:, 1, 1]
+        right = np.zeros((count + 1, load.shape[2]), complex)
+        right[:-1] += load[:, 0]
+        right[1:] += load[:, 1]
+        kappa, gamma = self.decay(k, omega)
+        band[1, -1] += kappa * gamma                 # the substrate draws κγΘ and ...
+        right[-1] += self.source / (gamma + k)       # ... gives back the heat of its own source
+        skeleton = solve_banded((1, 1), band, right)
+        ends = np.stack([skeleton[:-1], skeleton[1:]], axis=1)
+        inside = solved[:, :, 2:] - solved[:, :, :2] @ ends
+        return np.concatenate([ends[:, :1], inside, ends[:, 1:]], axis=1)
+
+    def decay(self, k, omega):
+        kappa = self.substrate["conductivity_W_per_mK"]
+        return kappa, np.sqrt(k * k + 1j * omega * self.substrate["heat_capacity_J_per_m3K"] / kappa)
+
+    def dissipation(self, k, omega):
+        """Re ∫qΘ dz of every source, as the dissipation ∫κ(|Θ'|² + k²|Θ|²) dz: a sum of positive terms."""
+        kappa, gamma = self.decay(k, omega)
+        if len(self.thickness) == 0:
+            return self.below(k, omega, self.source / (kappa * gamma * (gamma + k)))
+        theta = self.nodal(k, omega)
+        _, weight, basis, slope, _, _ = lobatto(self.order)
+        offset = theta - theta[:, :1]
+        gradient = np.abs(np.einsum("pn,ens->eps", slope, offset)) ** 2
+        value = np.abs(np.einsum("pn,ens->eps", basis, theta)) ** 2
+        half = self.thickness[:, None] / 2
+        density = np.einsum("p,eps->es", weight, gradient) / half
+        density += np.einsum("p,eps->es", weight, value) * half * k * k
+        return self.conductivity @ density + self.below(k, omega, theta[-1, -1])
+
+    def below(self, k, omega, face):
+        """Dissipation in the substrate whose face has the complex temperature `face`."""
+        kappa, gamma = self.decay(k, omega)
+        rate, total = gamma.real, k + gamma
+        if abs(gamma) > 3 * k:  # Θ = A e^{-kz} + B e^{-γz}
+            a = self.source / (1j * omega * self.substrate["heat_capacity_J_per_m3K"])
+            b = face - a
+            cross = a * np.conj(b) / np.conj(total)
+            value = abs(a) ** 2 / (2 * k) + 2 * cross.real + abs(b) ** 2 / (2 * rate)
+            slope = k * abs(a) ** 2 / 2 + 2 * (k * np.conj(gamma) * cross).real + abs(gamma * b) ** 2 / (2 * rate)
+        else:  # Θ = A (e^{-kz} - e^{-γz}) + face e^{-γz}, where A alone grows without bound as γ → k
+            a = self.source / (kappa * total)
+            spread = (k + rate) / (2 * k * rate * abs(total) ** 2)
+            overlap = 1 / (2 * rate * np.conj(total))
+            value = abs(a) ** 2 * spread + 2 * (a * np.conj(face) * overlap).real + abs(face) ** 2 / (2 * rate)
+            tail = a - gamma * face
+            slope = k * k * abs(a) ** 2 * spread - 2 * k * (a * np.conj(tail) * overlap).real
+            slope = slope + abs(tail) ** 2 / (2 * rate)
+        return kappa * (slope + k * k * value)
+
+
+QUANTITIES = ["coating_thermo_elastic", "coating_thermo_refractive", "coating_coherent",
+              "thermo_elastic_with_substrate", "everything_coherent"]
+
+
+def heat_stack(case, order, pieces):
+    """The elements of a case with the five source combinations of QUANTITIES."""
+    layers, substrate = case["layers"], case["substrate"]
+    k0 = 2 * np.pi / case["wavelength_m"]
+    split = [pieces * max(1, int(np.ceil(2 * k0 * layer[0] * layer[2] / 4))) for layer in layers]
+    point, weight, basis = lobatto(order)[:3]
+    depths = [np.concatenate([(e + (point + 1) / 2) / n for e in range(n)]) for n in split]
+    strain, index = readout_weights(case, depths)
+    kappa, capacity, thickness, loads = [], [], [], []
+    for j, (layer, n) in enumerate(zip(layers, split)):
+        own, bulge = expansion_lengths(layer, substrate)
+        elastic = np.full(len(depths[j]), own + bulge)
+        refractive = (strain[j] - 1) * own + index[j] * clamped_index_slope(layer)
+        together = strain[j] * own + bulge + index[j] * clamped_index_slope(layer)
+        source = np.stack([elastic, refractive, together, elastic, together], axis=1).reshape(n, len(point), 5)
+        height = layer[2] / n
+        loads.append(np.einsum("p,pn,eps->ens", weight * height / 2, basis, source))
+        kappa += [layer[7]] * n
+        capacity += [layer[8]] * n
+        thickness += [height] * n
+    loads = np.concatenate(loads) if loads else np.zeros((0, order + 1, 5))
+    below = substrate_source(substrate) * np.array([0, 0, 0, 1, 1])
+    return HeatStack(kappa, capacity, thickness, loads, order, substrate, below)
+
+
+def thermal_psd(stack, case, frequency, limit, tolerance):
+    """PSDs [m²/Hz] = 4k_BT² ∫(k dk/2π) e^{-k²w²/4} Re∫qΘ dz, and the quadrature's own relative error."""
+    omega, w = 2 * np.pi * frequency, case["beam_radius_m"]
+    scale = stack.dissipation(1 / w, omega)
+    scale = np.where(scale > 0, scale, 1.0)
+
+    def integrand(x):
+        return x / (2 * np.pi) * np.exp(-x * x / 4) * stack.dissipation(x / w, omega) / scale
+
+    value, error = quad_vec(integrand, 0, limit, epsabs=0, epsrel=tolerance, norm="max", quadrature="gk21")
+    return 4 * BOLTZMANN * case["temperature_K"] ** 2 / w**2 * value * scale, error / np.max(value)
