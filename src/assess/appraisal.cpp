@@ -141,7 +141,7 @@ Appraisal appraise(const stack::Design& design, const materials::Library& librar
         result.noise = assemble_noise(design, library, result.mirror, ledger, result.warnings);
     } else {
         result.noise.missing =
-            "noise is computed for normal incidence only; the optics above hold at this angle";
+            "noise is computed for normal incidence only; the optics hold at this angle";
     }
     for (const std::string& note : ledger.notes()) result.notes.push_back(note);
     for (std::string& note : extrapolated_losses(ledger.uses())) result.notes.push_back(std::move(note));

@@ -46,6 +46,10 @@ Node to_node(const toml::value& value) {
         case toml::value_t::floating:
             node.type = Node::Type::real;
             node.number = value.as_floating();
+            // A number like 1e400 is read as the largest double; it is infinity to us, which readers refuse.
+            if (std::abs(node.number) == std::numeric_limits<double>::max()) {
+                node.number = std::copysign(std::numeric_limits<double>::infinity(), node.number);
+            }
             break;
         case toml::value_t::boolean:
             node.type = Node::Type::boolean;

@@ -121,7 +121,13 @@ std::optional<std::string> nearest_spelling(const std::string& word,
             best = candidate;
         }
     }
-    return best;
+    if (best) return best;
+    // A word that was cut short: "tantal" for "tantala-ibs".
+    constexpr std::size_t shortest_stem = 3;
+    for (const std::string& candidate : candidates) {
+        if (word.size() >= shortest_stem && candidate.rfind(word, 0) == 0) return candidate;
+    }
+    return std::nullopt;
 }
 
 }  // namespace stillcoat::core

@@ -80,7 +80,7 @@ QuantityReading converted(double number, const std::string& unit_text, const Qua
     }
     const Unit from(ut_parse(unit_system(), unit_text.c_str(), UT_UTF8));
     if (!from) return failed(fmt::format("\"{}\" is not a known unit", unit_text),
-                             example_of(kind) + "; `stillcoat --help-units` lists the usual ones");
+                             example_of(kind) + "; `stillcoat units` lists the usual ones");
     const Unit to(ut_parse(unit_system(), kind.si_unit.c_str(), UT_UTF8));
     const Converter converter(ut_get_converter(from.get(), to.get()));
     // UDUNITS-2 takes hertz and radian per second as one dimension; cycles are what is meant here.

@@ -69,7 +69,7 @@ void TableReader::check(double value, const Node& node, const std::string& key, 
         return;
     }
     problems_.add(node.place(),
-                  fmt::format("{} in {} is {}{}{}", key, name_, value, unit.empty() ? "" : " ", unit),
+                  fmt::format("{} in {} is {:.6g}{}{}", key, name_, value, unit.empty() ? "" : " ", unit),
                   fmt::format("it must be {}", limits.words));
 }
 

@@ -154,7 +154,7 @@ ColdTable read_cold(const Node& node, const std::string& name, const EntryContex
     cold.table = read_temperature_table(reader, context.property, 1.0);
     cold.join = read_interval(reader, "joins_K", 1.0).value_or(Interval{200.0, 295.0});
     cold.width = read_width(reader, 1.0).value_or(Width{});
-    read_width_spans(reader, 1.0);
+    cold.width_spans = read_width_spans(reader, 1.0);
     EntryContext library_context = context;
     library_context.from_design = false;
     cold.sources = read_sources(reader, library_context);

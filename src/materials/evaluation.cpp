@@ -38,6 +38,15 @@ std::string range_words(const Interval& range) {
     return fmt::format("{:g}–{:g} K", range.lower, range.upper);
 }
 
+/// Where an entry holds, with its rule.
+std::string holds_words(const Entry& entry) {
+    std::string words = "its data hold for " + range_words(*entry.temperature);
+    if (entry.beyond && entry.beyond->temperature) {
+        words += ", its rule for " + range_words(*entry.beyond->temperature);
+    }
+    return words;
+}
+
 class Evaluator {
   public:
     Evaluator(const Library& library, const Conditions& conditions)
@@ -69,8 +78,8 @@ class Evaluator {
             if (reaches && lit) return beyond(datum, material, id);
         }
         if (!warm) {
-            return missing(fmt::format("{} of {} at {:g} K unknown (its data hold for {})", info(id).title,
-                                       material, t, range_words(*datum.temperature)));
+            return missing(fmt::format("{} of {} at {:g} K unknown ({})", info(id).title, material, t,
+                                       holds_words(datum)));
         }
         return missing(fmt::format("{} of {} at {:g} nm unknown (its data hold for {:g}–{:g} nm)",
                                    info(id).title, material, conditions_.wavelength * 1e9,
@@ -121,7 +130,7 @@ class Evaluator {
         }
         Value value = plain(datum, material, id, table.join.upper);
         if (!value.number) return value;
-        value.width = table.width;
+        value.width = width_at(table.width, table.width_spans, t);
         if (t <= table.join.lower) {
             value.number = interpolate(table.table, t);
             value.frequency_extrapolated = false;
@@ -136,14 +145,23 @@ class Evaluator {
         return value;
     }
 
+    static double nearest(const Interval& range, double x) { return std::clamp(x, range.lower, range.upper); }
+
+    /// Where a rule starts from: a scalar from where it was measured, a table from its nearest end.
+    static double reference_temperature(const Entry& datum, double temperature) {
+        const double end = nearest(*datum.temperature, temperature);
+        return std::holds_alternative<TemperatureTable>(datum.curve) ? end : datum.at_temperature.value_or(end);
+    }
+
     Value beyond(const Entry& datum, const std::string& material, PropertyId id) const {
         const Beyond& rule = *datum.beyond;
         const double t = conditions_.temperature;
         const bool warm = !datum.temperature || datum.temperature->contains(t);
-        const double reference =
-            warm ? t : datum.at_temperature.value_or(std::clamp(295.0, datum.temperature->lower,
-                                                               datum.temperature->upper));
-        Value value = plain(datum, material, id, reference);
+        const bool lit = !datum.wavelength || datum.wavelength->contains(conditions_.wavelength);
+        const double reference = warm ? t : reference_temperature(datum, t);
+        Conditions known = conditions_;
+        if (!lit) known.wavelength = nearest(*datum.wavelength, conditions_.wavelength);
+        Value value = Evaluator(library_, known).plain(datum, material, id, reference);
         if (!value.number) return value;
         double factor = 1.0;
         std::string how = "held constant";
@@ -188,6 +206,9 @@ Value integral(double from, double to, Function&& at) {
     using Gauss = boost::math::quadrature::gauss<double, 7>;
     const int panels = std::max(1, static_cast<int>(std::ceil(std::abs(to - from) / panel)));
     const double half = (to - from) / (2.0 * panels);
+    // The far end first: when it is unknown, the message names the temperature that was asked for.
+    const Value end = at(to);
+    if (!end.number) return end;
     Value result;
     double sum = 0.0;
     for (int i = 0; i < panels; ++i) {
@@ -279,12 +300,20 @@ IndexValue index_at(const Library& library, const std::string& material, double 
         return result;
     }
     const bool in_range = !entry.temperature || entry.temperature->contains(temperature);
+    double formula_temperature = temperature;
     if (depends_on_temperature(entry) && !in_range) {
-        result.missing = fmt::format("refractive index of {} at {:g} K unknown (its data hold for {})",
-                                     material, temperature, range_words(*entry.temperature));
-        return result;
+        const bool by_rule = entry.beyond && entry.beyond->rule == Beyond::Rule::constant &&
+                             entry.beyond->temperature && entry.beyond->temperature->contains(temperature);
+        if (!by_rule) {
+            result.missing = fmt::format("refractive index of {} at {:g} K unknown ({})", material, temperature,
+                                         holds_words(entry));
+            return result;
+        }
+        formula_temperature = std::clamp(temperature, entry.temperature->lower, entry.temperature->upper);
+        result.analogy = fmt::format("refractive index of {} at {:g} K: held constant from {:g} K", material,
+                                     temperature, formula_temperature);
     }
-    result.index = dispersion(entry, wavelength, temperature);
+    result.index = dispersion(entry, wavelength, formula_temperature);
     result.entry = &entry;
     result.width = entry.width;
     if (depends_on_temperature(entry) || !entry.at_temperature || temperature == *entry.at_temperature) {

@@ -28,6 +28,16 @@ void read_references(const core::Document& document, Library& library, core::Pro
     }
 }
 
+/// The document of a file; its problems are added when it cannot be read.
+std::optional<core::Document> read_or_report(const fs::path& file, core::Problems& problems) {
+    try {
+        return core::read_document(file.string());
+    } catch (const core::InputError& failure) {
+        for (const core::Problem& problem : failure.problems()) problems.add(problem);
+        return std::nullopt;
+    }
+}
+
 std::vector<std::string> property_keys() {
     std::vector<std::string> keys;
     for (const PropertyInfo& about : property_table()) keys.push_back(about.key);
@@ -126,6 +136,13 @@ std::optional<Material> read_material(const core::Document& document, const Libr
     return material;
 }
 
+void add_references(Library& library, const std::string& folder, core::Problems& problems) {
+    const fs::path file = fs::path(folder) / "references.toml";
+    std::error_code error;
+    if (!fs::exists(file, error)) return;
+    if (const auto document = read_or_report(file, problems)) read_references(*document, library, problems);
+}
+
 void add_folder(Library& library, const std::string& folder, core::Problems& problems) {
     std::error_code error;
     if (!fs::is_directory(folder, error)) {
@@ -137,21 +154,10 @@ void add_folder(Library& library, const std::string& folder, core::Problems& pro
         if (item.path().extension() == ".toml") files.push_back(item.path());
     }
     std::sort(files.begin(), files.end());
-    const auto read = [&problems](const fs::path& file) -> std::optional<core::Document> {
-        try {
-            return core::read_document(file.string());
-        } catch (const core::InputError& failure) {
-            for (const core::Problem& problem : failure.problems()) problems.add(problem);
-            return std::nullopt;
-        }
-    };
-    const fs::path references = fs::path(folder) / "references.toml";
-    if (fs::exists(references, error)) {
-        if (const auto document = read(references)) read_references(*document, library, problems);
-    }
+    add_references(library, folder, problems);
     for (const fs::path& file : files) {
         if (file.filename() == "references.toml") continue;
-        const auto document = read(file);
+        const auto document = read_or_report(file, problems);
         if (!document) continue;
         if (auto material = read_material(*document, library, problems)) {
             library.materials[material->name] = std::move(*material);

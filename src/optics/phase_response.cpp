@@ -25,7 +25,7 @@ void renormalise(JetFields& state, double omega) {
     }
     const ComplexJet& leading =
         std::abs(v.electric.value) > std::abs(v.magnetic.value) ? v.electric : v.magnetic;
-    constexpr double tolerated = 64.0;
+    constexpr double tolerated = 8.0;
     if (std::abs(leading.first) * omega <= tolerated * std::abs(leading.value)) return;
     state.log_factor_slope += leading.first / leading.value;
     const ComplexJet factor = ComplexJet(leading.value) / leading;
@@ -45,7 +45,7 @@ PhaseResponse undefined_phase() {
 }  // namespace
 
 PhaseResponse phase_response(const DispersiveStack& stack, const Illumination& light) {
-    // Notation: η0 incident admittance, r = (η0 E − H)/(η0 E + H), t = 2 η0 E_substrate/(η0 E + H).
+    // Notation: η0 incident admittance, r = (η0 E − H)/(η0 E + H).
     require_valid(stack, light);
     const double omega = 2.0 * core::pi * core::speed_of_light / light.wavelength;
     const auto constant = [](double value) { return ComplexJet(Complex(value)); };
@@ -72,8 +72,9 @@ PhaseResponse phase_response(const DispersiveStack& stack, const Illumination& l
     const ComplexJet reflection = (eta0 * state.fields.electric - state.fields.magnetic) / incident;
     if (!(std::abs(reflection.value) >= smallest_reflection)) return undefined_phase();
     const ComplexJet log_reflection = log(reflection);
+    // t = 2 η0 E_substrate/(η0 E + H); the real η0 leaves its argument alone.
     const Complex log_transmission_slope =
-        log_slope(transmitted) + log_slope(eta0) - log_slope(incident) - state.log_factor_slope;
+        log_slope(transmitted) - log_slope(incident) - state.log_factor_slope;
     // A negative real r may carry either sign of zero: its phase is +π.
     const double phase = log_reflection.value.imag();
     const PhaseResponse result{phase == -core::pi ? core::pi : phase, log_reflection.first.imag(),

@@ -30,12 +30,14 @@ Peak largest_between(const StandingWave& wave, std::size_t layer, double from, d
         }
     }
     if (to > from) {
-        constexpr int bits =
-            26;  // a maximum is flat: depth cannot be known to more than half the digits
-        const auto [depth, negative] = boost::math::tools::brent_find_minima(
-            [&](double z) { return -relative_intensity(wave, layer, z); },
-            depth_of(std::max(best_step - 1, 0)), depth_of(std::min(best_step + 1, steps)), bits);
-        if (-negative > best.intensity) best = {-negative, depth};
+        // The search has an absolute tolerance: it walks a fraction of the bracket, not metres.
+        constexpr int bits = 26;  // a maximum is flat: half of the digits are all there is to know
+        const double low = depth_of(std::max(best_step - 1, 0));
+        const double high = depth_of(std::min(best_step + 1, steps));
+        const auto within = [&](double u) { return std::min(low + u * (high - low), high); };
+        const auto found = boost::math::tools::brent_find_minima(
+            [&](double u) { return -relative_intensity(wave, layer, within(u)); }, 0.0, 1.0, bits);
+        if (-found.second > best.intensity) best = {-found.second, within(found.first)};
     }
     return best;
 }

@@ -4,6 +4,7 @@
 #include <unistd.h>
 
 #include <CLI/CLI.hpp>
+#include <algorithm>
 #include <cstdio>
 #include <cstdlib>
 #include <filesystem>
@@ -81,6 +82,16 @@ struct AppraiseOptions {
     Output output;
 };
 
+/// Says which terms of the total are missing; refuses to go on without them when that was asked for.
+void report_missing_terms(const assess::Noise& noise, bool strict) {
+    for (const assess::NoiseTerm& term : noise.terms) {
+        if (term.missing.empty()) continue;
+        const std::string message = fmt::format("{} not computed: {}", term.title, term.missing);
+        if (strict) throw core::InputError(message, "refused because of --strict; nothing was written");
+        fmt::print(stderr, "warning: {}\n", message);
+    }
+}
+
 int appraise_command(const std::string& program, const AppraiseOptions& options) {
     materials::Library library = load_library(program, options.materials);
     core::Document document = options.design == "-"
@@ -88,6 +99,7 @@ int appraise_command(const std::string& program, const AppraiseOptions& options)
                                   : core::read_document(options.design);
     const stack::Design design = stack::read_design(std::move(document), library);
     const assess::Appraisal appraisal = assess::appraise(design, library);
+    report_missing_terms(appraisal.noise, options.strict);
     std::string text;
     if (options.json) {
         text = appraisal_json(design, library, appraisal);
@@ -100,11 +112,7 @@ int appraise_command(const std::string& program, const AppraiseOptions& options)
         text = appraisal_text(design, library, appraisal, {options.output.colour(), options.all_layers});
     }
     options.output.write(text);
-    if (!appraisal.noise.computed || appraisal.noise.complete) return fine;
-    for (const assess::NoiseTerm& term : appraisal.noise.terms) {
-        if (!term.missing.empty()) fmt::print(stderr, "warning: {} not computed: {}\n", term.title, term.missing);
-    }
-    return options.strict ? bad_input : fine;
+    return fine;
 }
 
 struct MaterialsOptions {
@@ -119,11 +127,9 @@ int materials_command(const std::string& program, const MaterialsOptions& option
     if (!options.check.empty()) {
         core::Problems problems;
         materials::Library changed = library;
-        const fs::path references = fs::path(options.check).parent_path() / "references.toml";
-        std::error_code error;
-        (void)references;
-        (void)error;
-        auto material = materials::read_material(core::read_document(options.check), library, problems);
+        const fs::path folder = fs::path(options.check).parent_path();
+        materials::add_references(changed, folder.empty() ? "." : folder.string(), problems);
+        auto material = materials::read_material(core::read_document(options.check), changed, problems);
         if (material) {
             changed.materials[material->name] = *material;
             materials::check_links(changed, problems);
@@ -237,6 +243,14 @@ int run(const std::string& program, const std::vector<std::string>& arguments) {
     // `--help units` is easier to find than the command.
     if (arguments.size() == 2 && (arguments[0] == "--help" || arguments[0] == "-h") && arguments[1] == "units") {
         reversed = {"units"};
+    }
+    const std::vector<std::string> commands{"appraise", "materials", "units"};
+    if (!arguments.empty() && arguments[0].rfind('-', 0) != 0 &&
+        std::find(commands.begin(), commands.end(), arguments[0]) == commands.end()) {
+        const auto near = core::nearest_spelling(arguments[0], commands);
+        fmt::print(stderr, "unknown command \"{}\"\n       {}\n", arguments[0],
+                   near ? fmt::format("did you mean {}?", *near) : "`stillcoat --help` lists the commands");
+        return bad_input;
     }
     try {
         app.parse(reversed);

@@ -88,9 +88,23 @@ std::string sources_text(const Entry& entry, const materials::Library& library) 
     return fmt::format("{} [{}] ({}, {})", text, entry.place, entry.nature, entry.status);
 }
 
+/// What else an index datum says: its medium, its level, its offset.
+std::string index_text(const Entry& entry) {
+    std::string text = entry.medium == materials::Medium::air        ? "relative to air"
+                       : entry.medium == materials::Medium::vacuum   ? "in vacuum"
+                                                                     : "air or vacuum not stated";
+    if (entry.offset != 0.0) text += fmt::format("; plus {:g}", entry.offset);
+    if (entry.rescaled_to) {
+        text += fmt::format("; the whole rescaled to {:g} at {:g} nm", entry.rescaled_to->second,
+                            entry.rescaled_to->first * 1e9);
+    }
+    return text;
+}
+
 void entry_rows(Page& page, const std::string& label, const Entry& entry, const PropertyInfo& about,
                 const materials::Library& library) {
     page.row(label, std::visit(CurveText{*about.kind}, entry.curve));
+    if (about.id == materials::PropertyId::refractive_index) page.row("", index_text(entry));
     page.row("", width_text(entry.width, *about.kind) +
                      (entry.between_laboratories
                           ? fmt::format("; between laboratories {:.3g} to {:.3g}",

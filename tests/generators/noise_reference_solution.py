@@ -9,8 +9,6 @@ import functools
 
 import mpmath as mp
 import numpy as np
-from scipy.integrate import quad_vec
-from scipy.linalg import solve_banded
 
 BOLTZMANN = 1.380649e-23  # [J/K], exact
 
@@ -190,94 +188,105 @@ def clamped_index_slope(layer):
 
 
 @functools.lru_cache(maxsize=None)
-def lobatto(order):
-    """Reference element: Gauss points and weights, basis values there, mass and stiffness matrices."""
-    interior = np.polynomial.legendre.Legendre.basis(order).deriv().roots()
-    node = np.concatenate([[-1.0], np.sort(interior.real), [1.0]])
+def reference_element(order):
+    """Gauss points and weights, hat functions, bubbles there, bubble masses μ_n, coupling ∫φ_i v_n.
+
+    Bubbles are integrated Legendre polynomials, turned so that stiffness is the unit matrix and mass is
+    diagonal; hats and bubbles have orthogonal gradients, so a uniform temperature conducts nothing, exactly.
+    """
     point, weight = np.polynomial.legendre.leggauss(order + 8)
-    vandermonde = np.polynomial.legendre.legvander(node, order)
-    modes = np.polynomial.legendre.legvander(point, order)
-    slopes = np.stack([np.polynomial.legendre.Legendre.basis(n).deriv()(point) for n in range(order + 1)], 1)
-    basis = np.linalg.solve(vandermonde.T, modes.T).T
-    slope = np.linalg.solve(vandermonde.T, slopes.T).T
-    slope -= slope.mean(axis=1, keepdims=True)  # a constant has no gradient
-    mass = basis.T @ (weight[:, None] * basis)
-    stiffness = slope.T @ (weight[:, None] * slope)
-    return point, weight, basis, slope, mass, stiffness
+    values = np.polynomial.legendre.legvander(point, order + 1)
+    n = np.arange(1, order)
+    bubbles = (values[:, n + 1] - values[:, n - 1]) / np.sqrt(2 * (2 * n + 1))
+    masses, turn = np.linalg.eigh(bubbles.T @ (weight[:, None] * bubbles))
+    bubbles = bubbles @ turn
+    hats = np.stack([(1 - point) / 2, (1 + point) / 2], axis=1)
+    return point, weight, hats, bubbles, masses, bubbles.T @ (weight[:, None] * hats)
 
 
 class HeatStack:
-    """High-order finite elements (Galerkin, Lobatto nodes) through the layers; the substrate is exact."""
+    """High-order finite elements (Galerkin) through the layers, joined by their end temperatures; the
+    substrate is exact. Wavenumbers come as an array; the last axis of every result counts the sources."""
 
     def __init__(self, conductivity, capacity, thickness, loads, order, substrate, source):
-        self.conductivity, self.capacity, self.thickness = map(np.asarray, (conductivity, capacity, thickness))
-        self.loads = loads  # (elements, order+1, sources): ∫ q φ dz
-        self.order, self.substrate, self.source = order, substrate, np.asarray(source)
+        self.conductivity, self.capacity, self.thickness = map(np.array, (conductivity, capacity, thickness))
+        self.end_loads, self.bubble_loads = loads  # (elements, 2 or order-1, sources): ∫ q φ dz
+        self.order, self.source = order, np.array(source, float)
+        self.kappa = substrate["conductivity_W_per_mK"]
+        self.capacity_below = substrate["heat_capacity_J_per_m3K"]
 
-    def nodal(self, k, omega):
-        """Nodal Θ of iωC Θ - (κΘ')' + κk²Θ = q for all sources, (elements, nodes, sources)."""
-        count = len(self.thickness)
-        _, _, _, _, mass, stiffness = lobatto(self.order)
-        kappa, half = self.conductivity[:, None, None], self.thickness[:, None, None] / 2
-        matrix = kappa / half * stiffness + (kappa * k * k + 1j * omega * self.capacity[:, None, None]) * half * mass
-        edge, inner = [0, self.order], slice(1, self.order)
-        right = np.concatenate([matrix[:, inner][:, :, edge], self.loads[:, inner]], axis=2)
-        solved = np.linalg.solve(matrix[:, inner, inner], right)
-        reduced = matrix[:, edge][:, :, edge] - matrix[:, edge, inner] @ solved[:, :, :2]
-        load = self.loads[:, edge] - matrix[:, edge, inner] @ solved[:, :, 2:]
-        band = np.zeros((3, count + 1), complex)
-        band[0, 1:], band[2, :-1] = reduced[:, 0, 1], reduced[:, 1, 0]
-        band[1, :-1] += reduced[:, 0, 0]
-        band[1, 1:] += reduced[:, 1, 1]
-        right = np.zeros((count + 1, load.shape[2]), complex)
-        right[:-1] += load[:, 0]
-        right[1:] += load[:, 1]
-        kappa, gamma = self.decay(k, omega)
-        band[1, -1] += kappa * gamma                 # the substrate draws κγΘ and ...
-        right[-1] += self.source / (gamma + k)       # ... gives back the heat of its own source
-        skeleton = solve_banded((1, 1), band, right)
-        ends = np.stack([skeleton[:-1], skeleton[1:]], axis=1)
-        inside = solved[:, :, 2:] - solved[:, :, :2] @ ends
-        return np.concatenate([ends[:, :1], inside, ends[:, 1:]], axis=1)
+    def solve(self, k, omega):
+        """Temperatures of iωC Θ - (κΘ')' + κk²Θ = q.
+
+        Returns (interfaces (k, elements+1, sources), drop across each element, bubble amplitudes).
+        """
+        _, _, _, _, masses, coupling = reference_element(self.order)
+        stiff = 2 * self.conductivity / self.thickness
+        tau = (k[:, None] ** 2 + 1j * omega * self.capacity / self.conductivity) * self.thickness**2 / 4
+        share = tau[..., None] / (1 + tau[..., None] * masses)  # (k, elements, bubbles)
+        both = coupling.sum(axis=1)
+        series = stiff * (0.5 - tau / 3 + tau * (share @ (coupling[:, 0] * coupling[:, 1])))
+        shunt = (stiff * tau)[..., None] * (1 - share @ (coupling * both[:, None]))
+        push = self.end_loads - np.einsum("keb,bi,ebs->keis", share, coupling, self.bubble_loads)
+        count, sources = len(self.thickness), len(self.source)
+        admittance, current = np.zeros((len(k), 1), complex), np.zeros((len(k), sources), complex)
+        passed = []
+        for e in range(count):  # downwards: everything above as one admittance and one heat current
+            admittance, current = admittance + shunt[:, e, :1], current + push[:, e, 0]
+            g = series[:, e, None]
+            passed.append((admittance, current, g))
+            admittance = g * admittance / (g + admittance) + shunt[:, e, 1:]
+            current = g * current / (g + passed[-1][0]) + push[:, e, 1]
+        gamma = self.decay(k, omega)
+        face = (current + self.source / (gamma + k[:, None])) / (admittance + self.kappa * gamma)
+        ends, drop = np.zeros((2, len(k), count + 1, sources), complex)
+        ends[:, count] = face
+        for e in range(count - 1, -1, -1):
+            admittance, current, g = passed[e]
+            drop[:, e] = (current - admittance * ends[:, e + 1]) / (g + admittance)
+            ends[:, e] = ends[:, e + 1] + drop[:, e]
+        bubbles = np.einsum("kes,b->kebs", ends[:, :-1], coupling[:, 0])
+        bubbles += np.einsum("kes,b->kebs", ends[:, 1:], coupling[:, 1])
+        free = self.bubble_loads / stiff[:, None, None] / (1 + tau[..., None] * masses)[..., None]
+        return ends, drop[:, :count], free - share[..., None] * bubbles
 
     def decay(self, k, omega):
-        kappa = self.substrate["conductivity_W_per_mK"]
-        return kappa, np.sqrt(k * k + 1j * omega * self.substrate["heat_capacity_J_per_m3K"] / kappa)
+        return np.sqrt(k * k + 1j * omega * self.capacity_below / self.kappa)[:, None]
 
     def dissipation(self, k, omega):
         """Re ∫qΘ dz of every source, as the dissipation ∫κ(|Θ'|² + k²|Θ|²) dz: a sum of positive terms."""
-        kappa, gamma = self.decay(k, omega)
         if len(self.thickness) == 0:
-            return self.below(k, omega, self.source / (kappa * gamma * (gamma + k)))
-        theta = self.nodal(k, omega)
-        _, weight, basis, slope, _, _ = lobatto(self.order)
-        offset = theta - theta[:, :1]
-        gradient = np.abs(np.einsum("pn,ens->eps", slope, offset)) ** 2
-        value = np.abs(np.einsum("pn,ens->eps", basis, theta)) ** 2
+            gamma = self.decay(k, omega)
+            return self.below(k, omega, self.source / (self.kappa * gamma * (gamma + k[:, None])))
+        ends, drop, bubbles = self.solve(k, omega)
+        _, weight, hats, shapes, _, _ = reference_element(self.order)
+        value = np.einsum("kes,p->keps", ends[:, :-1], hats[:, 0])
+        value += np.einsum("kes,p->keps", ends[:, 1:], hats[:, 1]) + shapes @ bubbles
+        inside = np.einsum("p,keps->kes", weight, np.abs(value) ** 2)
         half = self.thickness[:, None] / 2
-        density = np.einsum("p,eps->es", weight, gradient) / half
-        density += np.einsum("p,eps->es", weight, value) * half * k * k
-        return self.conductivity @ density + self.below(k, omega, theta[-1, -1])
+        density = (np.abs(drop) ** 2 / 2 + (np.abs(bubbles) ** 2).sum(axis=2)) / half
+        density += half * (k * k)[:, None, None] * inside
+        return np.einsum("e,kes->ks", self.conductivity, density) + self.below(k, omega, ends[:, -1])
 
     def below(self, k, omega, face):
-        """Dissipation in the substrate whose face has the complex temperature `face`."""
-        kappa, gamma = self.decay(k, omega)
+        """Dissipation in the substrate whose face has the complex temperatures `face`."""
+        gamma, k = self.decay(k, omega), k[:, None]
         rate, total = gamma.real, k + gamma
-        if abs(gamma) > 3 * k:  # Θ = A e^{-kz} + B e^{-γz}
-            a = self.source / (1j * omega * self.substrate["heat_capacity_J_per_m3K"])
-            b = face - a
-            cross = a * np.conj(b) / np.conj(total)
-            value = abs(a) ** 2 / (2 * k) + 2 * cross.real + abs(b) ** 2 / (2 * rate)
-            slope = k * abs(a) ** 2 / 2 + 2 * (k * np.conj(gamma) * cross).real + abs(gamma * b) ** 2 / (2 * rate)
-        else:  # Θ = A (e^{-kz} - e^{-γz}) + face e^{-γz}, where A alone grows without bound as γ → k
-            a = self.source / (kappa * total)
-            spread = (k + rate) / (2 * k * rate * abs(total) ** 2)
-            overlap = 1 / (2 * rate * np.conj(total))
-            value = abs(a) ** 2 * spread + 2 * (a * np.conj(face) * overlap).real + abs(face) ** 2 / (2 * rate)
-            tail = a - gamma * face
-            slope = k * k * abs(a) ** 2 * spread - 2 * k * (a * np.conj(tail) * overlap).real
-            slope = slope + abs(tail) ** 2 / (2 * rate)
-        return kappa * (slope + k * k * value)
+        # Θ = A e^{-kz} + B e^{-γz}: without loss of digits where diffusion is slow, |γ| > 3k.
+        a = self.source / (1j * omega * self.capacity_below)
+        b = face - a
+        cross = a * np.conj(b) / np.conj(total)
+        value = abs(a) ** 2 / (2 * k) + 2 * cross.real + abs(b) ** 2 / (2 * rate)
+        slope = k * abs(a) ** 2 / 2 + 2 * (k * np.conj(gamma) * cross).real + abs(gamma * b) ** 2 / (2 * rate)
+        slow = slope + k * k * value
+        # Θ = A (e^{-kz} - e^{-γz}) + face e^{-γz}, with A(γ-k) = a: for γ → k, where A grows without bound.
+        a = self.source / (self.kappa * total)
+        spread = (k + rate) / (2 * k * rate * abs(total) ** 2)
+        overlap = 1 / (2 * rate * np.conj(total))
+        value = abs(a) ** 2 * spread + 2 * (a * np.conj(face) * overlap).real + abs(face) ** 2 / (2 * rate)
+        tail = a - gamma * face
+        slope = k * k * abs(a) ** 2 * spread - 2 * k * (a * np.conj(tail) * overlap).real + abs(tail) ** 2 / (2 * rate)
+        return self.kappa * np.where(abs(gamma) > 3 * k, slow, slope + k * k * value)
 
 
 QUANTITIES = ["coating_thermo_elastic", "coating_thermo_refractive", "coating_coherent",
@@ -289,34 +298,62 @@ def heat_stack(case, order, pieces):
     layers, substrate = case["layers"], case["substrate"]
     k0 = 2 * np.pi / case["wavelength_m"]
     split = [pieces * max(1, int(np.ceil(2 * k0 * layer[0] * layer[2] / 4))) for layer in layers]
-    point, weight, basis = lobatto(order)[:3]
+    point, weight, hats, shapes = reference_element(order)[:4]
     depths = [np.concatenate([(e + (point + 1) / 2) / n for e in range(n)]) for n in split]
     strain, index = readout_weights(case, depths)
-    kappa, capacity, thickness, loads = [], [], [], []
+    kappa, capacity, thickness, sources = [], [], [], []
     for j, (layer, n) in enumerate(zip(layers, split)):
         own, bulge = expansion_lengths(layer, substrate)
         elastic = np.full(len(depths[j]), own + bulge)
         refractive = (strain[j] - 1) * own + index[j] * clamped_index_slope(layer)
         together = strain[j] * own + bulge + index[j] * clamped_index_slope(layer)
         source = np.stack([elastic, refractive, together, elastic, together], axis=1).reshape(n, len(point), 5)
-        height = layer[2] / n
-        loads.append(np.einsum("p,pn,eps->ens", weight * height / 2, basis, source))
+        sources.append(source * layer[2] / n / 2)
         kappa += [layer[7]] * n
         capacity += [layer[8]] * n
-        thickness += [height] * n
-    loads = np.concatenate(loads) if loads else np.zeros((0, order + 1, 5))
+        thickness += [layer[2] / n] * n
+    sources = np.concatenate(sources) if sources else np.zeros((0, len(point), 5))
+    loads = [np.einsum("p,pi,eps->eis", weight, basis, sources) for basis in (hats, shapes)]
     below = substrate_source(substrate) * np.array([0, 0, 0, 1, 1])
     return HeatStack(kappa, capacity, thickness, loads, order, substrate, below)
+
+
+def adaptive_integral(function, limit, tolerance):
+    """∫₀^limit of a vector function of an array: Gauss panels, halved until both halves agree with the whole.
+
+    Returns (integral, summed differences of the accepted panels).
+    """
+    node, weight = np.polynomial.legendre.leggauss(12)
+    edges = np.linspace(0, limit, 5)
+    low, high = edges[:-1], edges[1:]
+
+    def panels(low, high):
+        x = (low + high)[:, None] / 2 + (high - low)[:, None] / 2 * node
+        values = function(x.ravel()).reshape(len(low), len(node), -1)
+        return np.einsum("p,ips->is", weight, values) * (high - low)[:, None] / 2
+
+    whole = panels(low, high)
+    scale, total, error = whole.sum(axis=0), 0.0, 0.0
+    for _ in range(40):
+        middle = (low + high) / 2
+        left, right = panels(low, middle), panels(middle, high)
+        change = abs(left + right - whole)
+        good = (change <= tolerance * scale).all(axis=1)
+        total, error = total + (left + right)[good].sum(axis=0), error + change[good].sum(axis=0)
+        if good.all():
+            return total, error
+        open_ = ~good
+        low, high = (np.concatenate([low[open_], middle[open_]]), np.concatenate([middle[open_], high[open_]]))
+        whole = np.concatenate([left[open_], right[open_]])
+    raise ArithmeticError("the integral over wavenumbers did not converge")
 
 
 def thermal_psd(stack, case, frequency, limit, tolerance):
     """PSDs [m²/Hz] = 4k_BT² ∫(k dk/2π) e^{-k²w²/4} Re∫qΘ dz, and the quadrature's own relative error."""
     omega, w = 2 * np.pi * frequency, case["beam_radius_m"]
-    scale = stack.dissipation(1 / w, omega)
-    scale = np.where(scale > 0, scale, 1.0)
 
     def integrand(x):
-        return x / (2 * np.pi) * np.exp(-x * x / 4) * stack.dissipation(x / w, omega) / scale
+        return (x / (2 * np.pi) * np.exp(-x * x / 4))[:, None] * stack.dissipation(x / w, omega)
 
-    value, error = quad_vec(integrand, 0, limit, epsabs=0, epsrel=tolerance, norm="max", quadrature="gk21")
-    return 4 * BOLTZMANN * case["temperature_K"] ** 2 / w**2 * value * scale, error / np.max(value)
+    value, error = adaptive_integral(integrand, limit, tolerance)
+    return 4 * BOLTZMANN * case["temperature_K"] ** 2 / w**2 * value, np.max(error / np.where(value > 0, value, 1))

@@ -1,6 +1,6 @@
 #include <gtest/gtest.h>
 
-#include <boost/math/quadrature/gauss_kronrod.hpp>
+#include <boost/math/quadrature/gauss.hpp>
 #include <cmath>
 #include <stdexcept>
 
@@ -17,6 +17,18 @@ using support::relative_error;
 using support::WorstError;
 
 constexpr double high = 2.07, low = 1.45, q = low / high;
+/// Gauss–Legendre quadrature in panels far shorter than any wave in the layer.
+template <typename Function>
+double quadrature(const Function& f, double length) {
+    constexpr int panels = 40;
+    double sum = 0.0;
+    for (int m = 0; m < panels; ++m) {
+        sum += boost::math::quadrature::gauss<double, 20>::integrate(f, length * m / panels,
+                                                                     length * (m + 1) / panels);
+    }
+    return sum;
+}
+
 constexpr int many = 120;
 
 std::vector<double> no_photoelasticity(const OpticalStack& stack) {
@@ -159,10 +171,7 @@ TEST(ReadoutIntegrals, AreTheQuadratureOfTheWeights) {
         for (double& p : p12) p = random.between(-0.3, 0.5);
         const ReadoutLayer layer = weights_of(stack, p12).back();
         const ReadoutIntegrals found = readout_integrals(layer);
-        const auto integral = [&](auto f) {
-            return boost::math::quadrature::gauss_kronrod<double, 61>::integrate(
-                f, 0.0, layer.thickness, 12, 1e-13);
-        };
+        const auto integral = [&](auto f) { return quadrature(f, layer.thickness); };
         const double strain = integral([&](double z) { return strain_weight(layer, z); });
         const double squared =
             integral([&](double z) { return std::pow(strain_weight(layer, z), 2); });

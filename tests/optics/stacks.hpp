@@ -3,6 +3,7 @@
 
 #include <cmath>
 #include <cstdint>
+#include <iostream>
 #include <random>
 
 #include "stillcoat/optics/response.hpp"
@@ -26,10 +27,12 @@ inline OpticalStack quarter_wave_stack(double outermost, double next, int layers
     return stack;
 }
 
-/// Layers of arbitrary index and thickness. The seed is the test's to print.
+/// Layers of arbitrary index and thickness. Prints its seed.
 class RandomStacks {
   public:
-    explicit RandomStacks(std::uint32_t seed) : engine_(seed) {}
+    explicit RandomStacks(std::uint32_t seed) : engine_(seed) {
+        std::cout << "  random stacks, seed " << seed << "\n";
+    }
 
     double between(double low, double high) {
         return std::uniform_real_distribution<double>(low, high)(engine_);

@@ -1,7 +1,7 @@
 #include <gtest/gtest.h>
 
 #include <algorithm>
-#include <boost/math/quadrature/gauss_kronrod.hpp>
+#include <boost/math/quadrature/gauss.hpp>
 #include <cmath>
 #include <stdexcept>
 
@@ -17,6 +17,18 @@ namespace {
 using support::relative_error;
 
 constexpr double high = 2.07, low = 1.45, q = low / high;
+/// Gauss–Legendre quadrature in panels far shorter than any wave in the layer.
+template <typename Function>
+double quadrature(const Function& f, double length) {
+    constexpr int panels = 40;
+    double sum = 0.0;
+    for (int m = 0; m < panels; ++m) {
+        sum += boost::math::quadrature::gauss<double, 20>::integrate(f, length * m / panels,
+                                                                     length * (m + 1) / panels);
+    }
+    return sum;
+}
+
 constexpr int many = 120;  // layers: q^120 is 3e-19
 
 double total(const std::vector<double>& parts) {
@@ -201,7 +213,7 @@ TEST(StandingWave, FallsBehindTheFaceOfTotalReflectionAsItsPenetrationDepth) {
 }
 
 TEST(StoredEnergy, IsTheQuadratureOfTheEnergyDensity) {
-    // s light, from the complex field itself: D_t E = −iω..., here H from the slope of E.
+    // s light: H_x from the slope of E, H_z = β E.
     const std::uint32_t seed = 33;
     RandomStacks random(seed);
     for (int trial = 0; trial < 30; ++trial) {
@@ -222,11 +234,10 @@ TEST(StoredEnergy, IsTheQuadratureOfTheEnergyDensity) {
             return std::real(n * n) * std::norm(down + up) + std::norm(h) +
                    beta * beta * std::norm(down + up);
         };
-        const double integral = boost::math::quadrature::gauss_kronrod<double, 61>::integrate(
-            density, 0.0, field.thickness, 10, 1e-12);
+        const double integral = quadrature(density, field.thickness);
         const double expected =
             integral / (2.0 * stack.incident_index * std::cos(light.angle) * core::speed_of_light);
-        EXPECT_LE(relative_error(stored_energy(wave).back(), expected), 1e-10) << "seed " << seed;
+        EXPECT_LE(relative_error(stored_energy(wave).back(), expected), 1e-11) << "seed " << seed;
     }
 }
 

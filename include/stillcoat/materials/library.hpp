@@ -35,6 +35,9 @@ struct Library {
 /// All problems of all files are added to `problems`.
 void add_folder(Library& library, const std::string& folder, core::Problems& problems);
 
+/// Reads the references.toml of a folder, when it has one.
+void add_references(Library& library, const std::string& folder, core::Problems& problems);
+
 /// Reads one material file; its references must be known to the library already.
 /// Absent when anything was wrong.
 std::optional<Material> read_material(const core::Document& document, const Library& library,

@@ -114,6 +114,7 @@ struct ColdTable {
     TemperatureTable table;
     Interval join;
     Width width;
+    std::vector<WidthSpan> width_spans;
     std::vector<std::string> sources;
     std::string place, nature, status, note;
 };

@@ -1,0 +1,368 @@
+"""Bad input: each case has its exact message and exit code, and leaves no file behind.
+
+    bad_input.py --list                 names of the cases
+    bad_input.py PROGRAM CASE           runs one
+A case changes one line of a good design, or is a whole file or command line. `{f}` stands for the file."""
+import os
+import pathlib
+import subprocess
+import sys
+import tempfile
+
+GOOD = """\
+[light]
+wavelength = "1064 nm"
+[beam]
+radius = "1 mm"
+[mirror]
+substrate = "fused-silica"
+[environment]
+temperature = "295 K"
+[[coating.block]]
+layers = [ { material = "tantala-ibs", quarter_waves = 1.0 } ]
+"""
+
+
+def change(old, new):
+    assert old in GOOD
+    return GOOD.replace(old, new)
+
+
+LAYER = 'layers = [ { material = "tantala-ibs", quarter_waves = 1.0 } ]'
+CASES = {
+    "missing-unit": (change('"1 mm"', '"1"'), """\
+{f}:4:10: radius in [beam]: "1" has no unit
+     4 | radius = "1"
+       |          ^^^
+       write a length with its unit, for example "1397 nm\""""),
+    "bare-number": (change('"1 mm"', "0.001"), """\
+{f}:4:10: radius in [beam] needs a length with a unit, here it is a bare number
+     4 | radius = 0.001
+       |          ^^^^^
+       for example radius = "1397 nm\""""),
+    "wrong-kind-of-unit": (change('"1 mm"', '"1 K"'), """\
+{f}:4:10: radius in [beam]: "K" is not a unit of length
+     4 | radius = "1 K"
+       |          ^^^^^
+       write a length with its unit, for example "1397 nm\""""),
+    "unknown-unit": (change('"1 mm"', '"1 mmm"'), """\
+{f}:4:10: radius in [beam]: "mmm" is not a known unit
+     4 | radius = "1 mmm"
+       |          ^^^^^^^
+       write a length with its unit, for example "1397 nm"; `stillcoat units` lists the usual ones"""),
+    "unknown-key": (change("radius =", "radios ="), """\
+{f}:3:1: radius is missing in [beam]
+     3 | [beam]
+       | ^^^^^^
+       add radius = "1397 nm"
+{f}:4:1: unknown key radios in [beam]
+     4 | radios = "1 mm"
+       | ^^^^^^
+       did you mean radius?
+2 problems"""),
+    "unknown-table": (GOOD + "[bandd]\nfrom = \"1 Hz\"\n", """\
+{f}:11:2: unknown key bandd in the design file
+    11 | [bandd]
+       |  ^^^^^
+       did you mean band?"""),
+    "unknown-material": (change("tantala-ibs", "tantalla-ibs"), """\
+{f}:10:25: unknown material "tantalla-ibs"
+    10 | layers = [ { material = "tantalla-ibs", quarter_waves = 1.0 } ]
+       |                         ^^^^^^^^^^^^^^
+       did you mean "tantala-ibs"? `stillcoat materials` lists all"""),
+    "negative-thickness": (change("quarter_waves = 1.0", 'thickness = "-3 nm"'), """\
+{f}:10:52: thickness in layer 1 of the block is -3e-09 m
+    10 | layers = [ { material = "tantala-ibs", thickness = "-3 nm" } ]
+       |                                                    ^^^^^^^
+       it must be greater than 0 m"""),
+    "zero-thickness": (change("quarter_waves = 1.0", "quarter_waves = 0"), """\
+{f}:10:56: quarter_waves in layer 1 of the block is 0
+    10 | layers = [ { material = "tantala-ibs", quarter_waves = 0 } ]
+       |                                                        ^
+       it must be greater than 0"""),
+    "repeat-zero": (change("layers =", "repeat = 0\nlayers ="), """\
+{f}:10:10: repeat in [[coating.block]] 1 is 0
+    10 | repeat = 0
+       |          ^
+       it must be a whole number from 1 to 20000"""),
+    "poisson-ratio": (GOOD + '[material.tantala-ibs]\npoisson_ratio = { value = 0.7, source = "x" }\n', """\
+{f}:12:27: value in poisson_ratio of tantala-ibs is 0.7
+    12 | poisson_ratio = { value = 0.7, source = "x" }
+       |                           ^^^
+       it must be between -1 and 0.5 (stable isotropic solid)"""),
+    "override-without-source": (GOOD + "[material.tantala-ibs]\npoisson_ratio = { value = 0.3 }\n", """\
+{f}:12:17: source is missing in poisson_ratio of tantala-ibs
+    12 | poisson_ratio = { value = 0.3 }
+       |                 ^^^^^^^^^^^^^^^
+       add source = "...\""""),
+    "wavelength-outside-dispersion": (change("1064 nm", "12 um"), """\
+{f}:6:13: refractive index of fused-silica is known for 400–2600 nm only, not at 12000 nm
+     6 | substrate = "fused-silica"
+       |             ^^^^^^^^^^^^^^
+       choose another material, or state refractive_index in [material."fused-silica"]
+{f}:10:25: refractive index of tantala-ibs is known for 400–1800 nm only, not at 12000 nm
+    10 | layers = [ { material = "tantala-ibs", quarter_waves = 1.0 } ]
+       |                         ^^^^^^^^^^^^^
+       choose another material, or state refractive_index in [material."tantala-ibs"]
+2 problems"""),
+    "temperature-outside-index": (change("295 K", "2 K"), """\
+{f}:6:13: refractive index of fused-silica at 2 K unknown (its data hold for 30–310 K, its rule for 4–30 K)
+     6 | substrate = "fused-silica"
+       |             ^^^^^^^^^^^^^^
+       choose another material, or state refractive_index in [material."fused-silica"]
+{f}:10:25: dn/dT of tantala-ibs at 2 K unknown (its data hold for 283–313 K, its rule for 4–283 K), so its index at the operating temperature is unknown
+    10 | layers = [ { material = "tantala-ibs", quarter_waves = 1.0 } ]
+       |                         ^^^^^^^^^^^^^
+       choose another material, or state refractive_index in [material."tantala-ibs"]
+2 problems"""),
+    "not-a-number": (change("quarter_waves = 1.0", "quarter_waves = nan"), """\
+{f}:10:56: quarter_waves in layer 1 of the block is nan
+    10 | layers = [ { material = "tantala-ibs", quarter_waves = nan } ]
+       |                                                        ^^^
+       it must be greater than 0"""),
+    "infinite": (change("quarter_waves = 1.0", "quarter_waves = inf"), """\
+{f}:10:56: quarter_waves in layer 1 of the block is inf
+    10 | layers = [ { material = "tantala-ibs", quarter_waves = inf } ]
+       |                                                        ^^^
+       it must be greater than 0"""),
+    "beyond-double": (change("quarter_waves = 1.0", "quarter_waves = 1e400"), """\
+{f}:10:56: quarter_waves in layer 1 of the block is inf
+    10 | layers = [ { material = "tantala-ibs", quarter_waves = 1e400 } ]
+       |                                                        ^^^^^
+       it must be greater than 0"""),
+    "beyond-double-with-unit": (change('"1 mm"', '"1e400 mm"'), """\
+{f}:4:10: radius in [beam]: the number in "1e400 mm" is beyond what can be held
+     4 | radius = "1e400 mm"
+       |          ^^^^^^^^^^
+       write a length with its unit, for example "1397 nm\""""),
+    "no-block": (change("[[coating.block]]\n" + LAYER, "[coating]"), """\
+{f}:9:1: the coating has no layers
+     9 | [coating]
+       | ^^^^^^^^^
+       add [[coating.block]] with layers = [ ... ]"""),
+    "empty-stack": (change(LAYER, "layers = []"), """\
+{f}:10:10: [[coating.block]] 1 has no layers
+    10 | layers = []
+       |          ^^"""),
+    "beam-radius-zero": (change('"1 mm"', '"0 mm"'), """\
+{f}:4:10: radius in [beam] is 0 m
+     4 | radius = "0 mm"
+       |          ^^^^^^
+       it must be greater than 0 m"""),
+    "right-angle": (change('"1064 nm"', '"1064 nm"\nangle = "90 deg"\npolarisation = "s"'), """\
+{f}:3:9: angle in [light] is 1.5708 rad
+     3 | angle = "90 deg"
+       |         ^^^^^^^^
+       it must be from 0 deg to less than 90 deg"""),
+    "polarisation-missing": (change('"1064 nm"', '"1064 nm"\nangle = "10 deg"'), """\
+{f}:1:1: polarisation is missing in [light]
+     1 | [light]
+       | ^^^^^^^
+       add polarisation = "s", "p" or "unpolarised" (off normal incidence)"""),
+    "unknown-polarisation": (change('"1064 nm"', '"1064 nm"\nangle = "10 deg"\npolarisation = "t"'), """\
+{f}:4:16: polarisation in [light] is "t"
+     4 | polarisation = "t"
+       |                ^^^
+       it must be one of "s", "p", "unpolarised\""""),
+    "two-thicknesses": (change("quarter_waves = 1.0", 'quarter_waves = 1.0, thickness = "5 nm"'), """\
+{f}:10:61: thickness and quarter_waves in layer 1 of the block contradict each other
+    10 | layers = [ { material = "tantala-ibs", quarter_waves = 1.0, thickness = "5 nm" } ]
+       |                                                             ^^^^^^^^^
+       and here: {f}:10:40
+    10 | layers = [ { material = "tantala-ibs", quarter_waves = 1.0, thickness = "5 nm" } ]
+       |                                        ^^^^^^^^^^^^^
+       a layer has one thickness: keep one of the two"""),
+    "property-unknown-and-strict": (change("tantala-ibs", "gold-film"), """\
+thermal, all coherent not computed: dn/dT of gold-film unknown: no value recorded; give it in [material."gold-film"]
+       refused because of --strict; nothing was written""", ["appraise", "design.toml", "--strict", "--out", "result.txt"]),
+    "two-losses": (GOOD + '[material.tantala-ibs]\nloss_angle = { value = 1e-4, source = "x" }\n'
+                   'loss_angle_bulk = { value = 1e-4, source = "x" }\n', """\
+{f}:13:1: loss_angle_bulk and loss_angle in [material."tantala-ibs"] contradict each other
+    13 | loss_angle_bulk = { value = 1e-4, source = "x" }
+       | ^^^^^^^^^^^^^^^
+       and here: {f}:12:1
+    12 | loss_angle = { value = 1e-4, source = "x" }
+       | ^^^^^^^^^^
+       give loss_angle for both, or loss_angle_bulk with loss_angle_shear"""),
+    "lone-diameter": (change('"fused-silica"', '"fused-silica"\ndiameter = "1 cm"'), """\
+{f}:7:12: diameter in [mirror] stands alone
+     7 | diameter = "1 cm"
+       |            ^^^^^^
+       give diameter and thickness for a finite mirror, neither for a half-space"""),
+    "not-toml": ("this is no TOML\n", """\
+{f}:1:1: not valid TOML: missing key-value separator `=`
+     1 | this is no TOML
+       | ^
+       the format is TOML 1.0, https://toml.io"""),
+    "key-twice": (change('radius = "1 mm"', 'radius = "1 mm"\nradius = "2 mm"'), """\
+{f}:5:10: not valid TOML: value ("radius") already exists.
+     5 | radius = "2 mm"
+       |          ^
+       the format is TOML 1.0, https://toml.io"""),
+    "unknown-alternative": (GOOD + '[material.tantala-ibs]\nloss_angle = { alternative = "none" }\n', """\
+{f}:12:30: loss_angle of tantala-ibs has no alternative "none"
+    12 | loss_angle = { alternative = "none" }
+       |                              ^^^^^^
+       known: thermal-noise, between-laboratories, cavity-stack"""),
+    "absorbing-incident-medium": (change('"1064 nm"', '"1064 nm"\nmedium = "gold-film"'), """\
+{f}:3:10: gold-film absorbs (k = 7.11): an absorbing incident medium is refused
+     3 | medium = "gold-film"
+       |          ^^^^^^^^^^^
+       reflectance and transmittance are not defined in it"""),
+    "all-problems-at-once": (change('"1 mm"', '"1 K"').replace('"295 K"', "295").replace("tantala-ibs", "tantal"), """\
+{f}:4:10: radius in [beam]: "K" is not a unit of length
+     4 | radius = "1 K"
+       |          ^^^^^
+       write a length with its unit, for example "1397 nm"
+{f}:8:15: temperature in [environment] needs a temperature with a unit, here it is a bare number
+     8 | temperature = 295
+       |               ^^^
+       for example temperature = "295 K"
+{f}:10:25: unknown material "tantal"
+    10 | layers = [ { material = "tantal", quarter_waves = 1.0 } ]
+       |                         ^^^^^^^^
+       did you mean "tantala-ibs"? `stillcoat materials` lists all
+3 problems"""),
+    "too-many-layers": (change("layers =", "repeat = 20000\nlayers =").replace(
+        "1.0 } ]", '1.0 }, { material = "silica-ibs", quarter_waves = 1 } ]'), """\
+{f}:10:10: the stack has more than 20000 layers
+    10 | repeat = 20000
+       |          ^^^^^
+       larger stacks are refused"""),
+    "too-large": (GOOD + "#" * 8_000_000, """\
+{f}: 8000207 bytes; files above 8000000 bytes are refused
+       use `repeat` for periodic stacks"""),
+    "empty-file": ("", """\
+{f}: [light] is missing
+       add [light] with wavelength = "1064 nm"
+{f}: [beam] is missing
+       add [beam] with radius = "0.42 mm" (1/e² intensity radius)
+{f}: [mirror] is missing
+       add [mirror] with substrate = "fused-silica"
+{f}: [environment] is missing
+       add [environment] with temperature = "295 K"
+{f}: [coating] is missing
+       add [coating] and at least one [[coating.block]]
+5 problems"""),
+    "directory": (pathlib.Path, "{f}: is a directory\n       give a file"),
+    "no-such-file": (None, "{f}: no such file\n       check the name and folder"),
+    "existing-result": (GOOD, "design.toml: exists already and was kept\n       give --replace to overwrite it",
+                        ["appraise", "design.toml", "--out", "design.toml"]),
+    "result-in-no-folder": (GOOD, "none/result.txt: cannot create: No such file or directory\n"
+                            "       nothing was written", ["appraise", "design.toml", "--out", "none/result.txt"]),
+    "full-disk": (GOOD, "/dev/full: cannot write: No space left on device\n       nothing was written",
+                  ["appraise", "design.toml", "--replace", "--out", "/dev/full"]),
+    "unknown-command": (GOOD, """\
+unknown command "apraise"
+       did you mean appraise?""", ["apraise", "design.toml"]),
+    "no-file-named": (GOOD, """\
+design is required
+Run with --help for more information.""", ["appraise"]),
+    "unknown-option": (GOOD, """\
+The following argument was not expected: --colour
+Run with --help for more information.""", ["appraise", "design.toml", "--colour"]),
+    "unknown-csv-table": (GOOD, """\
+--csv: layer not in {noise,layers,field}
+Run with --help for more information.""", ["appraise", "design.toml", "--csv", "layer"]),
+    "csv-and-json": (GOOD, """\
+--json excludes --csv
+Run with --help for more information.""", ["appraise", "design.toml", "--csv", "layers", "--json"]),
+    "noise-table-off-normal": (change('"1064 nm"', '"1064 nm"\nangle = "10 deg"\npolarisation = "s"'), """\
+there is no noise table: noise is computed for normal incidence only; the optics hold at this angle""",
+                               ["appraise", "design.toml", "--csv", "noise"]),
+    "materials-unknown-name": (GOOD, """\
+unknown material "tantalla-ibs"
+       did you mean "tantala-ibs"?""", ["materials", "tantalla-ibs"]),
+    "materials-unknown-property": (GOOD, """\
+unknown property "los_angle"
+       did you mean loss_angle?""", ["materials", "tantala-ibs", "los_angle"]),
+    "materials-bad-temperature": (GOOD, """\
+--temperature: "295" has no unit
+       write a temperature with its unit, for example "295 K\"""", ["materials", "tantala-ibs", "density", "--temperature", "295"]),
+    "materials-outside-range": (GOOD, """\
+density of gold-film at 4 K unknown (its data hold for 283–313 K)""", ["materials", "gold-film", "density", "--temperature", "4 K"]),
+    "materials-no-folder": (GOOD, """\
+none: no such folder of materials
+       it must hold one TOML file per material""", ["appraise", "design.toml", "--materials", "none"]),
+    "material-file-not-strict": ('name = "x"\ntitle = "x"\nform = "film"\n[density]\nvalue = 2200\n', """\
+{f}:1:8: name "x" differs from the file name design
+     1 | name = "x"
+       |        ^^^
+       rename one of the two
+{f}:4:1: unit is missing in [density]
+     4 | [density]
+       | ^^^^^^^^^
+       add unit = "kg/m3"
+{f}:4:1: uncertainty is missing in [density]
+     4 | [density]
+       | ^^^^^^^^^
+       add uncertainty = "not stated"
+{f}:4:1: source is missing in [density]
+     4 | [density]
+       | ^^^^^^^^^
+       add source = ["key of references.toml"]
+{f}:4:1: place is missing in [density]
+     4 | [density]
+       | ^^^^^^^^^
+       add place = "..."
+{f}:4:1: measured_at is missing in [density]
+     4 | [density]
+       | ^^^^^^^^^
+       add measured_at = "..."
+{f}:4:1: range is missing in [density]
+     4 | [density]
+       | ^^^^^^^^^
+       add range = { temperature_K = [283, 313] }
+{f}:4:1: nature is missing in [density]
+     4 | [density]
+       | ^^^^^^^^^
+       add nature = "measured"
+{f}:4:1: status is missing in [density]
+     4 | [density]
+       | ^^^^^^^^^
+       add status = "seen"
+9 problems""",
+                                 ["materials", "--check", "design.toml"]),
+    "unreadable": ("/proc/self/mem", "/proc/self/mem: cannot be read\n       check its permissions"),
+}
+
+
+def run(program, name):
+    content, expected, *rest = CASES[name]
+    with tempfile.TemporaryDirectory() as folder:
+        file = pathlib.Path(folder) / "design.toml"
+        target = "design.toml"
+        if content is pathlib.Path:
+            file.mkdir()
+        elif content == "/proc/self/mem":
+            target = content
+        elif content is not None:
+            file.write_text(content)
+        before = sorted(os.listdir(folder))
+        arguments = rest[0] if rest else ["appraise", target, "--out", "result.txt"]
+        result = subprocess.run([program, *arguments], cwd=folder, capture_output=True, text=True, timeout=60)
+        problems = []
+        if result.returncode != 2:
+            problems.append(f"exit code {result.returncode} instead of 2")
+        if result.stdout:
+            problems.append(f"standard output: {result.stdout[:500]}")
+        if sorted(os.listdir(folder)) != before:
+            problems.append(f"left behind: {sorted(os.listdir(folder))}")
+        if expected is None:
+            problems.append("no expected message")
+        elif result.stderr.rstrip("\n") != expected.replace("{f}", "design.toml"):
+            problems.append("another message than expected:")
+        for problem in problems:
+            print(problem)
+        if problems:
+            print(result.stderr)
+        else:
+            print("exact message, exit code 2, nothing written")
+        return 1 if problems else 0
+
+
+if __name__ == "__main__":
+    if sys.argv[1] == "--list":
+        print(";".join(CASES), end="")
+        sys.exit(0)
+    sys.exit(run(sys.argv[1], sys.argv[2]))
