@@ -1,8 +1,8 @@
-"""Numerical solutions behind noise_reference.py: elasticity, wave optics and heat flow from first principles.
+"""Numerical solutions behind noise_reference.py: elasticity, wave optics, heat flow.
 
-No closed formula of a noise article is used here, except where a function says so; every quantity is found
-by solving its field equation numerically. z points into the mirror, time factor e^{-iωt} in the optics,
-e^{+iωt} in the heat equation, w is the 1/e² intensity radius, spectra are one-sided.
+No closed formula of a noise article is used here; every quantity is found by solving its field
+equation numerically. z points into the mirror, time factor e^{-iωt} in the optics, e^{+iωt} in the
+heat equation, w is the 1/e² intensity radius, spectra are one-sided.
 """
 
 import functools
@@ -13,7 +13,7 @@ import numpy as np
 BOLTZMANN = 1.380649e-23  # [J/K], exact
 
 
-# --- Elasticity ------------------------------------------------------------------------------------------
+# --- Elasticity -----------------------------------------------------------------------------------
 
 
 def lame(youngs, poisson):
@@ -21,7 +21,7 @@ def lame(youngs, poisson):
 
 
 def half_space_wave(youngs, poisson, pressure, shear):
-    """Coefficients (a, b, c, e) of U = (a+bz)e^{-z}, W = (c+ez)e^{-z} [m], u = (iU, W)e^{ix}, at wavenumber 1/m.
+    """Coefficients (a, b, c, e) of u = (iU, W)e^{ix}, U = (a+bz)e^{-z}, W = (c+ez)e^{-z}, k = 1/m.
 
     Equilibrium along x in both powers of z, σ_zz(0) = -pressure, σ_xz(0) = i·shear.
     """
@@ -44,7 +44,7 @@ def face_dilatation(substrate):
 
 
 def half_space_energies(substrate, beam_radius):
-    """(bulk, shear) strain energy of a half-space under a Gaussian force, per squared force [J/N²]."""
+    """(bulk, shear) energy of a half-space under a Gaussian pressure, per squared force [J/N²]."""
     youngs, poisson = substrate["youngs_modulus_Pa"], substrate["poisson_ratio"]
     lam, mu = lame(youngs, poisson)
     a, b, c, e = half_space_wave(youngs, poisson, 1.0, 0.0)
@@ -63,7 +63,7 @@ def half_space_energies(substrate, beam_radius):
 
 
 def layer_energies(layer, substrate, beam_radius, depth_weights, strain_weights):
-    """(bulk, shear) energy of one layer per squared force [J/N²], from the strain tensor at every point.
+    """(bulk, shear) energy of one layer per squared force [J/N²], from the strain at every point.
 
     The substrate's face imposes ε_rr(r), ε_θθ(r) of a Gaussian pressure p(r); σ_zz = -p(r) g(z).
     """
@@ -89,22 +89,23 @@ def layer_energies(layer, substrate, beam_radius, depth_weights, strain_weights)
 
 
 def expansion_lengths(layer, substrate):
-    """Motion of the face per kelvin and metre of heated layer: (own thickness, bulge of the substrate).
+    """Motion of the face per kelvin and metre of hot layer: (own thickness, bulge of the substrate).
 
-    Forward: a layer that may not widen grows in thickness and pushes sideways; the sideways force, varying
-    along the face as e^{ikx}, drags the substrate's face and lifts it.
+    Forward: a layer that may not widen grows in thickness and pushes sideways; the sideways force,
+    varying along the face as e^{ikx}, drags the substrate's face and lifts it.
     """
     youngs, poisson, alpha = layer[3:6]
     lam, mu = lame(youngs, poisson)
     # Unknown ε_zz and σ_∥ of the layer with ε_xx = ε_yy = 0, σ_zz = 0 at 1 K.
     thermal = (3 * lam + 2 * mu) * alpha
     own, membrane = np.linalg.solve([[lam + 2 * mu, 0], [lam, -1]], [thermal, thermal])
-    wave = half_space_wave(substrate["youngs_modulus_Pa"], substrate["poisson_ratio"], 0.0, -membrane)
+    base = substrate["youngs_modulus_Pa"], substrate["poisson_ratio"]
+    wave = half_space_wave(*base, 0.0, -membrane)
     return own, -wave[2]
 
 
 def substrate_source(substrate, steepness=2.7):
-    """q_s of the face's motion ∫ q_s e^{-kz} Θ dz, from the thermo-elastic field of Θ = e^{-qz}cos kx, k = 1."""
+    """q_s of the face's motion ∫ q_s e^{-kz} Θ dz, from the thermal stress of Θ = e^{-qz} at k = 1."""
     youngs, poisson = substrate["youngs_modulus_Pa"], substrate["poisson_ratio"]
     mu = lame(youngs, poisson)[1]
     q = steepness
@@ -113,7 +114,7 @@ def substrate_source(substrate, steepness=2.7):
     return (q * potential - wave[2]) * (q + 1)
 
 
-# --- Optics ----------------------------------------------------------------------------------------------
+# --- Optics ---------------------------------------------------------------------------------------
 
 
 def interface(above, below):
@@ -139,15 +140,16 @@ def reflection(wavelength, index, thickness):
     for j in range(len(index) - 2, -1, -1):
         amplitude = interface(index[j], index[j + 1]) * amplitude
         if j > 0:
-            amplitude = propagation(2 * mp.pi * index[j] * thickness[j - 1] / wavelength) * amplitude
+            phase = 2 * mp.pi * index[j] * thickness[j - 1] / wavelength
+            amplitude = propagation(phase) * amplitude
     return amplitude[1] / amplitude[0]
 
 
 def readout_weights(case, points):
-    """g(z), h(z) at relative depths `points` of every layer, by perturbing the chain of wave matrices.
+    """g(z), h(z) at relative depths `points` of every layer: the chain of wave matrices, perturbed.
 
-    Stretching a slice adds phase, an index change couples the two waves; δr follows from the matrices
-    above and the amplitudes below. Photoelasticity: δn = -(n³/2) p12 ε_zz with the complex index.
+    Stretching a slice adds phase, an index change couples the two waves; δr follows from the
+    matrices above and the amplitudes below. Photoelasticity: δn = -(n³/2) p12 ε_zz, n complex.
     """
     index = indices(case)
     layers, count = case["layers"], len(case["layers"])
@@ -156,7 +158,9 @@ def readout_weights(case, points):
     amplitude = mp.matrix([1, 0])
     for j in range(count, -1, -1):
         bottom[j] = interface(index[j], index[j + 1]) * amplitude
-        amplitude = bottom[j] if j == 0 else propagation(k0 * index[j] * layers[j - 1][2]) * bottom[j]
+        if j > 0:
+            amplitude = propagation(k0 * index[j] * layers[j - 1][2]) * bottom[j]
+    amplitude = bottom[0]
     incident, r = amplitude[0], amplitude[1] / amplitude[0]
     above, stretch, change = mp.eye(2), [], []
     for j in range(1, count + 1):
@@ -174,7 +178,8 @@ def readout_weights(case, points):
         above = above * propagation(phase)
         elastic_optic = -index[j] ** 3 / 2 * layers[j - 1][10]
         scale = 2 * mp.mpf(case["incident_index"]) * k0
-        stretch.append(np.array([float(1 - mp.im(a + elastic_optic * b) / scale) for a, b in zip(*rows)]))
+        both = [a + elastic_optic * b for a, b in zip(*rows)]
+        stretch.append(np.array([float(1 - mp.im(slope) / scale) for slope in both]))
         change.append(np.array([float(-mp.im(b) / scale) for b in rows[1]]))
     return stretch, change
 
@@ -184,15 +189,16 @@ def clamped_index_slope(layer):
     return layer[6] + layer[0] ** 3 / 2 * (layer[9] + 2 * layer[10]) * layer[5]
 
 
-# --- Heat flow -------------------------------------------------------------------------------------------
+# --- Heat flow ------------------------------------------------------------------------------------
 
 
 @functools.lru_cache(maxsize=None)
 def reference_element(order):
     """Gauss points and weights, hat functions, bubbles there, bubble masses μ_n, coupling ∫φ_i v_n.
 
-    Bubbles are integrated Legendre polynomials, turned so that stiffness is the unit matrix and mass is
-    diagonal; hats and bubbles have orthogonal gradients, so a uniform temperature conducts nothing, exactly.
+    Bubbles are integrated Legendre polynomials, turned so that stiffness is the unit matrix and mass
+    is diagonal; hats and bubbles have orthogonal gradients, so a uniform temperature conducts
+    nothing, exactly.
     """
     point, weight = np.polynomial.legendre.leggauss(order + 8)
     values = np.polynomial.legendre.legvander(point, order + 1)
@@ -205,11 +211,14 @@ def reference_element(order):
 
 
 class HeatStack:
-    """High-order finite elements (Galerkin) through the layers, joined by their end temperatures; the
-    substrate is exact. Wavenumbers come as an array; the last axis of every result counts the sources."""
+    """High-order finite elements (Galerkin) through the layers, joined by their end temperatures.
+
+    The substrate is exact. Wavenumbers come as an array; the last axis of a result counts the sources.
+    """
 
     def __init__(self, conductivity, capacity, thickness, loads, order, substrate, source):
-        self.conductivity, self.capacity, self.thickness = map(np.array, (conductivity, capacity, thickness))
+        self.conductivity, self.capacity = np.array(conductivity), np.array(capacity)
+        self.thickness = np.array(thickness)
         self.end_loads, self.bubble_loads = loads  # (elements, 2 or order-1, sources): ∫ q φ dz
         self.order, self.source = order, np.array(source, float)
         self.kappa = substrate["conductivity_W_per_mK"]
@@ -222,7 +231,8 @@ class HeatStack:
         """
         _, _, _, _, masses, coupling = reference_element(self.order)
         stiff = 2 * self.conductivity / self.thickness
-        tau = (k[:, None] ** 2 + 1j * omega * self.capacity / self.conductivity) * self.thickness**2 / 4
+        decay = k[:, None] ** 2 + 1j * omega * self.capacity / self.conductivity
+        tau = decay * self.thickness**2 / 4
         share = tau[..., None] / (1 + tau[..., None] * masses)  # (k, elements, bubbles)
         both = coupling.sum(axis=1)
         series = stiff * (0.5 - tau / 3 + tau * (share @ (coupling[:, 0] * coupling[:, 1])))
@@ -254,7 +264,7 @@ class HeatStack:
         return np.sqrt(k * k + 1j * omega * self.capacity_below / self.kappa)[:, None]
 
     def dissipation(self, k, omega):
-        """Re ∫qΘ dz of every source, as the dissipation ∫κ(|Θ'|² + k²|Θ|²) dz: a sum of positive terms."""
+        """Re ∫qΘ dz of every source, as the dissipation ∫κ(|Θ'|² + k²|Θ|²) dz: no cancellation."""
         if len(self.thickness) == 0:
             gamma = self.decay(k, omega)
             return self.below(k, omega, self.source / (self.kappa * gamma * (gamma + k[:, None])))
@@ -266,7 +276,8 @@ class HeatStack:
         half = self.thickness[:, None] / 2
         density = (np.abs(drop) ** 2 / 2 + (np.abs(bubbles) ** 2).sum(axis=2)) / half
         density += half * (k * k)[:, None, None] * inside
-        return np.einsum("e,kes->ks", self.conductivity, density) + self.below(k, omega, ends[:, -1])
+        inside = np.einsum("e,kes->ks", self.conductivity, density)
+        return inside + self.below(k, omega, ends[:, -1])
 
     def below(self, k, omega, face):
         """Dissipation in the substrate whose face has the complex temperatures `face`."""
@@ -277,15 +288,18 @@ class HeatStack:
         b = face - a
         cross = a * np.conj(b) / np.conj(total)
         value = abs(a) ** 2 / (2 * k) + 2 * cross.real + abs(b) ** 2 / (2 * rate)
-        slope = k * abs(a) ** 2 / 2 + 2 * (k * np.conj(gamma) * cross).real + abs(gamma * b) ** 2 / (2 * rate)
+        slope = k * abs(a) ** 2 / 2 + 2 * (k * np.conj(gamma) * cross).real
+        slope = slope + abs(gamma * b) ** 2 / (2 * rate)
         slow = slope + k * k * value
-        # Θ = A (e^{-kz} - e^{-γz}) + face e^{-γz}, with A(γ-k) = a: for γ → k, where A grows without bound.
+        # Θ = A (e^{-kz} - e^{-γz}) + face e^{-γz}, A(γ-k) = a: for γ → k, where A has no bound.
         a = self.source / (self.kappa * total)
         spread = (k + rate) / (2 * k * rate * abs(total) ** 2)
         overlap = 1 / (2 * rate * np.conj(total))
-        value = abs(a) ** 2 * spread + 2 * (a * np.conj(face) * overlap).real + abs(face) ** 2 / (2 * rate)
+        value = abs(a) ** 2 * spread + 2 * (a * np.conj(face) * overlap).real
+        value = value + abs(face) ** 2 / (2 * rate)
         tail = a - gamma * face
-        slope = k * k * abs(a) ** 2 * spread - 2 * k * (a * np.conj(tail) * overlap).real + abs(tail) ** 2 / (2 * rate)
+        slope = k * k * abs(a) ** 2 * spread - 2 * k * (a * np.conj(tail) * overlap).real
+        slope = slope + abs(tail) ** 2 / (2 * rate)
         return self.kappa * np.where(abs(gamma) > 3 * k, slow, slope + k * k * value)
 
 
@@ -307,8 +321,8 @@ def heat_stack(case, order, pieces):
         elastic = np.full(len(depths[j]), own + bulge)
         refractive = (strain[j] - 1) * own + index[j] * clamped_index_slope(layer)
         together = strain[j] * own + bulge + index[j] * clamped_index_slope(layer)
-        source = np.stack([elastic, refractive, together, elastic, together], axis=1).reshape(n, len(point), 5)
-        sources.append(source * layer[2] / n / 2)
+        source = np.stack([elastic, refractive, together, elastic, together], axis=1)
+        sources.append(source.reshape(n, len(point), 5) * layer[2] / n / 2)
         kappa += [layer[7]] * n
         capacity += [layer[8]] * n
         thickness += [layer[2] / n] * n
@@ -319,7 +333,7 @@ def heat_stack(case, order, pieces):
 
 
 def adaptive_integral(function, limit, tolerance):
-    """∫₀^limit of a vector function of an array: Gauss panels, halved until both halves agree with the whole.
+    """∫₀^limit of a vector function of an array: Gauss panels, halved until the halves agree.
 
     Returns (integral, summed differences of the accepted panels).
     """
@@ -343,17 +357,19 @@ def adaptive_integral(function, limit, tolerance):
         if good.all():
             return total, error
         open_ = ~good
-        low, high = (np.concatenate([low[open_], middle[open_]]), np.concatenate([middle[open_], high[open_]]))
+        low, high, middle = low[open_], high[open_], middle[open_]
+        low, high = np.concatenate([low, middle]), np.concatenate([middle, high])
         whole = np.concatenate([left[open_], right[open_]])
     raise ArithmeticError("the integral over wavenumbers did not converge")
 
 
 def thermal_psd(stack, case, frequency, limit, tolerance):
-    """PSDs [m²/Hz] = 4k_BT² ∫(k dk/2π) e^{-k²w²/4} Re∫qΘ dz, and the quadrature's own relative error."""
+    """PSDs [m²/Hz], 4k_BT² ∫(k dk/2π) e^{-k²w²/4} Re∫qΘ dz, and the quadrature's relative error."""
     omega, w = 2 * np.pi * frequency, case["beam_radius_m"]
 
     def integrand(x):
         return (x / (2 * np.pi) * np.exp(-x * x / 4))[:, None] * stack.dissipation(x / w, omega)
 
     value, error = adaptive_integral(integrand, limit, tolerance)
-    return 4 * BOLTZMANN * case["temperature_K"] ** 2 / w**2 * value, np.max(error / np.where(value > 0, value, 1))
+    relative = np.max(error / np.where(value > 0, value, 1))
+    return 4 * BOLTZMANN * case["temperature_K"] ** 2 / w**2 * value, relative

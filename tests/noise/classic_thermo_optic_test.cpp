@@ -20,18 +20,21 @@ using Number = std::complex<long double>;
 constexpr double k_b = core::boltzmann_constant;
 constexpr double pi = core::pi;
 
-/// Γ from the one-dimensional heat equation of film on substrate: elastic weight even through the film,
-/// refractive weight at its face. Units: film of thickness 1, κ = 1, effusivity ratio R.
+/// Γ from the one-dimensional heat equation of film on substrate: elastic weight even through the
+/// film, refractive weight at its face. Units: film of thickness 1, κ = 1, effusivity ratio R.
 long double two_layer_factor(long double xi, long double ratio, long double p_e) {
     const long double p_r = 1 - p_e;
     const Number gamma = Number(1, 1) * xi / 2.0L;
     const Number substrate = gamma / ratio;  // its admittance
-    // ϑ = p_e/γ² + a cosh γz − (p_r/γ) sinh γz; at z = 1 flux = substrate·ϑ.
-    const Number cosh = std::cosh(gamma), sinh = std::sinh(gamma);
-    const Number a = (p_r * (cosh + substrate / gamma * sinh) - substrate * p_e / (gamma * gamma)) /
-                     (gamma * sinh + substrate * cosh);
-    const Number mean = p_e / (gamma * gamma) + a * sinh / gamma - p_r * (cosh - 1.0L) / (gamma * gamma);
-    const Number face = p_e / (gamma * gamma) + a;
+    // ϑ = p_e/γ² + A e^{−γz} + B e^{−γ(1−z)}; flux p_r enters at the face, flux = substrate·ϑ at z
+    // = 1.
+    const Number decay = std::exp(-gamma), even = p_e / (gamma * gamma);
+    const Number reflection = (gamma - substrate) / (gamma + substrate);
+    const Number drawn = substrate * even / (gamma + substrate);
+    const Number down = (p_r / gamma - decay * drawn) / (1.0L - reflection * decay * decay);
+    const Number up = reflection * down * decay - drawn;
+    const Number mean = even + (down + up) * (1.0L - decay) / gamma;
+    const Number face = even + down + up * decay;
     return std::real(p_e * mean + p_r * face) / std::real(1.0L / substrate);
 }
 
@@ -78,7 +81,8 @@ TEST(FaceTemperature, EqualsTheErrorFunctionOfComplexArgument) {
             power *= -z;
         }
         const double w = 250e-6, f = omega * 4.0 * 1.38 / (1.64e6 * w * w) / (2.0 * pi);
-        const double expected = 2.0 * k_b * 9e4 / (std::sqrt(pi) * 1.38 * w) * double(std::real(sum));
+        const double expected =
+            2.0 * k_b * 9e4 / (std::sqrt(pi) * 1.38 * w) * double(std::real(sum));
         worst.see(relative_error(face_temperature_psd(1.38, 1.64e6, w, 300.0, f), expected),
                   "Omega " + std::to_string(omega));
     }
@@ -87,7 +91,8 @@ TEST(FaceTemperature, EqualsTheErrorFunctionOfComplexArgument) {
 }
 
 TEST(FaceTemperature, MeetsTheOneDimensionalLawWhenHeatStaysUnderTheBeam) {
-    // Next order of the asymptotic series of e^{z²}erfc z: Re(1 − 1/(2z²) + 3/(4z⁴)) → 1 + 1/(2Ω) in size.
+    // Next order of the asymptotic series of e^{z²}erfc z: Re(1 − 1/(2z²) + 3/(4z⁴)) → 1 + 1/(2Ω)
+    // in size.
     for (const double omega : {1e4, 1e6, 1e8}) {
         const double w = 0.01, f = omega * 4.0 * 1.38 / (1.64e6 * w * w) / (2.0 * pi);
         const double ratio = face_temperature_psd(1.38, 1.64e6, w, 300.0, f) /
@@ -119,16 +124,17 @@ TEST(ClassicThermoOptic, AgreesWithTheHeatEquationWhereBothHold) {
 }
 
 TEST(ClassicThermoOptic, ReducesToThermoElasticNoiseOfTheFilm) {
-    // M. M. Fejer et al., Phys. Rev. D 70, 082003 (2004): one-dimensional heat, no refraction, thin film.
+    // M. M. Fejer et al., Phys. Rev. D 70, 082003 (2004): one-dimensional heat, no refraction, thin
+    // film.
     const ThermalMaterial& film = tantala;
     const double d = 1e-9, w = 0.5, f = 10.0, omega = 2.0 * pi * f;
-    const double average =
-        film.expansion / (1.0 - 0.23) * (1.23 / 1.17 + 0.66 * 140.0 / 72.0);
-    const double delta = silica.heat_capacity / (2.0 * silica.expansion * film.heat_capacity) * average - 1.0;
-    const double expected = 8.0 * std::sqrt(2.0) * k_b * 9e4 / (pi * std::sqrt(omega)) * d * d / (w * w) *
-                            1.17 * 1.17 * std::pow(film.heat_capacity / silica.heat_capacity, 2) *
-                            silica.expansion * silica.expansion /
-                            std::sqrt(silica.conductivity * silica.heat_capacity) * delta * delta;
+    const double average = film.expansion / (1.0 - 0.23) * (1.23 / 1.17 + 0.66 * 140.0 / 72.0);
+    const double delta =
+        silica.heat_capacity / (2.0 * silica.expansion * film.heat_capacity) * average - 1.0;
+    const double expected =
+        8.0 * std::sqrt(2.0) * k_b * 9e4 / (pi * std::sqrt(omega)) * d * d / (w * w) * 1.17 * 1.17 *
+        std::pow(film.heat_capacity / silica.heat_capacity, 2) * silica.expansion *
+        silica.expansion / std::sqrt(silica.conductivity * silica.heat_capacity) * delta * delta;
     const ClassicThermoOptic classic = classic_thermo_optic(
         silica, {{film, 0.0, surface_weight(d)}}, w, 300.0, f, LayerStrain::own_thickness);
     EXPECT_NEAR(classic.psd / expected, 1.0, 1e-4);
@@ -143,7 +149,8 @@ TEST(ClassicThermoOptic, WithoutACoatingThereIsNothing) {
 }
 
 TEST(EffectiveIndexSlope, OfAQuarterWaveStackFollowsFromTheReadout) {
-    // dn/dT part only: no expansion. Many pairs, so that the closed form of the infinite stack holds.
+    // dn/dT part only: no expansion. Many pairs, so that the closed form of the infinite stack
+    // holds.
     for (const bool high : {true, false}) {
         Mirror mirror = quarter_wave_mirror(high, 60);
         for (ThermalLayer& layer : mirror.layers) layer.material.expansion = 0.0;

@@ -1,4 +1,5 @@
-/// Brownian noise of the coating against closed forms of other authors and against direct integration.
+/// Brownian noise of the coating against closed forms of other authors and against direct
+/// integration.
 
 #include "stillcoat/noise/coating_brownian.hpp"
 
@@ -66,8 +67,7 @@ TEST(CoatingBrownian, EqualsHarryWithEqualLossesAndNoPenetration) {
         const double d = random.spread(1e-9, 1e-4), w = random.spread(1e-5, 0.2);
         const double loss = random.spread(1e-7, 1e-2), t = random.between(4.0, 400.0);
         const double f = random.spread(1e-3, 1e6);
-        const double harry =
-            parallel_perpendicular_psd(substrate, film, d, loss, loss, w, t, f);
+        const double harry = parallel_perpendicular_psd(substrate, film, d, loss, loss, w, t, f);
         const double here =
             coating_psd(substrate, {{film, surface_weight(d)}}, {{loss, loss}}, w, t, f);
         worst.see(relative_error(here, harry), "sample " + std::to_string(i));
@@ -128,8 +128,8 @@ TEST(CoatingBrownian, EqualsTheSumOverMaterialsForEqualLosses) {
         const double nu = films[j].poisson_ratio, d = 1e-7 * (1.0 + double(j));
         const double loss = 1e-4 * (2.0 + double(j)), ratio = films[j].youngs_modulus / 130e9;
         sum += (1.0 - nu - 2.0 * nu * nu) / ((1.0 - nu) * p_s) *
-               (1.0 / ratio + p_s * p_s / ((1.0 + nu) * (1.0 + nu) * (1.0 - 2.0 * nu)) * ratio) * d *
-               loss;
+               (1.0 / ratio + p_s * p_s / ((1.0 + nu) * (1.0 + nu) * (1.0 - 2.0 * nu)) * ratio) *
+               d * loss;
         layers.push_back({films[j], surface_weight(d)});
         losses.push_back({loss, loss});
     }
@@ -141,7 +141,8 @@ TEST(CoatingBrownian, EqualsTheSumOverMaterialsForEqualLosses) {
 TEST(CoatingBrownian, FollowsTemperatureLossFrequencyAndBeamArea) {
     const Mirror mirror = quarter_wave_mirror(true, 5);
     const std::vector<ElasticLayer> layers = mirror.elastic_layers();
-    const std::vector<Loss> losses(layers.size(), {1e-4, 3e-4}), triple(layers.size(), {3e-4, 9e-4});
+    const std::vector<Loss> losses(layers.size(), {1e-4, 3e-4}),
+        triple(layers.size(), {3e-4, 9e-4});
     const double base = coating_psd(silica_elastic, layers, losses, 0.06, 300.0, 100.0);
     EXPECT_NEAR(coating_psd(silica_elastic, layers, losses, 0.06, 150.0, 100.0) / base, 0.5, 1e-15);
     EXPECT_NEAR(coating_psd(silica_elastic, layers, triple, 0.06, 300.0, 100.0) / base, 3.0, 1e-14);
@@ -205,7 +206,8 @@ TEST(CoatingBrownian, KeepsItsFormWhenTheUnitsChange) {
 }
 
 TEST(CoatingBrownian, MeetsTheGradedLossLimitsOfVanishingPoissonRatios) {
-    // ν = ν_s = 0: d [E'φ∥/E² + φ⊥/E'] 2k_BT/(π²w²f), N. Nakagawa et al. (2002), Harry et al. (2002).
+    // ν = ν_s = 0: d [E'φ∥/E² + φ⊥/E'] 2k_BT/(π²w²f), N. Nakagawa et al. (2002), Harry et al.
+    // (2002).
     const double expected = 2.0 * k_b * 300.0 * 6e-6 / (pi * pi * 0.0036 * 100.0) *
                             (110e9 * 2e-4 / (72e9 * 72e9) + 4e-4 / 110e9);
     EXPECT_NEAR(parallel_perpendicular_psd({72e9, 0.0}, {110e9, 0.0}, 6e-6, 2e-4, 4e-4, 0.06, 300.0,
@@ -223,7 +225,8 @@ TEST(Elastic, ConstantsAgreeWithEachOther) {
         const double mu = shear_modulus(elastic), lambda = lame_lambda(elastic);
         const double scale = elastic.youngs_modulus;
         EXPECT_NEAR(p_wave_modulus(elastic), lambda + 2.0 * mu, 1e-14 * p_wave_modulus(elastic));
-        EXPECT_NEAR(bulk_modulus(elastic), lambda + 2.0 / 3.0 * mu, 1e-14 * p_wave_modulus(elastic));
+        EXPECT_NEAR(bulk_modulus(elastic), lambda + 2.0 / 3.0 * mu,
+                    1e-14 * p_wave_modulus(elastic));
         EXPECT_NEAR(mu * (3.0 * lambda + 2.0 * mu) / (lambda + mu), scale, 1e-13 * scale);
         // A pressure p shrinks the face of a half-space by p/(2(λ+μ)).
         EXPECT_NEAR(face_dilatation(elastic) * 2.0 * (lambda + mu), 1.0, 1e-14);

@@ -1,9 +1,9 @@
 #pragma once
-/// The heat equation of coating and substrate solved by collocation at Chebyshev points, with 34 digits:
-/// knows no exponential, no recursion and no closed integral.
+/// The heat equation of coating and substrate solved by collocation at Chebyshev points, with 34
+/// digits: knows no exponential, no recursion and no closed integral.
 ///
-/// In units of iωT: −κϑ'' + (κk² + iωC)ϑ = q in each layer, ϑ and κϑ' continuous, no flux at the face; in
-/// the substrate the decaying solution is known.
+/// In units of iωT: −κϑ'' + (κk² + iωC)ϑ = q in each layer, ϑ and κϑ' continuous, no flux at the
+/// face; in the substrate the decaying solution is known.
 
 #include <boost/multiprecision/cpp_complex.hpp>
 #include <vector>
@@ -16,8 +16,9 @@ using Real = boost::multiprecision::cpp_bin_float_quad;
 using Number = boost::multiprecision::cpp_complex_quad;
 using Matrix = std::vector<std::vector<Number>>;
 
-/// Solves A X = B by elimination with row pivoting; B holds one column per right-hand side. A has no
-/// element farther than `reach` from its diagonal, and rows are exchanged within that reach only.
+/// Solves A X = B by elimination with row pivoting; B holds one column per right-hand side. A has
+/// no element farther than `reach` from its diagonal, and rows are exchanged within that reach
+/// only.
 inline Matrix solve(Matrix a, Matrix b, std::size_t reach) {
     const std::size_t n = a.size();
     for (std::size_t c = 0; c < n; ++c) {
@@ -84,14 +85,16 @@ inline std::vector<std::vector<Number>> products(const Mirror& mirror, double k,
     const Real kappa_s = mirror.substrate.conductivity, c_s = mirror.substrate.heat_capacity;
     const Number i(0, 1);
     const Number gamma = sqrt(Number(Real(k) * k, Real(omega * c_s / kappa_s)));
-    const Real q0 = 2 * (1 + Real(mirror.substrate.elastic.poisson_ratio)) * mirror.substrate.expansion;
+    const Real q0 =
+        2 * (1 + Real(mirror.substrate.elastic.poisson_ratio)) * mirror.substrate.expansion;
     const Number still = q0 / (i * Real(omega) * c_s);  // substrate without conduction, at its top
     Matrix a(size, std::vector<Number>(size, 0)), b(size, std::vector<Number>(3, 0));
     const auto source = [&](std::size_t layer, int j, int which) -> Real {
         const ThermalLayer& l = mirror.layers[layer];
         const Real nu = l.material.elastic.poisson_ratio, alpha = l.material.expansion;
         const Real nu_s = mirror.substrate.elastic.poisson_ratio;
-        const Real lambda = lame_lambda(l.material.elastic), modulus = p_wave_modulus(l.material.elastic);
+        const Real lambda = lame_lambda(l.material.elastic),
+                   modulus = p_wave_modulus(l.material.elastic);
         const Real eta = (1 + nu_s) * (1 - 2 * nu_s) / mirror.substrate.elastic.youngs_modulus;
         const Real stress = alpha * l.material.elastic.youngs_modulus / (1 - 2 * nu);
         const double z = double(grid.point[j] * l.readout.thickness);
@@ -138,7 +141,8 @@ inline std::vector<std::vector<Number>> products(const Mirror& mirror, double k,
         for (std::size_t l = 0; l < count; ++l) {
             for (int j = 0; j <= n; ++j) {
                 const Real weight = grid.weight[j] * mirror.layers[l].readout.thickness;
-                for (int v = 0; v < 2; ++v) result[v][w] += weight * source(l, j, v) * x[l * m + j][w];
+                for (int v = 0; v < 2; ++v)
+                    result[v][w] += weight * source(l, j, v) * x[l * m + j][w];
             }
         }
         const Number base = x[size - 1][w];

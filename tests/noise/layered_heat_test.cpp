@@ -35,9 +35,10 @@ SourceProducts integrated(const Mirror& mirror, double w, double frequency, int 
 
 /// Largest difference; mixed terms are measured against the geometric mean of the two squares.
 double difference(const SourceProducts& a, const SourceProducts& b) {
-    const double scales[] = {b.ee, std::sqrt(b.ee * b.rr), b.rr, std::sqrt(b.ee * b.ss),
-                             std::sqrt(b.rr * b.ss), b.ss, b.bare};
-    const double gaps[] = {a.ee - b.ee, a.er - b.er, a.rr - b.rr, a.es - b.es,
+    const double scales[] = {
+        b.ee,  std::sqrt(b.ee * b.rr), b.rr, std::sqrt(b.ee * b.ss), std::sqrt(b.rr * b.ss), b.ss,
+        b.bare};
+    const double gaps[] = {a.ee - b.ee, a.er - b.er, a.rr - b.rr,    a.es - b.es,
                            a.rs - b.rs, a.ss - b.ss, a.bare - b.bare};
     double worst = 0.0;
     for (int i = 0; i < 7; ++i) {
@@ -80,7 +81,8 @@ TEST(LayeredHeat, EqualsCollocationForRandomMirrors) {
 }
 
 TEST(LayeredHeat, EqualsTheSlabOfTheSubstratesMatterAtEveryThickness) {
-    // Even source to depth h in a half-space: ∫ϑ dz = [h − (1 − e^{−2γh})/(2γ)]/(κγ²), in long double.
+    // Even source to depth h in a half-space: ∫ϑ dz = [h − (1 − e^{−2γh})/(2γ)]/(κγ²), in long
+    // double.
     using Number = std::complex<long double>;
     WorstError worst;
     for (double h = 1e-9; h < 2e-2; h *= 10.0) {
@@ -100,8 +102,8 @@ TEST(LayeredHeat, EqualsTheSlabOfTheSubstratesMatterAtEveryThickness) {
                     }
                 }
                 const double q = 2.0 * 1.17 * 5.1e-7;
-                const double exact = double(
-                    std::real((long double)(q * q * h / 1.38) * shape / gamma_squared));
+                const double exact =
+                    double(std::real((long double)(q * q * h / 1.38) * shape / gamma_squared));
                 worst.see(relative_error(products(mirror, k, omega).ee, exact),
                           "h = " + std::to_string(h * 1e9) + " nm, omega = " +
                               std::to_string(omega) + ", k = " + std::to_string(k));
@@ -156,9 +158,10 @@ TEST(WavenumberRule, HasConvergedFromTenthOfAMillihertzToAMegahertz) {
     for (std::size_t m = 0; m < mirrors.size(); ++m) {
         for (const double w : {3e-5, 2e-4, 1e-3, 1e-2, 0.1}) {
             for (double f = 1e-4; f < 2e6; f *= 10.0) {
-                worst.see(difference(integrated(mirrors[m], w, f, 1), integrated(mirrors[m], w, f, 2)),
-                          "mirror " + std::to_string(m) + ", w = " + std::to_string(w) + " m, f = " +
-                              std::to_string(f) + " Hz");
+                worst.see(
+                    difference(integrated(mirrors[m], w, f, 1), integrated(mirrors[m], w, f, 2)),
+                    "mirror " + std::to_string(m) + ", w = " + std::to_string(w) +
+                        " m, f = " + std::to_string(f) + " Hz");
             }
         }
     }

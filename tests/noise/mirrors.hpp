@@ -109,9 +109,9 @@ inline std::vector<ThermalLayer> cut_layer(const ThermalLayer& layer, double dep
 
 /// The six spectra as a list, for comparisons.
 inline std::vector<double> listed(const ThermalNoise& noise) {
-    return {noise.coating_thermo_elastic,        noise.coating_thermo_refractive,
-            noise.coating_coherent,              noise.thermo_elastic_with_substrate,
-            noise.everything_coherent,           noise.substrate_thermo_elastic};
+    return {noise.coating_thermo_elastic, noise.coating_thermo_refractive,
+            noise.coating_coherent,       noise.thermo_elastic_with_substrate,
+            noise.everything_coherent,    noise.substrate_thermo_elastic};
 }
 
 }  // namespace stillcoat::noise

@@ -99,6 +99,20 @@ TEST(LongStack, DelaysAsItsStoredEnergySays) {
     worst.print("delay law for 20,000 layers, relative");
 }
 
+TEST(LongStack, HasTheDispersionOfItsTopInTheStopBand) {
+    // Light does not reach below some fifty pairs: a hundred times more must not cost digits.
+    for (const double factor : {0.93, 1.01, 1.05}) {
+        const Illumination light = normal_light(factor * wavelength_1064);
+        const auto phase = [&](int layers) {
+            return phase_response(without_dispersion(quarter_wave_stack(2.07, 1.45, layers, 1.45)),
+                                  light);
+        };
+        const PhaseResponse top = phase(200), whole = phase(20000);
+        EXPECT_LE(relative_error(whole.group_delay, top.group_delay), 1e-14);
+        EXPECT_LE(relative_error(whole.group_delay_dispersion, top.group_delay_dispersion), 1e-13);
+    }
+}
+
 TEST(ThickMetal, TransmitsAsItsClosedFormInLogarithms) {
     // |t| = |t01 t12| exp(−Im δ)/|1 + r01 r12 e^{2iδ}|; T = n2/n0 |t|².
     WorstError worst;

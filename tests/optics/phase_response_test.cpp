@@ -40,6 +40,20 @@ TEST(PhaseResponse, PhaseIsTheArgumentOfR) {
     EXPECT_EQ(glass.group_delay_dispersion, 0.0);
 }
 
+TEST(PhaseResponse, PhaseIsNeverMinusPi) {
+    // r of these stacks is a negative real number with either sign of zero beside it.
+    for (const double high : {2.0, 3.0}) {
+        for (const double low : {1.0, 1.45, 2.0}) {
+            for (const int layers : {1, 2, 3}) {
+                const auto stack = quarter_wave_stack(high, low, layers, low);
+                const auto phase = phase_response(without_dispersion(stack), normal_light());
+                EXPECT_GT(phase.reflection_phase, -core::pi)
+                    << high << ", " << low << ", " << layers;
+            }
+        }
+    }
+}
+
 TEST(PhaseResponse, DelayGrowsByTheTransitOfAMatchedFilm) {
     // A film of the incident medium before a metal adds 2 n0 d cosθ/c, and n0 d cosθ/c in
     // transmission.

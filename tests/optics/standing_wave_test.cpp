@@ -194,6 +194,22 @@ TEST(StandingWave, PeakIsTheLargestOfADenseSearch) {
     }
 }
 
+TEST(StandingWave, PeakIsFoundAtTheFarEndWhenTheLightComesFromThere) {
+    // No incident wave does this to a thick absorbing layer; a field put together by hand does.
+    const Complex n(1.5, 0.02);
+    StandingWave wave = standing_wave({1.0, {{n, 5e-6}}, 1.5}, normal_light());
+    wave.layers[0].forward = 0.05;
+    wave.layers[0].backward = 1.0;
+    const double d = wave.layers[0].thickness;
+    double largest = 0.0;
+    for (int step = 0; step <= 20000; ++step) {
+        largest = std::max(largest, relative_intensity(wave, 0, std::min(d, d * step / 20000.0)));
+    }
+    const Peak peak = peak_intensity(wave, 0);
+    EXPECT_GE(peak.intensity, largest * (1.0 - 1e-12));
+    EXPECT_GT(peak.depth, 4e-6);
+}
+
 TEST(StandingWave, FallsBehindTheFaceOfTotalReflectionAsItsPenetrationDepth) {
     // |E|² ∝ exp(−2z/δ), δ = λ/(2π sqrt(n0² sin²θ − n1²)).
     const double n0 = 1.5, angle = 1.0;
