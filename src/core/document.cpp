@@ -62,10 +62,10 @@ Node to_node(const toml::value& value) {
         case toml::value_t::table:
             node.type = Node::Type::table;
             for (const auto& [key, entry] : value.as_table()) {
-                node.entries.emplace_back(key, to_node(entry));
+                node.entries.push_back({key, to_node(entry)});
             }
             std::sort(node.entries.begin(), node.entries.end(),
-                      [](const Entry& a, const Entry& b) { return a.first < b.first; });
+                      [](const Entry& a, const Entry& b) { return a.key < b.key; });
             break;
         default:
             break;
@@ -129,7 +129,7 @@ Place place_in(const toml::source_location& where, const std::string& name) {
 
 const Node* Node::find(const std::string& key) const {
     for (const Entry& entry : entries) {
-        if (entry.first == key) return &entry.second;
+        if (entry.key == key) return &entry.value;
     }
     return nullptr;
 }

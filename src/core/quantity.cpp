@@ -64,7 +64,7 @@ std::string example_of(const QuantityKind& kind) {
 bool looks_like_unit(const std::string& unit) {
     if (unit.empty()) return false;
     const auto first = static_cast<unsigned char>(unit.front());
-    if (unit.rfind("1/", 0) == 0) return unit.find_first_of("@") == std::string::npos;
+    if (unit.rfind("1/", 0) == 0) return unit.find('@') == std::string::npos;
     return (std::isalpha(first) != 0 || first == '%' || first >= 0x80) &&
            unit.find_first_of("@,;\n") == std::string::npos;
 }

@@ -147,7 +147,7 @@ std::string TableReader::required_text(const std::string& key) {
 
 std::optional<std::string> TableReader::choice(const std::string& key,
                                                const std::vector<std::string>& allowed) {
-    const std::optional<std::string> word = text(key);
+    std::optional<std::string> word = text(key);
     if (!word) return std::nullopt;
     if (std::find(allowed.begin(), allowed.end(), *word) != allowed.end()) return word;
     problem_at(key, fmt::format("{} in {} is \"{}\"", key, name_, *word),
@@ -238,7 +238,7 @@ void TableReader::contradiction(const std::string& key, const std::string& other
 
 void TableReader::finish() {
     for (const Entry& entry : table_->entries) {
-        const std::string& key = entry.first;
+        const std::string& key = entry.key;
         if (std::find(known_.begin(), known_.end(), key) != known_.end()) continue;
         const std::optional<std::string> near = nearest_spelling(key, known_);
         std::vector<std::string> allowed = known_;

@@ -17,14 +17,14 @@ namespace fs = std::filesystem;
 
 void read_references(const core::Document& document, Library& library, core::Problems& problems) {
     for (const core::Entry& entry : document.root.entries) {
-        TableReader reader(entry.second, "reference [" + entry.first + "]", problems);
+        TableReader reader(entry.value, "reference [" + entry.key + "]", problems);
         Reference reference;
         reference.citation = reader.required_text("citation");
         reference.doi = reader.text("doi").value_or("");
         reference.seen = reader.required_text("seen");
         reader.text("note");
         reader.finish();
-        library.references[entry.first] = std::move(reference);
+        library.references[entry.key] = std::move(reference);
     }
 }
 

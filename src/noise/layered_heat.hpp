@@ -11,7 +11,7 @@
 
 namespace stillcoat::noise {
 
-/// Re ∫ q_a ϑ_b dz [m/(W K)·…] for the sources e (expansion of the coating), r (refraction of the
+/// Re ∫ q_a ϑ_b dz [m⁴/(W K)] for the sources e (expansion of the coating), r (refraction of the
 /// coating) and s (expansion of the substrate), and for the bare substrate without any coating.
 struct SourceProducts {
     double ee = 0.0, er = 0.0, rr = 0.0;

@@ -6,33 +6,31 @@
 
 namespace stillcoat::noise {
 
-void require_finite(double value, const std::string& quantity, const std::string& unit,
-                    const std::string& source) {
+void require_finite(double value, const char* quantity, const char* unit, const char* source) {
     if (!std::isfinite(value)) throw core::DomainError(quantity, value, unit, "finite", source);
 }
 
-void require_positive(double value, const std::string& quantity, const std::string& unit,
-                      const std::string& source) {
+void require_positive(double value, const char* quantity, const char* unit, const char* source) {
     if (!(value > 0.0) || !std::isfinite(value)) {
         throw core::DomainError(quantity, value, unit, "greater than 0 and finite", source);
     }
 }
 
-void require_not_negative(double value, const std::string& quantity, const std::string& unit,
-                          const std::string& source) {
+void require_not_negative(double value, const char* quantity, const char* unit,
+                          const char* source) {
     if (!(value >= 0.0) || !std::isfinite(value)) {
         throw core::DomainError(quantity, value, unit, "0 or greater, and finite", source);
     }
 }
 
 void require_conditions(double beam_radius, double temperature, double frequency,
-                        const std::string& source) {
+                        const char* source) {
     require_positive(beam_radius, "beam radius", "m", source);
     require_positive(temperature, "temperature", "K", source);
     require_positive(frequency, "frequency", "Hz", source);
 }
 
-double finite_psd(double psd, const std::string& quantity, const std::string& source) {
+double finite_psd(double psd, const char* quantity, const char* source) {
     if (!std::isfinite(psd)) {
         throw core::DomainError(quantity, psd, "m^2/Hz", "within the range of double precision",
                                 source);

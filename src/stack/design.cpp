@@ -109,15 +109,15 @@ void read_overrides(TableReader& document, Design& design, materials::Library& l
     const Node* node = document.table("material");
     if (node == nullptr) return;
     for (const core::Entry& entry : node->entries) {
-        const std::string& name = entry.first;
+        const std::string& name = entry.key;
         if (library.materials.count(name) == 0) {
             const auto near = core::nearest_spelling(name, library.names());
-            document.problems().add(entry.second.place(), fmt::format("unknown material \"{}\"", name),
+            document.problems().add(entry.value.place(), fmt::format("unknown material \"{}\"", name),
                                     near ? fmt::format("did you mean \"{}\"?", *near)
                                          : "`stillcoat materials` lists the known ones");
             continue;
         }
-        materials::override_properties(library, name, entry.second, document.problems());
+        materials::override_properties(library, name, entry.value, document.problems());
         design.overridden.push_back(name);
     }
 }

@@ -9,6 +9,9 @@ LAYER_COLUMNS = ["index", "extinction", "thickness_m", "youngs_modulus_Pa", "poi
                  "heat_capacity_J_per_m3K", "p11", "p12"]
 FREQUENCIES = [0.1, 1.0, 10.0, 100.0, 1000.0, 10000.0, 100000.0]
 RADII = [0.06, 250e-6]
+CERDONIO_PARAMETERS = [1e-4, 0.01, 0.1, 1.0, 10.0, 100.0, 1e4, 1e6]
+THICKNESS_FACTORS = [(0.01, 1.3, 1.5), (1.5, 0.7, 2.0), (3.0, 2.3, -0.5), (12.0, 0.4, 0.3),
+                     (40.0, 5.0, 1.2)]  # (ξ, R, elastic share)
 
 
 def substrate(index, youngs, poisson, expansion, conductivity, capacity, extinction=0.0):

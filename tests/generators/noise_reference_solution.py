@@ -89,7 +89,7 @@ def layer_energies(layer, substrate, beam_radius, depth_weights, strain_weights)
 
 
 def expansion_lengths(layer, substrate):
-    """Motion of the face per kelvin and metre of hot layer: (own thickness, bulge of the substrate).
+    """Motion of the face per kelvin and metre of layer: (own thickness, bulge of the substrate).
 
     Forward: a layer that may not widen grows in thickness and pushes sideways; the sideways force,
     varying along the face as e^{ikx}, drags the substrate's face and lifts it.
@@ -105,7 +105,7 @@ def expansion_lengths(layer, substrate):
 
 
 def substrate_source(substrate, steepness=2.7):
-    """q_s of the face's motion ∫ q_s e^{-kz} Θ dz, from the thermal stress of Θ = e^{-qz} at k = 1."""
+    """q_s of the face's motion ∫ q_s e^{-kz} Θ dz, from the stress of Θ = e^{-qz} at k = 1."""
     youngs, poisson = substrate["youngs_modulus_Pa"], substrate["poisson_ratio"]
     mu = lame(youngs, poisson)[1]
     q = steepness
@@ -196,8 +196,8 @@ def clamped_index_slope(layer):
 def reference_element(order):
     """Gauss points and weights, hat functions, bubbles there, bubble masses μ_n, coupling ∫φ_i v_n.
 
-    Bubbles are integrated Legendre polynomials, turned so that stiffness is the unit matrix and mass
-    is diagonal; hats and bubbles have orthogonal gradients, so a uniform temperature conducts
+    Bubbles are integrated Legendre polynomials, turned so that stiffness is the unit matrix and
+    mass is diagonal; hats and bubbles have orthogonal gradients, so a uniform temperature conducts
     nothing, exactly.
     """
     point, weight = np.polynomial.legendre.leggauss(order + 8)
@@ -213,7 +213,7 @@ def reference_element(order):
 class HeatStack:
     """High-order finite elements (Galerkin) through the layers, joined by their end temperatures.
 
-    The substrate is exact. Wavenumbers come as an array; the last axis of a result counts the sources.
+    The substrate is exact. Wavenumbers come as an array; the last axis of a result counts sources.
     """
 
     def __init__(self, conductivity, capacity, thickness, loads, order, substrate, source):

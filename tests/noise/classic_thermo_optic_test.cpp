@@ -13,8 +13,8 @@
 namespace stillcoat::noise {
 namespace {
 
-using support::relative_error;
-using support::WorstError;
+using test::relative_error;
+using test::WorstError;
 using Number = std::complex<long double>;
 
 constexpr double k_b = core::boltzmann_constant;
@@ -63,7 +63,7 @@ TEST(ThickCoatingFactor, TendsToOneForThinFilmsAndStaysFiniteForThickOnes) {
             }
         }
     }
-    // ξ → ∞: p_E²·2/(ξ²·R)·… vanishes, refraction at the face feels the film alone: p_R²/R.
+    // ξ → ∞: expansion is diluted over the film, refraction at the face feels the film alone, p_R²/R.
     EXPECT_NEAR(thick_coating_factor(1e6, 2.5, 0.0), 1.0 / 2.5, 1e-12);
     EXPECT_LT(thick_coating_factor(1e6, 2.5, 1.0), 1e-5);
     EXPECT_TRUE(std::isfinite(thick_coating_factor(1e30, 2.5, 0.4)));

@@ -13,8 +13,8 @@
 namespace stillcoat::noise {
 namespace {
 
-using support::relative_error;
-using support::WorstError;
+using test::relative_error;
+using test::WorstError;
 
 constexpr double k_b = core::boltzmann_constant;
 constexpr double pi = core::pi;

@@ -14,7 +14,7 @@
 namespace stillcoat::optics {
 namespace {
 
-using support::relative_error;
+using test::relative_error;
 
 constexpr Complex i(0.0, 1.0);
 

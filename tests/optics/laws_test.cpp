@@ -12,8 +12,8 @@
 namespace stillcoat::optics {
 namespace {
 
-using support::relative_error;
-using support::WorstError;
+using test::relative_error;
+using test::WorstError;
 
 TEST(EnergyBalance, ReflectanceTransmittanceAndAbsorptanceAddUpToOne) {
     const std::uint32_t seed = 20240601;

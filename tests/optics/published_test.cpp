@@ -12,7 +12,7 @@
 namespace stillcoat::optics {
 namespace {
 
-using support::PublishedRow;
+using test::PublishedRow;
 
 OpticalStack described_stack(const PublishedRow& row) {
     return quarter_wave_stack(row.input("outermost index"), row.input("next index"),
@@ -52,10 +52,10 @@ double computed(const PublishedRow& row) {
 }
 
 TEST(PublishedOptics, EveryRowIsReproducedToItsLastPrintedDigit) {
-    const auto rows = support::published_rows(std::string(STILLCOAT_PUBLISHED) + "/optics.csv");
+    const auto rows = test::published_rows(std::string(STILLCOAT_PUBLISHED) + "/optics.csv");
     EXPECT_GE(rows.size(), 15u);
     for (const PublishedRow& row : rows) {
-        const double error = support::relative_error(computed(row), row.value);
+        const double error = test::relative_error(computed(row), row.value);
         EXPECT_LE(error, row.relative_tolerance) << row.row << ": " << computed(row);
     }
 }

@@ -13,8 +13,8 @@
 namespace stillcoat::optics {
 namespace {
 
-using support::relative_error;
-using support::WorstError;
+using test::relative_error;
+using test::WorstError;
 
 constexpr double high = 2.07, low = 1.45, q = low / high;
 /// Gauss–Legendre quadrature in panels far shorter than any wave in the layer.

@@ -20,8 +20,8 @@ namespace stillcoat::optics {
 namespace {
 
 using nlohmann::json;
-using support::relative_error;
-using support::WorstError;
+using test::relative_error;
+using test::WorstError;
 
 constexpr double epsilon = std::numeric_limits<double>::epsilon();
 

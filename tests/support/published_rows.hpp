@@ -1,15 +1,17 @@
 #pragma once
 /// Tables of published check values: one row each, columns
 /// row,quantity,inputs,value_as_printed,unit,relative_tolerance,source,place,status,remark.
-/// `inputs` is a list `name = value; name = value`. Fields with commas stand in double quotes.
+/// `inputs` is a list `name = value; name = value`.
 
-#include <fstream>
+#include <algorithm>
 #include <map>
 #include <stdexcept>
 #include <string>
 #include <vector>
 
-namespace stillcoat::support {
+#include "support/csv.hpp"
+
+namespace stillcoat::test {
 
 struct PublishedRow {
     std::string row;
@@ -26,21 +28,6 @@ struct PublishedRow {
         return found->second;
     }
 };
-
-inline std::vector<std::string> comma_separated_fields(const std::string& line) {
-    std::vector<std::string> fields(1);
-    bool quoted = false;
-    for (const char c : line) {
-        if (c == '"') {
-            quoted = !quoted;
-        } else if (c == ',' && !quoted) {
-            fields.emplace_back();
-        } else {
-            fields.back() += c;
-        }
-    }
-    return fields;
-}
 
 inline std::string trimmed(const std::string& text) {
     const std::size_t first = text.find_first_not_of(' ');
@@ -62,25 +49,16 @@ inline std::map<std::string, std::string> named_inputs(const std::string& text) 
     return inputs;
 }
 
-/// All rows of STILLCOAT_PUBLISHED/<file>. @throws std::runtime_error for a malformed or empty
-/// file.
+/// @throws std::runtime_error for a malformed or empty file.
 inline std::vector<PublishedRow> published_rows(const std::string& path) {
-    std::ifstream file(path);
-    std::string line;
     std::vector<PublishedRow> rows;
-    std::getline(file, line);
-    if (line !=
-        "row,quantity,inputs,value_as_printed,unit,relative_tolerance,source,place,status,remark") {
-        throw std::runtime_error(path + ": missing, or other columns than expected");
-    }
-    while (std::getline(file, line)) {
-        if (line.empty()) continue;
-        const std::vector<std::string> f = comma_separated_fields(line);
-        if (f.size() != 10) throw std::runtime_error(path + ": not ten fields: " + line);
-        rows.push_back({f[0], f[1], named_inputs(f[2]), std::stod(f[3]), f[4], std::stod(f[5])});
+    for (const Row& row : read_csv(path)) {
+        rows.push_back({row.at("row"), row.at("quantity"), named_inputs(row.at("inputs")),
+                        std::stod(row.at("value_as_printed")), row.at("unit"),
+                        std::stod(row.at("relative_tolerance"))});
     }
     if (rows.empty()) throw std::runtime_error(path + " has no rows");
     return rows;
 }
 
-}  // namespace stillcoat::support
+}  // namespace stillcoat::test

@@ -5,7 +5,7 @@
 #include <iostream>
 #include <string>
 
-namespace stillcoat::support {
+namespace stillcoat::test {
 
 class WorstError {
   public:
@@ -29,4 +29,4 @@ inline double relative_error(double value, double expected) {
     return value == expected ? 0.0 : std::abs(value - expected) / std::abs(expected);
 }
 
-}  // namespace stillcoat::support
+}  // namespace stillcoat::test

@@ -6,7 +6,6 @@
 #include <cstdint>
 #include <memory>
 #include <string>
-#include <utility>
 #include <vector>
 
 #include "stillcoat/core/errors.hpp"
@@ -16,9 +15,7 @@ namespace stillcoat::core {
 inline constexpr std::uintmax_t largest_file_bytes = 8'000'000;
 inline constexpr int deepest_nesting = 64;
 
-struct Node;
-/// A key and its value, in the order in which the TOML library keeps them (by name).
-using Entry = std::pair<std::string, Node>;
+struct Entry;
 
 struct Node {
     enum class Type { text, integer, real, boolean, array, table, other };
@@ -37,6 +34,12 @@ struct Node {
     /// Where the key stands, when it is on the line of its value; the value's place otherwise.
     Place key_place(const std::string& key) const;
     bool is_number() const { return type == Type::integer || type == Type::real; }
+};
+
+/// A key and its value; a table holds them in the order of their names.
+struct Entry {
+    std::string key;
+    Node value;
 };
 
 /// What a node is, in words: "a number", "a table".
