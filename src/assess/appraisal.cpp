@@ -35,7 +35,8 @@ FaceOptics face_optics(const stack::Mirror& mirror, const optics::Illumination& 
     return face;
 }
 
-std::vector<FieldSample> field_profile(const stack::Mirror& mirror, const optics::Illumination& light) {
+std::vector<FieldSample> field_profile(const stack::Mirror& mirror,
+                                       const optics::Illumination& light) {
     constexpr int samples_per_layer = 24;
     const optics::StandingWave wave = optics::standing_wave(optical_stack(mirror), light);
     std::vector<FieldSample> field;
@@ -44,7 +45,8 @@ std::vector<FieldSample> field_profile(const stack::Mirror& mirror, const optics
         const stack::MirrorLayer& layer = mirror.layers[j];
         for (int i = 0; i <= samples_per_layer; ++i) {
             const double depth = std::min(layer.thickness, layer.thickness * i / samples_per_layer);
-            field.push_back({top + depth, j, layer.optical.index.value, optics::relative_intensity(wave, j, depth)});
+            field.push_back({top + depth, j, layer.optical.index.value,
+                             optics::relative_intensity(wave, j, depth)});
         }
         top += layer.thickness;
     }
@@ -73,21 +75,23 @@ void note_metals(const stack::Mirror& mirror, std::vector<std::string>& notes) {
         if (layer.optical.extinction > layer.optical.index.value) metals.insert(layer.material);
     }
     for (const std::string& material : metals) {
-        notes.push_back(fmt::format("stored energy of {} is given in the non-dispersive form, which in a metal is not "
-                                    "the whole energy",
-                                    material));
+        notes.push_back(fmt::format(
+            "stored energy of {} is given in the non-dispersive form, which in a metal is not "
+            "the whole energy",
+            material));
     }
 }
 
 void note_shift(const stack::Design& design, const stack::Mirror& mirror,
-                   std::vector<std::string>& notes) {
+                std::vector<std::string>& notes) {
     if (design.temperature == design.coating.reference_temperature) return;
     const double ppm = (mirror.optical_path_ratio - 1.0) * 1e6;
-    notes.push_back(fmt::format(
-        "from {:g} K to {:g} K the optical thickness of the coating changes by {:+.0f} ppm: its spectrum "
-        "moves by {:+.2f} nm",
-        design.coating.reference_temperature, design.temperature, ppm,
-        (mirror.optical_path_ratio - 1.0) * design.light.wavelength * 1e9));
+    notes.push_back(
+        fmt::format("from {:g} K to {:g} K the optical thickness of the coating changes by {:+.0f} "
+                    "ppm: its spectrum "
+                    "moves by {:+.2f} nm",
+                    design.coating.reference_temperature, design.temperature, ppm,
+                    (mirror.optical_path_ratio - 1.0) * design.light.wavelength * 1e9));
 }
 
 std::vector<std::string> without_uncertainty(const std::vector<stack::Ledger::Use>& uses) {
@@ -103,9 +107,10 @@ std::vector<std::string> extrapolated_losses(const std::vector<stack::Ledger::Us
     std::vector<std::string> list;
     for (const stack::Ledger::Use& use : uses) {
         if (!use.frequency_extrapolated || !use.entry->frequency) continue;
-        list.push_back(fmt::format("{} of {} was measured from {:g} Hz to {:g} Hz; its power law is used outside too",
-                                   materials::info(use.property).title, use.material,
-                                   use.entry->frequency->lower, use.entry->frequency->upper));
+        list.push_back(fmt::format(
+            "{} of {} was measured from {:g} Hz to {:g} Hz; its power law is used outside too",
+            materials::info(use.property).title, use.material, use.entry->frequency->lower,
+            use.entry->frequency->upper));
     }
     return list;
 }
@@ -129,11 +134,11 @@ Appraisal appraise(const stack::Design& design, const materials::Library& librar
     if (choice != PolarisationChoice::s) polarisations.push_back(optics::Polarisation::p);
     if (design.light.angle == 0.0) polarisations = {optics::Polarisation::s};
     for (const optics::Polarisation polarisation : polarisations) {
-        result.faces.push_back(
-            face_optics(result.mirror, {design.light.wavelength, design.light.angle, polarisation}));
+        result.faces.push_back(face_optics(
+            result.mirror, {design.light.wavelength, design.light.angle, polarisation}));
     }
-    result.field =
-        field_profile(result.mirror, {design.light.wavelength, design.light.angle, polarisations[0]});
+    result.field = field_profile(result.mirror,
+                                 {design.light.wavelength, design.light.angle, polarisations[0]});
     warn_of_unknown_absorption(result.mirror, design.light.wavelength, result.warnings);
     note_metals(result.mirror, result.notes);
     note_shift(design, result.mirror, result.notes);
@@ -144,7 +149,8 @@ Appraisal appraise(const stack::Design& design, const materials::Library& librar
             "noise is computed for normal incidence only; the optics hold at this angle";
     }
     for (const std::string& note : ledger.notes()) result.notes.push_back(note);
-    for (std::string& note : extrapolated_losses(ledger.uses())) result.notes.push_back(std::move(note));
+    for (std::string& note : extrapolated_losses(ledger.uses()))
+        result.notes.push_back(std::move(note));
     result.analogies = ledger.analogies();
     result.fixed = without_uncertainty(ledger.uses());
     result.uses = ledger.uses();

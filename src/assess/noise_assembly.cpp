@@ -9,7 +9,9 @@
 #include "assess/noise_inputs.hpp"
 #include "assess/noise_validity.hpp"
 #include "assess/optical_view.hpp"
+#include "stillcoat/core/constants.hpp"
 #include "stillcoat/noise/classic_thermo_optic.hpp"
+#include "stillcoat/noise/quantum_limit.hpp"
 #include "stillcoat/noise/substrate.hpp"
 #include "stillcoat/optics/readout.hpp"
 
@@ -47,7 +49,8 @@ class NoiseModel {
     /// Losses of all layers at a frequency; the reason in brownian_missing_ when one is unknown.
     std::vector<noise::Loss> layer_losses(double frequency);
     double coating_psd(const std::vector<noise::StrainEnergy>& energies,
-                       const std::vector<noise::Loss>& losses, double frequency, bool bulk, bool shear) const;
+                       const std::vector<noise::Loss>& losses, double frequency, bool bulk,
+                       bool shear) const;
 
     const stack::Design& design_;
     const stack::Mirror& mirror_;
@@ -64,6 +67,7 @@ class NoiseModel {
     std::string refraction_missing_;  // coating thermo-refractive impossible
     Wanted<noise::StrainEnergy> substrate_energy_;
     std::string substrate_brownian_missing_;
+    Wanted<double> mass_;  // of a finite mirror [kg]
     std::optional<noise::TransmittedPath> path_;
     std::string path_missing_;
 };
@@ -95,8 +99,10 @@ void NoiseModel::prepare_brownian() {
         at_face.push_back({*elastic.value, face_weights_[j]});
     }
     if (!brownian_missing_.empty()) return;
-    energies_ = noise::thin_film_energies(*substrate_elastic_.value, elastic_layers_, design_.beam_radius);
-    face_energies_ = noise::thin_film_energies(*substrate_elastic_.value, at_face, design_.beam_radius);
+    energies_ =
+        noise::thin_film_energies(*substrate_elastic_.value, elastic_layers_, design_.beam_radius);
+    face_energies_ =
+        noise::thin_film_energies(*substrate_elastic_.value, at_face, design_.beam_radius);
     layer_losses(design_.band.from);
 }
 
@@ -106,7 +112,8 @@ void NoiseModel::prepare_thermal() {
     for (std::size_t j = 0; j < mirror_.layers.size() && expansion_missing_.empty(); ++j) {
         const stack::MirrorLayer& layer = mirror_.layers[j];
         const Wanted<noise::ThermalMaterial> material = inputs_.thermal(layer.material);
-        const Wanted<double> slope = inputs_.free_index_slope(layer.material, layer.optical.index.value);
+        const Wanted<double> slope =
+            inputs_.free_index_slope(layer.material, layer.optical.index.value);
         if (!material.value) {
             expansion_missing_ = material.missing;
             break;
@@ -120,14 +127,23 @@ void NoiseModel::prepare_thermal() {
 void NoiseModel::prepare_substrate() {
     const std::string& name = design_.mirror.substrate;
     if (substrate_elastic_.value) {
-        substrate_energy_.value = noise::half_space_energy(*substrate_elastic_.value, design_.beam_radius);
+        substrate_energy_.value =
+            noise::half_space_energy(*substrate_elastic_.value, design_.beam_radius);
     }
     substrate_energy_.missing = substrate_elastic_.missing;
     const Wanted<noise::Loss> loss = inputs_.loss(name, design_.band.from);
-    substrate_brownian_missing_ = !substrate_energy_.value ? substrate_energy_.missing : loss.missing;
+    substrate_brownian_missing_ =
+        !substrate_energy_.value ? substrate_energy_.missing : loss.missing;
+    if (design_.mirror.thickness) {
+        mass_ = inputs_.property(name, PropertyId::density);
+        const double radius = *design_.mirror.diameter / 2.0;
+        if (mass_.value) *mass_.value *= core::pi * radius * radius * *design_.mirror.thickness;
+    } else {
+        mass_.missing = "diameter and thickness of the mirror not given";
+    }
     const Wanted<double> slope = inputs_.property(name, PropertyId::thermo_optic_coefficient);
     if (!design_.mirror.thickness) {
-        path_missing_ = "thickness of the mirror not given";
+        path_missing_ = mass_.missing;
     } else if (!substrate_thermal_.value) {
         path_missing_ = substrate_thermal_.missing;
     } else if (!slope.value) {
@@ -180,23 +196,29 @@ NoiseTerm named(const std::string& key, const std::string& title, const std::str
 std::vector<NoiseTerm> NoiseModel::terms() const {
     std::vector<NoiseTerm> list{
         named("coating_brownian", "coating Brownian",
-              "thin film on a half-space with light penetration and photoelasticity, bulk and shear loss: "
-              "Hong et al., Phys. Rev. D 87, 082001 (2013); leaves out the ratio of thickness to beam",
+              "thin film on a half-space with light penetration and photoelasticity, bulk and "
+              "shear loss: "
+              "Hong et al., Phys. Rev. D 87, 082001 (2013); leaves out the ratio of thickness to "
+              "beam",
               brownian_missing_),
         named("thermal_coherent", "thermal, all coherent",
-              "one heat equation for coating and substrate, expansion and refraction coherent: Evans et al., "
+              "one heat equation for coating and substrate, expansion and refraction coherent: "
+              "Evans et al., "
               "Phys. Rev. D 78, 102003 (2008) with Levin, Phys. Lett. A 372, 1941 (2008)",
               refraction_missing_),
         named("substrate_brownian", "substrate Brownian",
-              "half-space: Bondu, Hello & Vinet, Phys. Lett. A 246, 227 (1998); leaves out surface loss",
+              "half-space: Bondu, Hello & Vinet, Phys. Lett. A 246, 227 (1998); leaves out surface "
+              "loss",
               substrate_brownian_missing_)};
-    // Without dn/dT the expansion alone is still known, and without the coating's data the substrate's.
+    // Without dn/dT the expansion alone is still known, and without the coating's data the
+    // substrate's.
     if (!refraction_missing_.empty() && substrate_thermal_.value) {
-        NoiseTerm part = expansion_missing_.empty()
-                             ? named("thermo_elastic_with_substrate", "thermo-elastic alone",
-                                     "as the coherent term, without dn/dT", "")
-                             : named("substrate_thermo_elastic", "substrate thermo-elastic",
-                                     "bare half-space: Cerdonio et al., Phys. Rev. D 63, 082003 (2001)", "");
+        NoiseTerm part =
+            expansion_missing_.empty()
+                ? named("thermo_elastic_with_substrate", "thermo-elastic alone",
+                        "as the coherent term, without dn/dT", "")
+                : named("substrate_thermo_elastic", "substrate thermo-elastic",
+                        "bare half-space: Cerdonio et al., Phys. Rev. D 63, 082003 (2001)", "");
         list.push_back(std::move(part));
     }
     for (NoiseTerm& term : list) term.in_total = term.missing.empty();
@@ -204,29 +226,39 @@ std::vector<NoiseTerm> NoiseModel::terms() const {
 }
 
 std::vector<NoiseTerm> NoiseModel::comparisons() const {
-    const std::string heat = "parts of the coherent heat equation; they interfere and are not to be added";
+    const std::string heat =
+        "parts of the coherent heat equation; they interfere and are not to be added";
     return {
         named("coating_brownian_bulk", "coating Brownian, bulk part", "", brownian_missing_),
         named("coating_brownian_shear", "coating Brownian, shear part", "", brownian_missing_),
         named("coating_brownian_at_face", "coating Brownian, light kept at the face",
-              "g = 1: Harry et al., Class. Quantum Grav. 19, 897 (2002) with equal losses", brownian_missing_),
+              "g = 1: Harry et al., Class. Quantum Grav. 19, 897 (2002) with equal losses",
+              brownian_missing_),
         named("coating_thermo_elastic", "coating thermo-elastic alone", heat, expansion_missing_),
-        named("coating_thermo_refractive", "coating thermo-refractive alone", heat, refraction_missing_),
+        named("coating_thermo_refractive", "coating thermo-refractive alone", heat,
+              refraction_missing_),
         named("coating_coherent", "coating thermo-optic, coherent", heat, refraction_missing_),
         named("bare_substrate_thermo_elastic", "substrate thermo-elastic, bare",
               "Cerdonio et al., Phys. Rev. D 63, 082003 (2001)", substrate_thermal_.missing),
-        named("classic_thermo_optic", "classic closed form of coating thermo-optic",
-              "Evans et al., Phys. Rev. D 78, 102003 (2008), layer strain without substrate bending",
-              refraction_missing_),
+        named(
+            "classic_thermo_optic", "classic closed form of coating thermo-optic",
+            "Evans et al., Phys. Rev. D 78, 102003 (2008), layer strain without substrate bending",
+            refraction_missing_),
         named("transmitted_thermo_refractive", "light crossing the substrate once",
               "optical path: Braginsky & Vyatchanin, Phys. Lett. A 324, 345 (2004)", path_missing_),
         named("transmitted_standing_wave", "its standing-wave part",
               "Benthem & Levin, Phys. Rev. D 80, 062004 (2009)", path_missing_),
+        named("free_mass_quantum_limit",
+              mass_.value ? fmt::format("quantum limit of a free mass of {:.3g} kg", *mass_.value)
+                          : "quantum limit of the free mass",
+              "a reference curve, not a noise of the mirror: Kimble et al., Phys. Rev. D 65, "
+              "022002 (2001)",
+              mass_.missing),
     };
 }
 
-void NoiseModel::fill(Noise& noise, const std::vector<double>& list, std::vector<double> NoiseTerm::*target,
-                      std::vector<double> Noise::*total) {
+void NoiseModel::fill(Noise& noise, const std::vector<double>& list,
+                      std::vector<double> NoiseTerm::*target, std::vector<double> Noise::*total) {
     const double t = design_.temperature, w = design_.beam_radius;
     const std::string& substrate = design_.mirror.substrate;
     for (const double f : list) {
@@ -235,7 +267,8 @@ void NoiseModel::fill(Noise& noise, const std::vector<double>& list, std::vector
             const std::vector<noise::Loss> losses = layer_losses(f);
             values["coating_brownian_bulk"] = coating_psd(energies_, losses, f, true, false);
             values["coating_brownian_shear"] = coating_psd(energies_, losses, f, false, true);
-            values["coating_brownian"] = values["coating_brownian_bulk"] + values["coating_brownian_shear"];
+            values["coating_brownian"] =
+                values["coating_brownian_bulk"] + values["coating_brownian_shear"];
             values["coating_brownian_at_face"] = coating_psd(face_energies_, losses, f, true, true);
         }
         if (expansion_missing_.empty()) {
@@ -248,7 +281,8 @@ void NoiseModel::fill(Noise& noise, const std::vector<double>& list, std::vector
             values["thermo_elastic_with_substrate"] = heat.thermo_elastic_with_substrate;
             values["classic_thermo_optic"] =
                 noise::classic_thermo_optic(*substrate_thermal_.value, thermal_layers_, w, t, f,
-                                            noise::LayerStrain::own_thickness).psd;
+                                            noise::LayerStrain::own_thickness)
+                    .psd;
         }
         if (substrate_thermal_.value) {
             values["substrate_thermo_elastic"] =
@@ -258,12 +292,15 @@ void NoiseModel::fill(Noise& noise, const std::vector<double>& list, std::vector
         if (path_) {
             values["transmitted_thermo_refractive"] =
                 noise::thermo_refractive_psd(*substrate_thermal_.value, *path_, w, t, f);
-            values["transmitted_standing_wave"] =
-                noise::standing_wave_thermo_refractive_psd(*substrate_thermal_.value, *path_, w, t, f);
+            values["transmitted_standing_wave"] = noise::standing_wave_thermo_refractive_psd(
+                *substrate_thermal_.value, *path_, w, t, f);
+        }
+        if (mass_.value) {
+            values["free_mass_quantum_limit"] = noise::free_mass_quantum_limit_psd(*mass_.value, f);
         }
         if (substrate_brownian_missing_.empty()) {
-            values["substrate_brownian"] =
-                noise::brownian_psd(*substrate_energy_.value, *inputs_.loss(substrate, f).value, t, f);
+            values["substrate_brownian"] = noise::brownian_psd(
+                *substrate_energy_.value, *inputs_.loss(substrate, f).value, t, f);
         }
         double sum = 0.0;
         for (std::vector<NoiseTerm>* group : {&noise.terms, &noise.comparisons}) {
@@ -283,8 +320,9 @@ std::vector<LayerNoise> NoiseModel::layer_noise(double frequency) {
     if (!brownian_missing_.empty()) return list;
     const std::vector<noise::Loss> losses = layer_losses(frequency);
     for (std::size_t j = 0; j < energies_.size(); ++j) {
-        list.push_back({energies_[j].bulk, energies_[j].shear,
-                        noise::brownian_psd(energies_[j], losses[j], design_.temperature, frequency)});
+        list.push_back(
+            {energies_[j].bulk, energies_[j].shear,
+             noise::brownian_psd(energies_[j], losses[j], design_.temperature, frequency)});
     }
     return list;
 }
@@ -323,7 +361,8 @@ Noise assemble_noise(const stack::Design& design, const materials::Library& libr
                                  [](const NoiseTerm& term) { return term.missing.empty(); });
     model.fill(noise, noise.frequencies, &NoiseTerm::psd, &Noise::total);
     model.fill(noise, noise.spot, &NoiseTerm::spot_psd, &Noise::spot_total);
-    noise.layer_frequency = noise.spot.empty() ? std::sqrt(design.band.from * design.band.to) : noise.spot[0];
+    noise.layer_frequency =
+        noise.spot.empty() ? std::sqrt(design.band.from * design.band.to) : noise.spot[0];
     for (const double f : noise.spot) {
         if (std::abs(std::log(f / 100.0)) < std::abs(std::log(noise.layer_frequency / 100.0))) {
             noise.layer_frequency = f;

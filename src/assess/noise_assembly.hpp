@@ -1,6 +1,6 @@
 #pragma once
-/// Puts the noise terms of one mirror together from the library's values; leaves out, with the reason,
-/// what an unknown value makes impossible.
+/// Puts the noise terms of one mirror together from the library's values; leaves out, with the
+/// reason, what an unknown value makes impossible.
 
 #include "stillcoat/assess/appraisal.hpp"
 

@@ -10,7 +10,8 @@ NoiseInputs::NoiseInputs(const stack::Design& design, const materials::Library& 
                          const stack::Mirror&, stack::Ledger& ledger)
     : design_(design), library_(library), ledger_(ledger) {}
 
-Wanted<double> NoiseInputs::property_at(const std::string& material, PropertyId id, double frequency) {
+Wanted<double> NoiseInputs::property_at(const std::string& material, PropertyId id,
+                                        double frequency) {
     const materials::Value value = materials::evaluate(
         library_, material, id, {design_.temperature, design_.light.wavelength, frequency});
     if (value.number) return {ledger_.use(material, id, value), ""};
@@ -40,7 +41,9 @@ Wanted<noise::ThermalMaterial> NoiseInputs::thermal(const std::string& material)
         if (!number.value) return {std::nullopt, number.missing};
         numbers[i] = *number.value;
     }
-    return {noise::ThermalMaterial{*constants.value, numbers[0], numbers[1], numbers[2] * numbers[3]}, ""};
+    return {
+        noise::ThermalMaterial{*constants.value, numbers[0], numbers[1], numbers[2] * numbers[3]},
+        ""};
 }
 
 Wanted<noise::Loss> NoiseInputs::loss(const std::string& material, double frequency) {
@@ -60,7 +63,8 @@ Wanted<noise::Loss> NoiseInputs::loss(const std::string& material, double freque
 double NoiseInputs::photoelastic(const std::string& material, PropertyId id) {
     const Wanted<double> constant = property(material, id);
     if (constant.value) return *constant.value;
-    ledger_.note(fmt::format("{} of {} is unknown and counts as 0", materials::info(id).title, material));
+    ledger_.note(
+        fmt::format("{} of {} is unknown and counts as 0", materials::info(id).title, material));
     return 0.0;
 }
 
@@ -69,8 +73,9 @@ Wanted<double> NoiseInputs::free_index_slope(const std::string& material, double
     if (!slope.value) return slope;
     const Wanted<double> expansion = property(material, PropertyId::thermal_expansion);
     if (!expansion.value) return expansion;
-    return {noise::free_index_slope(index, *slope.value, photoelastic(material, PropertyId::photoelastic_p11),
-                                    photoelastic(material, PropertyId::photoelastic_p12), *expansion.value),
+    return {noise::free_index_slope(
+                index, *slope.value, photoelastic(material, PropertyId::photoelastic_p11),
+                photoelastic(material, PropertyId::photoelastic_p12), *expansion.value),
             ""};
 }
 

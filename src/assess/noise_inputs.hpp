@@ -34,7 +34,8 @@ class NoiseInputs {
     Wanted<double> free_index_slope(const std::string& material, double index);
 
   private:
-    Wanted<double> property_at(const std::string& material, materials::PropertyId id, double frequency);
+    Wanted<double> property_at(const std::string& material, materials::PropertyId id,
+                               double frequency);
 
     const stack::Design& design_;
     const materials::Library& library_;

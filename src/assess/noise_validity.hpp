@@ -7,6 +7,7 @@ namespace stillcoat::assess {
 
 void warn_of_validity(const stack::Design& design, const stack::Mirror& mirror,
                       const Wanted<noise::Elastic>& substrate,
-                      const std::vector<noise::ElasticLayer>& layers, std::vector<std::string>& warnings);
+                      const std::vector<noise::ElasticLayer>& layers,
+                      std::vector<std::string>& warnings);
 
 }  // namespace stillcoat::assess

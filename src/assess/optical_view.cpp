@@ -13,7 +13,8 @@ numerics::Jet<optics::Complex> complex_index(const stack::OpticalConstants& cons
 }  // namespace
 
 optics::OpticalStack optical_stack(const stack::Mirror& mirror) {
-    optics::OpticalStack stack{mirror.incident_index.value, {}, complex_index(mirror.substrate_optical).value};
+    optics::OpticalStack stack{
+        mirror.incident_index.value, {}, complex_index(mirror.substrate_optical).value};
     for (const stack::MirrorLayer& layer : mirror.layers) {
         stack.layers.push_back({complex_index(layer.optical).value, layer.thickness});
     }
@@ -21,7 +22,8 @@ optics::OpticalStack optical_stack(const stack::Mirror& mirror) {
 }
 
 optics::DispersiveStack dispersive_stack(const stack::Mirror& mirror) {
-    optics::DispersiveStack stack{mirror.incident_index, {}, {}, complex_index(mirror.substrate_optical)};
+    optics::DispersiveStack stack{
+        mirror.incident_index, {}, {}, complex_index(mirror.substrate_optical)};
     for (const stack::MirrorLayer& layer : mirror.layers) {
         stack.layer_index.push_back(complex_index(layer.optical));
         stack.thickness.push_back(layer.thickness);

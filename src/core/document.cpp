@@ -46,7 +46,8 @@ Node to_node(const toml::value& value) {
         case toml::value_t::floating:
             node.type = Node::Type::real;
             node.number = value.as_floating();
-            // A number like 1e400 is read as the largest double; it is infinity to us, which readers refuse.
+            // A number like 1e400 is read as the largest double; it is infinity to us, which
+            // readers refuse.
             if (std::abs(node.number) == std::numeric_limits<double>::max()) {
                 node.number = std::copysign(std::numeric_limits<double>::infinity(), node.number);
             }
@@ -84,8 +85,10 @@ void check_nesting(const std::string& text, const std::string& name) {
         const char c = text[i];
         if (c == '\n') ++line;
         if (quote != 0) {
-            if (c == '\\' && quote == '"') ++i;
-            else if (c == quote || (c == '\n' && depth == 0)) quote = 0;
+            if (c == '\\' && quote == '"')
+                ++i;
+            else if (c == quote || (c == '\n' && depth == 0))
+                quote = 0;
             continue;
         }
         if (c == '"' || c == '\'') quote = c;
@@ -152,13 +155,19 @@ Place Node::key_place(const std::string& key) const {
 
 std::string describe(Node::Type type) {
     switch (type) {
-        case Node::Type::text: return "a text";
+        case Node::Type::text:
+            return "a text";
         case Node::Type::integer:
-        case Node::Type::real: return "a number";
-        case Node::Type::boolean: return "true or false";
-        case Node::Type::array: return "a list";
-        case Node::Type::table: return "a table";
-        case Node::Type::other: break;
+        case Node::Type::real:
+            return "a number";
+        case Node::Type::boolean:
+            return "true or false";
+        case Node::Type::array:
+            return "a list";
+        case Node::Type::table:
+            return "a table";
+        case Node::Type::other:
+            break;
     }
     return "a date or time";
 }
@@ -172,8 +181,8 @@ std::string read_text_file(const std::string& path) {
     if (fs::is_regular_file(status)) {
         const std::uintmax_t size = fs::file_size(path, error);
         if (!error && size > largest_file_bytes) {
-            throw InputError(fmt::format("{}: {} bytes; files above {} bytes are refused", path, size,
-                                         largest_file_bytes),
+            throw InputError(fmt::format("{}: {} bytes; files above {} bytes are refused", path,
+                                         size, largest_file_bytes),
                              "use `repeat` for periodic stacks");
         }
     }
@@ -186,8 +195,9 @@ std::string read_text_file(const std::string& path) {
     }
     text.resize(static_cast<std::size_t>(stream.gcount()));
     if (text.size() > largest_file_bytes) {
-        throw InputError(fmt::format("{}: files above {} bytes are refused", path, largest_file_bytes),
-                         "use `repeat` for periodic stacks");
+        throw InputError(
+            fmt::format("{}: files above {} bytes are refused", path, largest_file_bytes),
+            "use `repeat` for periodic stacks");
     }
     return text;
 }
@@ -215,6 +225,8 @@ Document parse_document(const std::string& text, const std::string& name) {
     }
 }
 
-Document read_document(const std::string& path) { return parse_document(read_text_file(path), path); }
+Document read_document(const std::string& path) {
+    return parse_document(read_text_file(path), path);
+}
 
 }  // namespace stillcoat::core

@@ -17,8 +17,9 @@ std::string where(const Place& place) {
 
 /// Characters, not bytes: continuation bytes of UTF-8 take no room on the screen.
 int width_of(const std::string& text) {
-    return static_cast<int>(std::count_if(
-        text.begin(), text.end(), [](char c) { return (static_cast<unsigned char>(c) & 0xC0) != 0x80; }));
+    return static_cast<int>(std::count_if(text.begin(), text.end(), [](char c) {
+        return (static_cast<unsigned char>(c) & 0xC0) != 0x80;
+    }));
 }
 
 std::string excerpt(const Place& place) {
@@ -26,7 +27,8 @@ std::string excerpt(const Place& place) {
     // A long line is shown from a little before the marked stretch.
     const int size = static_cast<int>(place.text.size());
     const int mark = std::clamp(place.column - 1, 0, size);
-    int first = mark > longest_excerpt / 2 && size > longest_excerpt ? mark - longest_excerpt / 2 : 0;
+    int first =
+        mark > longest_excerpt / 2 && size > longest_excerpt ? mark - longest_excerpt / 2 : 0;
     while (first > 0 && (static_cast<unsigned char>(place.text[first]) & 0xC0) == 0x80) --first;
     std::string shown = place.text.substr(first, longest_excerpt);
     while (!shown.empty() && size > first + longest_excerpt &&

@@ -47,7 +47,8 @@ ut_system* unit_system() {
         return read;
     }();
     if (system == nullptr) {
-        throw std::logic_error("the unit database of UDUNITS-2 cannot be read: install libudunits2-data");
+        throw std::logic_error(
+            "the unit database of UDUNITS-2 cannot be read: install libudunits2-data");
     }
     return system;
 }
@@ -60,7 +61,8 @@ std::string example_of(const QuantityKind& kind) {
     return fmt::format("write a {} with its unit, for example \"{}\"", kind.name, kind.example);
 }
 
-/// A unit text begins with a letter, a sign such as %, or "1/"; numbers in front were taken already.
+/// A unit text begins with a letter, a sign such as %, or "1/"; numbers in front were taken
+/// already.
 bool looks_like_unit(const std::string& unit) {
     if (unit.empty()) return false;
     const auto first = static_cast<unsigned char>(unit.front());
@@ -79,8 +81,9 @@ QuantityReading converted(double number, const std::string& unit_text, const Qua
         return failed(fmt::format("\"{}\" is not a unit", unit_text), example_of(kind));
     }
     const Unit from(ut_parse(unit_system(), unit_text.c_str(), UT_UTF8));
-    if (!from) return failed(fmt::format("\"{}\" is not a known unit", unit_text),
-                             example_of(kind) + "; `stillcoat units` lists the usual ones");
+    if (!from)
+        return failed(fmt::format("\"{}\" is not a known unit", unit_text),
+                      example_of(kind) + "; `stillcoat units` lists the usual ones");
     const Unit to(ut_parse(unit_system(), kind.si_unit.c_str(), UT_UTF8));
     const Converter converter(ut_get_converter(from.get(), to.get()));
     // UDUNITS-2 takes hertz and radian per second as one dimension; cycles are what is meant here.
@@ -135,7 +138,8 @@ QuantityReading read_quantity(const std::string& text, const QuantityKind& kind)
 
 const std::vector<UsualUnits>& usual_units() {
     static const std::vector<UsualUnits> list{
-        {kind::length, {"nm", "um", "µm", "mm", "cm", "m", "km", "angstrom"},
+        {kind::length,
+         {"nm", "um", "µm", "mm", "cm", "m", "km", "angstrom"},
          "wavelength, thickness, beam radius"},
         {kind::temperature, {"K", "mK", "degC"}, "temperature"},
         {kind::frequency, {"mHz", "Hz", "kHz", "MHz"}, "noise frequency"},

@@ -55,22 +55,24 @@ const Node* TableReader::find_of_type(const std::string& key, Node::Type type,
                                       const std::string& expected) {
     const Node* node = find(key);
     if (node == nullptr || node->type == type) return node;
-    problems_.add(node->place(), fmt::format("{} in {} must be {}, here it is {}", key, name_, expected,
-                                             describe(node->type)));
+    problems_.add(node->place(), fmt::format("{} in {} must be {}, here it is {}", key, name_,
+                                             expected, describe(node->type)));
     return nullptr;
 }
 
-void TableReader::check(double value, const Node& node, const std::string& key, const Limits& limits,
-                        const std::string& unit, std::optional<double>& result) {
+void TableReader::check(double value, const Node& node, const std::string& key,
+                        const Limits& limits, const std::string& unit,
+                        std::optional<double>& result) {
     const bool above = value > limits.lower || (limits.lower_itself && value == limits.lower);
     const bool below = value < limits.upper || (limits.upper_itself && value == limits.upper);
     if (std::isfinite(value) && above && below) {
         result = value;
         return;
     }
-    problems_.add(node.place(),
-                  fmt::format("{} in {} is {:.6g}{}{}", key, name_, value, unit.empty() ? "" : " ", unit),
-                  fmt::format("it must be {}", limits.words));
+    problems_.add(
+        node.place(),
+        fmt::format("{} in {} is {:.6g}{}{}", key, name_, value, unit.empty() ? "" : " ", unit),
+        fmt::format("it must be {}", limits.words));
 }
 
 std::optional<double> TableReader::quantity_of(const Node& value, const std::string& key,
@@ -82,8 +84,7 @@ std::optional<double> TableReader::quantity_of(const Node& value, const std::str
         return result;
     }
     if (value.type != Node::Type::text) {
-        const std::string found =
-            value.is_number() ? "a bare number" : describe(value.type);
+        const std::string found = value.is_number() ? "a bare number" : describe(value.type);
         problems_.add(value.place(),
                       fmt::format("{} in {} needs a {} with a unit, here it is {}", key, name_,
                                   kind.name, found),
@@ -92,7 +93,8 @@ std::optional<double> TableReader::quantity_of(const Node& value, const std::str
     }
     const QuantityReading reading = read_quantity(value.text, kind);
     if (!reading.ok) {
-        problems_.add(value.place(), fmt::format("{} in {}: {}", key, name_, reading.failure.message),
+        problems_.add(value.place(),
+                      fmt::format("{} in {}: {}", key, name_, reading.failure.message),
                       reading.failure.hint);
         return result;
     }
@@ -161,7 +163,8 @@ std::optional<std::vector<double>> TableReader::numbers(const std::string& key) 
     std::vector<double> list;
     for (const Node& item : node->items) {
         if (!item.is_number() || !std::isfinite(item.number)) {
-            problems_.add(item.place(), fmt::format("{} in {} must hold finite numbers only", key, name_));
+            problems_.add(item.place(),
+                          fmt::format("{} in {} must hold finite numbers only", key, name_));
             return std::nullopt;
         }
         list.push_back(item.number);
@@ -175,7 +178,8 @@ std::optional<std::vector<std::string>> TableReader::texts(const std::string& ke
     std::vector<std::string> list;
     for (const Node& item : node->items) {
         if (item.type != Node::Type::text || item.text.empty()) {
-            problems_.add(item.place(), fmt::format("{} in {} must hold texts in quotes", key, name_));
+            problems_.add(item.place(),
+                          fmt::format("{} in {} must hold texts in quotes", key, name_));
             return std::nullopt;
         }
         list.push_back(item.text);
@@ -186,8 +190,8 @@ std::optional<std::vector<std::string>> TableReader::texts(const std::string& ke
 std::optional<std::vector<double>> TableReader::quantities(const std::string& key,
                                                            const QuantityKind& kind,
                                                            const Limits& limits) {
-    const Node* node = find_of_type(key, Node::Type::array,
-                                    fmt::format("a list such as [\"{}\"]", kind.example));
+    const Node* node =
+        find_of_type(key, Node::Type::array, fmt::format("a list such as [\"{}\"]", kind.example));
     if (node == nullptr) return std::nullopt;
     std::vector<double> list;
     for (const Node& item : node->items) {
@@ -204,7 +208,8 @@ const Node* TableReader::table(const std::string& key) {
 
 std::vector<const Node*> TableReader::tables(const std::string& key) {
     std::vector<const Node*> list;
-    const Node* node = find_of_type(key, Node::Type::array, fmt::format("a list of tables [[{}]]", key));
+    const Node* node =
+        find_of_type(key, Node::Type::array, fmt::format("a list of tables [[{}]]", key));
     if (node == nullptr) return list;
     for (const Node& item : node->items) {
         if (item.type == Node::Type::table) {
@@ -232,8 +237,8 @@ void TableReader::problem_at(const std::string& key, const std::string& message,
 void TableReader::contradiction(const std::string& key, const std::string& other,
                                 const std::string& why) {
     problems_.add(Problem{table_->key_place(key),
-                          fmt::format("{} and {} in {} contradict each other", key, other, name_), why,
-                          table_->key_place(other)});
+                          fmt::format("{} and {} in {} contradict each other", key, other, name_),
+                          why, table_->key_place(other)});
 }
 
 void TableReader::finish() {

@@ -20,8 +20,9 @@ double unit_scale(TableReader& reader, const core::QuantityKind& kind, bool need
     }
     const std::string unit = reader.required_text("unit");
     const core::QuantityReading reading = core::read_quantity(1.0, unit, kind);
-    if (!reading.ok) reader.problem_at("unit", "unit in " + reader.name() + ": " + reading.failure.message,
-                                       reading.failure.hint);
+    if (!reading.ok)
+        reader.problem_at("unit", "unit in " + reader.name() + ": " + reading.failure.message,
+                          reading.failure.hint);
     return reading.ok ? reading.value : 1.0;
 }
 
@@ -33,7 +34,8 @@ void check_values(TableReader& reader, const std::string& key, std::vector<doubl
         const bool ok = (value > limits.lower || (limits.lower_itself && value == limits.lower)) &&
                         value < limits.upper;
         if (!ok) {
-            reader.problem_at(key, fmt::format("{} in {} holds {}", key, reader.name(), value / scale),
+            reader.problem_at(key,
+                              fmt::format("{} in {} holds {}", key, reader.name(), value / scale),
                               "each must be " + limits.words);
             return;
         }
@@ -53,13 +55,15 @@ std::pair<std::vector<double>, std::vector<double>> read_table(TableReader& read
     std::vector<double> y = reader.numbers("values").value_or(std::vector<double>{});
     check_values(reader, "values", y, property, scale);
     if (x.size() != y.size() || x.size() < 2) {
-        reader.problem_at("values", fmt::format("{} in {} has {} entries, values has {}", axis,
-                                                reader.name(), x.size(), y.size()),
+        reader.problem_at("values",
+                          fmt::format("{} in {} has {} entries, values has {}", axis, reader.name(),
+                                      x.size(), y.size()),
                           "both need the same number, two or more");
         return {{1.0, 2.0}, {1.0, 1.0}};
     }
     if (!increasing(x) || x.front() <= 0.0) {
-        reader.problem_at(axis, axis + " in " + reader.name() + " must increase from entry to entry");
+        reader.problem_at(axis,
+                          axis + " in " + reader.name() + " must increase from entry to entry");
         return {{1.0, 2.0}, {1.0, 1.0}};
     }
     return {x, y};
@@ -72,14 +76,16 @@ std::vector<std::vector<double>> read_polynomials(TableReader& reader, const std
     const Node* node = reader.find(key);
     nested = node != nullptr && !node->items.empty() && node->items[0].type == Node::Type::array;
     if (!nested) {
-        for (double number : reader.numbers(key).value_or(std::vector<double>{})) list.push_back({number});
+        for (double number : reader.numbers(key).value_or(std::vector<double>{}))
+            list.push_back({number});
         return list;
     }
     for (const Node& row : node->items) {
         std::vector<double> coefficients;
         for (const Node& item : row.items) {
             if (!item.is_number() || !std::isfinite(item.number)) {
-                reader.problem_at(key, key + " in " + reader.name() + " must hold finite numbers only");
+                reader.problem_at(key,
+                                  key + " in " + reader.name() + " must hold finite numbers only");
                 return {};
             }
             coefficients.push_back(item.number);
@@ -121,7 +127,8 @@ Curve read_scalar(TableReader& reader, const EntryContext& context, double& scal
     scale = unit_scale(reader, *about.kind, true);
     core::Limits limits = about.limits;
     const double number = reader.number("value", core::any_value()).value_or(1.0) * scale;
-    if (!(number > limits.lower || (limits.lower_itself && number == limits.lower)) || !(number < limits.upper)) {
+    if (!(number > limits.lower || (limits.lower_itself && number == limits.lower)) ||
+        !(number < limits.upper)) {
         reader.problem_at("value", fmt::format("value in {} is {}", reader.name(), number / scale),
                           "it must be " + limits.words);
     }
@@ -131,9 +138,13 @@ Curve read_scalar(TableReader& reader, const EntryContext& context, double& scal
 void read_index_keys(TableReader& reader, const EntryContext& context, Entry& entry) {
     entry.offset = reader.number("offset", core::any_value()).value_or(0.0);
     const bool follows = std::holds_alternative<SameAs>(entry.curve);
-    if (!reader.has("medium") && !context.from_design && !follows) reader.missing("medium", "\"vacuum\"");
-    const std::string medium = reader.choice("medium", {"vacuum", "air", "unstated"}).value_or("vacuum");
-    entry.medium = medium == "air" ? Medium::air : medium == "vacuum" ? Medium::vacuum : Medium::unstated;
+    if (!reader.has("medium") && !context.from_design && !follows)
+        reader.missing("medium", "\"vacuum\"");
+    const std::string medium =
+        reader.choice("medium", {"vacuum", "air", "unstated"}).value_or("vacuum");
+    entry.medium = medium == "air"      ? Medium::air
+                   : medium == "vacuum" ? Medium::vacuum
+                                        : Medium::unstated;
     if (const Node* node = reader.table("rescaled_to"); node != nullptr) {
         TableReader point(*node, "rescaled_to of " + reader.name(), reader.problems());
         const auto wavelength = point.number("wavelength_nm", core::positive("nm"));
@@ -151,8 +162,8 @@ TemperatureTable read_temperature_table(TableReader& reader, PropertyId property
 }
 
 double read_curve(TableReader& reader, const EntryContext& context, Entry& entry) {
-    const std::vector<std::string> forms{"value",           "temperature_K",      "wavelength_nm",
-                                         "value_at_1_Hz",   "sellmeier_strength", "cauchy",
+    const std::vector<std::string> forms{"value",         "temperature_K",      "wavelength_nm",
+                                         "value_at_1_Hz", "sellmeier_strength", "cauchy",
                                          "same_as"};
     std::vector<std::string> given;
     std::copy_if(forms.begin(), forms.end(), std::back_inserter(given),
@@ -190,7 +201,8 @@ double read_curve(TableReader& reader, const EntryContext& context, Entry& entry
         entry.curve = read_sellmeier(reader);
     } else if (form == "cauchy" && context.property == PropertyId::refractive_index) {
         const std::vector<double> c = reader.numbers(form).value_or(std::vector<double>{});
-        if (c.size() != 3) reader.problem_at(form, "cauchy in " + reader.name() + " needs [A, B, C]");
+        if (c.size() != 3)
+            reader.problem_at(form, "cauchy in " + reader.name() + " needs [A, B, C]");
         entry.curve = c.size() == 3 ? Cauchy{c[0], c[1], c[2]} : Cauchy{1.0, 0.0, 0.0};
     } else if (form == "same_as") {
         entry.curve = SameAs{reader.required_text(form),

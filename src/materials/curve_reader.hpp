@@ -10,6 +10,7 @@ namespace stillcoat::materials {
 double read_curve(core::TableReader& reader, const EntryContext& context, Entry& entry);
 
 /// The keys temperature_K and values.
-TemperatureTable read_temperature_table(core::TableReader& reader, PropertyId property, double scale);
+TemperatureTable read_temperature_table(core::TableReader& reader, PropertyId property,
+                                        double scale);
 
 }  // namespace stillcoat::materials

@@ -40,15 +40,18 @@ Jet<double> formula(const Entry& entry, const Jet<double>& l, double temperature
         for (std::size_t i = 0; i < sellmeier->strength.size(); ++i) {
             const double strength = polynomial(sellmeier->strength[i], temperature);
             const double resonance = polynomial(sellmeier->resonance[i], temperature);
-            square = square + Jet<double>(strength) * l2 / (l2 - Jet<double>(resonance * resonance));
+            square =
+                square + Jet<double>(strength) * l2 / (l2 - Jet<double>(resonance * resonance));
         }
         return sqrt(square);
     }
     if (const auto* cauchy = std::get_if<Cauchy>(&entry.curve)) {
         const Jet<double> inverse = Jet<double>(1.0) / l2;
-        return Jet<double>(cauchy->a) + inverse * (Jet<double>(cauchy->b) + inverse * Jet<double>(cauchy->c));
+        return Jet<double>(cauchy->a) +
+               inverse * (Jet<double>(cauchy->b) + inverse * Jet<double>(cauchy->c));
     }
-    if (const auto* table = std::get_if<WavelengthTable>(&entry.curve)) return table_value(*table, l);
+    if (const auto* table = std::get_if<WavelengthTable>(&entry.curve))
+        return table_value(*table, l);
     if (const auto* scalar = std::get_if<Scalar>(&entry.curve)) return Jet<double>(scalar->value);
     throw std::logic_error("not an optical datum");
 }

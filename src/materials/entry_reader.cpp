@@ -55,7 +55,8 @@ std::optional<Width> read_width(TableReader& reader, double unit_scale) {
     if (const auto ends = reader.numbers("uniform")) {
         ++stated;
         if (ends->size() == 2 && (*ends)[0] < (*ends)[1]) {
-            width = Width{Width::Form::uniform, 0.0, (*ends)[0] * unit_scale, (*ends)[1] * unit_scale};
+            width =
+                Width{Width::Form::uniform, 0.0, (*ends)[0] * unit_scale, (*ends)[1] * unit_scale};
         } else {
             reader.problem_at("uniform", "uniform in " + reader.name() + " must be [lower, upper]");
         }
@@ -104,8 +105,10 @@ std::vector<std::string> read_sources(TableReader& reader, const EntryContext& c
     for (const std::string& key : sources) {
         if (context.library->references.count(key) != 0) continue;
         const auto near = core::nearest_spelling(key, keys);
-        reader.problem_at("source", fmt::format("source \"{}\" in {} is not in references.toml", key, reader.name()),
-                          near ? fmt::format("did you mean \"{}\"?", *near) : "add it there");
+        reader.problem_at(
+            "source",
+            fmt::format("source \"{}\" in {} is not in references.toml", key, reader.name()),
+            near ? fmt::format("did you mean \"{}\"?", *near) : "add it there");
     }
     if (sources.empty() && reader.has("source")) {
         reader.problem_at("source", "source in " + reader.name() + " is empty",
@@ -185,10 +188,13 @@ void read_ranges(TableReader& reader, Entry& entry, const EntryContext& context)
     const Node* node = reader.table("range");
     if (node == nullptr) return;
     TableReader axes(*node, "range of " + reader.name(), reader.problems());
-    if (!axes.has("temperature_K") && !context.from_design) axes.missing("temperature_K", "[283, 313]");
+    if (!axes.has("temperature_K") && !context.from_design)
+        axes.missing("temperature_K", "[283, 313]");
     entry.temperature = read_interval(axes, "temperature_K", 1.0);
-    if (const auto nanometres = read_interval(axes, "wavelength_nm", 1e-9)) entry.wavelength = nanometres;
-    if (const auto micrometres = read_interval(axes, "wavelength_um", 1e-6)) entry.wavelength = micrometres;
+    if (const auto nanometres = read_interval(axes, "wavelength_nm", 1e-9))
+        entry.wavelength = nanometres;
+    if (const auto micrometres = read_interval(axes, "wavelength_um", 1e-6))
+        entry.wavelength = micrometres;
     entry.frequency = read_interval(axes, "frequency_Hz", 1.0);
     axes.finish();
 }
@@ -210,8 +216,9 @@ Width read_design_width(TableReader& reader, const core::QuantityKind& kind, dou
         }
     }
     if (std::isfinite(width) && width >= 0.0) return {Width::Form::absolute, width, 0.0, 0.0};
-    reader.problem_at("uncertainty", "uncertainty in " + reader.name() + " cannot be used",
-                      fmt::format("for example \"5 %\", or a {} as in \"{}\"", kind.name, kind.example));
+    reader.problem_at(
+        "uncertainty", "uncertainty in " + reader.name() + " cannot be used",
+        fmt::format("for example \"5 %\", or a {} as in \"{}\"", kind.name, kind.example));
     return {};
 }
 
@@ -238,16 +245,21 @@ Entry read_entry(TableReader& reader, const EntryContext& context) {
     entry.sources = read_sources(reader, context);
     const bool strict = !context.from_design;
     entry.place = strict ? reader.required_text("place") : reader.text("place").value_or("");
-    entry.measured_at = strict ? reader.required_text("measured_at") : reader.text("measured_at").value_or("");
+    entry.measured_at =
+        strict ? reader.required_text("measured_at") : reader.text("measured_at").value_or("");
     read_ranges(reader, entry, context);
     for (const char* key : {"nature", "status"}) {
-        if (strict && !reader.has(key)) reader.missing(key, key[0] == 'n' ? "\"measured\"" : "\"seen\"");
+        if (strict && !reader.has(key))
+            reader.missing(key, key[0] == 'n' ? "\"measured\"" : "\"seen\"");
     }
-    entry.nature = reader.choice("nature", natures).value_or(strict ? "" : "stated in the design file");
-    entry.status = reader.choice("status", statuses).value_or(strict ? "" : "stated in the design file");
+    entry.nature =
+        reader.choice("nature", natures).value_or(strict ? "" : "stated in the design file");
+    entry.status =
+        reader.choice("status", statuses).value_or(strict ? "" : "stated in the design file");
     entry.note = reader.text("note").value_or("");
     if (const Node* node = reader.table("beyond"); node != nullptr) {
-        entry.beyond = read_beyond(*node, "beyond of " + reader.name(), context, scale, reader.problems());
+        entry.beyond =
+            read_beyond(*node, "beyond of " + reader.name(), context, scale, reader.problems());
     }
     if (is_loss(context.property)) {
         if (const Node* node = reader.table("cold"); node != nullptr) {
@@ -272,7 +284,9 @@ Property read_property(const Node& table, const std::string& name, const EntryCo
         const bool twice = std::any_of(
             property.alternatives.begin(), property.alternatives.end(),
             [&alternative](const Alternative& a) { return a.name == alternative.name; });
-        if (twice) other.problem_at("name", "alternative " + alternative.name + " of " + name + " stands twice");
+        if (twice)
+            other.problem_at("name",
+                             "alternative " + alternative.name + " of " + name + " stands twice");
         property.alternatives.push_back(std::move(alternative));
     }
     reader.finish();

@@ -17,7 +17,7 @@ struct EntryContext {
 Entry read_entry(core::TableReader& reader, const EntryContext& context);
 
 /// The whole table of a property with its alternatives.
-Property read_property(const core::Node& table, const std::string& name, const EntryContext& context,
-                       core::Problems& problems);
+Property read_property(const core::Node& table, const std::string& name,
+                       const EntryContext& context, core::Problems& problems);
 
 }  // namespace stillcoat::materials

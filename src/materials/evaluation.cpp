@@ -19,8 +19,8 @@ Value missing(std::string reason) {
     return value;
 }
 
-/// Between neighbours of one sign log y against log x, linear across a change of sign; the end pieces
-/// are continued, which an entry's range must allow.
+/// Between neighbours of one sign log y against log x, linear across a change of sign; the end
+/// pieces are continued, which an entry's range must allow.
 double interpolate(const TemperatureTable& table, double temperature) {
     const std::vector<double>& t = table.temperature;
     const auto after = std::upper_bound(t.begin() + 1, t.end() - 1, temperature);
@@ -57,8 +57,9 @@ class Evaluator {
         const auto found = substance.properties.find(id);
         if (found == substance.properties.end()) {
             const auto reason = substance.unknown.find(id);
-            return missing(fmt::format("{} of {} unknown{}", info(id).title, material,
-                                       reason == substance.unknown.end() ? "" : ": " + reason->second));
+            return missing(
+                fmt::format("{} of {} unknown{}", info(id).title, material,
+                            reason == substance.unknown.end() ? "" : ": " + reason->second));
         }
         return entry(found->second.entry, material, id);
     }
@@ -68,31 +69,35 @@ class Evaluator {
     Value entry(const Entry& datum, const std::string& material, PropertyId id) const {
         const double t = conditions_.temperature;
         const bool warm = !datum.temperature || datum.temperature->contains(t);
-        const bool in_light = !datum.wavelength || datum.wavelength->contains(conditions_.wavelength);
+        const bool in_light =
+            !datum.wavelength || datum.wavelength->contains(conditions_.wavelength);
         if (warm && in_light) return within(datum, material, id, t);
         if (datum.cold && in_light && t < datum.cold->join.upper) return cold(datum, material, id);
         if (datum.beyond) {
             const Beyond& rule = *datum.beyond;
             const bool reaches = warm || (rule.temperature && rule.temperature->contains(t));
-            const bool lit = in_light || (rule.wavelength && rule.wavelength->contains(conditions_.wavelength));
+            const bool lit =
+                in_light || (rule.wavelength && rule.wavelength->contains(conditions_.wavelength));
             if (reaches && lit) return beyond(datum, material, id);
         }
         if (!warm) {
-            return missing(fmt::format("{} of {} at {:g} K unknown ({})", info(id).title, material, t,
-                                       holds_words(datum)));
+            return missing(fmt::format("{} of {} at {:g} K unknown ({})", info(id).title, material,
+                                       t, holds_words(datum)));
         }
         return missing(fmt::format("{} of {} at {:g} nm unknown (its data hold for {:g}–{:g} nm)",
                                    info(id).title, material, conditions_.wavelength * 1e9,
                                    datum.wavelength->lower * 1e9, datum.wavelength->upper * 1e9));
     }
 
-    Value within(const Entry& datum, const std::string& material, PropertyId id, double temperature) const {
+    Value within(const Entry& datum, const std::string& material, PropertyId id,
+                 double temperature) const {
         if (datum.cold && temperature < datum.cold->join.upper) return cold(datum, material, id);
         return plain(datum, material, id, temperature);
     }
 
     /// The datum itself, whatever its range.
-    Value plain(const Entry& datum, const std::string& material, PropertyId id, double temperature) const {
+    Value plain(const Entry& datum, const std::string& material, PropertyId id,
+                double temperature) const {
         Value value;
         value.entry = &datum;
         value.width = width_at(datum.width, datum.width_spans, temperature);
@@ -126,7 +131,8 @@ class Evaluator {
         const double t = conditions_.temperature;
         if (t < table.table.temperature.front()) {
             return missing(fmt::format("{} of {} at {:g} K unknown (its table begins at {:g} K)",
-                                       info(id).title, material, t, table.table.temperature.front()));
+                                       info(id).title, material, t,
+                                       table.table.temperature.front()));
         }
         Value value = plain(datum, material, id, table.join.upper);
         if (!value.number) return value;
@@ -136,7 +142,8 @@ class Evaluator {
             value.frequency_extrapolated = false;
         } else {
             const double low = interpolate(table.table, table.join.lower);
-            value.number = interpolate({{table.join.lower, table.join.upper}, {low, *value.number}}, t);
+            value.number =
+                interpolate({{table.join.lower, table.join.upper}, {low, *value.number}}, t);
         }
         if (table.nature == "by analogy") {
             value.analogy = fmt::format("{} of {} at {:g} K: {}", info(id).title, material, t,
@@ -145,12 +152,16 @@ class Evaluator {
         return value;
     }
 
-    static double nearest(const Interval& range, double x) { return std::clamp(x, range.lower, range.upper); }
+    static double nearest(const Interval& range, double x) {
+        return std::clamp(x, range.lower, range.upper);
+    }
 
     /// Where a rule starts from: a scalar from where it was measured, a table from its nearest end.
     static double reference_temperature(const Entry& datum, double temperature) {
         const double end = nearest(*datum.temperature, temperature);
-        return std::holds_alternative<TemperatureTable>(datum.curve) ? end : datum.at_temperature.value_or(end);
+        return std::holds_alternative<TemperatureTable>(datum.curve)
+                   ? end
+                   : datum.at_temperature.value_or(end);
     }
 
     Value beyond(const Entry& datum, const std::string& material, PropertyId id) const {
@@ -166,7 +177,8 @@ class Evaluator {
         double factor = 1.0;
         std::string how = "held constant";
         if (!warm && rule.rule == Beyond::Rule::debye) {
-            factor = debye_shape(t, rule.debye_temperature) / debye_shape(reference, rule.debye_temperature);
+            factor = debye_shape(t, rule.debye_temperature) /
+                     debye_shape(reference, rule.debye_temperature);
             how = fmt::format("scaled as a Debye solid of {:g} K", rule.debye_temperature);
         } else if (!warm && rule.rule != Beyond::Rule::constant) {
             const bool own = rule.rule == Beyond::Rule::heat_capacity;
@@ -183,8 +195,8 @@ class Evaluator {
         value.width = width_at(rule.width, rule.width_spans, t);
         value.analogy = warm ? fmt::format("{} of {} at {:g} nm: {}", info(id).title, material,
                                            conditions_.wavelength * 1e9, how)
-                             : fmt::format("{} of {} at {:g} K: {} from {:g} K", info(id).title, material,
-                                           t, how, reference);
+                             : fmt::format("{} of {} at {:g} K: {} from {:g} K", info(id).title,
+                                           material, t, how, reference);
         return value;
     }
 
@@ -196,7 +208,8 @@ class Evaluator {
 std::string along(const std::string& analogy, double from, double to) {
     const std::size_t at = analogy.find(" at ");
     const std::size_t how = analogy.find(": ");
-    return fmt::format("{} from {:g} K to {:g} K{}", analogy.substr(0, at), from, to, analogy.substr(how));
+    return fmt::format("{} from {:g} K to {:g} K{}", analogy.substr(0, at), from, to,
+                       analogy.substr(how));
 }
 
 /// ∫ f dT by Gauss–Legendre on panels of at most `panel` kelvin; stops at the first missing value.
@@ -273,8 +286,9 @@ IndexValue index_at(const Library& library, const std::string& material, double 
     const auto found = substance.properties.find(PropertyId::refractive_index);
     if (found == substance.properties.end()) {
         const auto reason = substance.unknown.find(PropertyId::refractive_index);
-        result.missing = fmt::format("refractive index of {} unknown{}", material,
-                                     reason == substance.unknown.end() ? "" : ": " + reason->second);
+        result.missing =
+            fmt::format("refractive index of {} unknown{}", material,
+                        reason == substance.unknown.end() ? "" : ": " + reason->second);
         return result;
     }
     const Entry& entry = found->second.entry;
@@ -294,33 +308,37 @@ IndexValue index_at(const Library& library, const std::string& material, double 
         return result;
     }
     if (entry.wavelength && !entry.wavelength->contains(wavelength)) {
-        result.missing = fmt::format("refractive index of {} is known for {:g}–{:g} nm only, not at {:g} nm",
-                                     material, entry.wavelength->lower * 1e9,
-                                     entry.wavelength->upper * 1e9, wavelength * 1e9);
+        result.missing = fmt::format(
+            "refractive index of {} is known for {:g}–{:g} nm only, not at {:g} nm", material,
+            entry.wavelength->lower * 1e9, entry.wavelength->upper * 1e9, wavelength * 1e9);
         return result;
     }
     const bool in_range = !entry.temperature || entry.temperature->contains(temperature);
     double formula_temperature = temperature;
     if (depends_on_temperature(entry) && !in_range) {
         const bool by_rule = entry.beyond && entry.beyond->rule == Beyond::Rule::constant &&
-                             entry.beyond->temperature && entry.beyond->temperature->contains(temperature);
+                             entry.beyond->temperature &&
+                             entry.beyond->temperature->contains(temperature);
         if (!by_rule) {
-            result.missing = fmt::format("refractive index of {} at {:g} K unknown ({})", material, temperature,
-                                         holds_words(entry));
+            result.missing = fmt::format("refractive index of {} at {:g} K unknown ({})", material,
+                                         temperature, holds_words(entry));
             return result;
         }
-        formula_temperature = std::clamp(temperature, entry.temperature->lower, entry.temperature->upper);
-        result.analogy = fmt::format("refractive index of {} at {:g} K: held constant from {:g} K", material,
-                                     temperature, formula_temperature);
+        formula_temperature =
+            std::clamp(temperature, entry.temperature->lower, entry.temperature->upper);
+        result.analogy = fmt::format("refractive index of {} at {:g} K: held constant from {:g} K",
+                                     material, temperature, formula_temperature);
     }
     result.index = dispersion(entry, wavelength, formula_temperature);
     result.entry = &entry;
     result.width = entry.width;
-    if (depends_on_temperature(entry) || !entry.at_temperature || temperature == *entry.at_temperature) {
+    if (depends_on_temperature(entry) || !entry.at_temperature ||
+        temperature == *entry.at_temperature) {
         return result;
     }
     const Value change = integral(*entry.at_temperature, temperature, [&](double t) {
-        return evaluate(library, material, PropertyId::thermo_optic_coefficient, {t, wavelength, 1.0});
+        return evaluate(library, material, PropertyId::thermo_optic_coefficient,
+                        {t, wavelength, 1.0});
     });
     if (change.number) {
         result.index->value += *change.number;
@@ -332,7 +350,8 @@ IndexValue index_at(const Library& library, const std::string& material, double 
     return result;
 }
 
-Value expansion_between(const Library& library, const std::string& material, double from, double to) {
+Value expansion_between(const Library& library, const std::string& material, double from,
+                        double to) {
     if (from == to) {
         Value none;
         none.number = 0.0;

@@ -47,16 +47,17 @@ std::vector<std::string> property_keys() {
 void check_loss_forms(TableReader& reader) {
     for (const char* part : {"loss_angle_bulk", "loss_angle_shear"}) {
         if (reader.has("loss_angle") && reader.has(part)) {
-            reader.contradiction(part, "loss_angle",
-                                 "give loss_angle for both, or loss_angle_bulk with loss_angle_shear");
+            reader.contradiction(
+                part, "loss_angle",
+                "give loss_angle for both, or loss_angle_bulk with loss_angle_shear");
         }
     }
     if (reader.has("loss_angle")) return;
     if (reader.has("loss_angle_bulk") != reader.has("loss_angle_shear")) {
         const bool bulk = reader.has("loss_angle_bulk");
         reader.problem_at(bulk ? "loss_angle_bulk" : "loss_angle_shear",
-                          fmt::format("{} in {} stands alone", bulk ? "loss_angle_bulk" : "loss_angle_shear",
-                                      reader.name()),
+                          fmt::format("{} in {} stands alone",
+                                      bulk ? "loss_angle_bulk" : "loss_angle_shear", reader.name()),
                           "bulk and shear loss belong together: give both");
     }
 }
@@ -65,7 +66,8 @@ void check_loss_forms(TableReader& reader) {
 std::vector<std::string> links_of(const Entry& entry) {
     std::vector<std::string> links;
     if (const auto* same = std::get_if<SameAs>(&entry.curve)) links.push_back(same->material);
-    if (entry.beyond && entry.beyond->rule == Beyond::Rule::follows) links.push_back(entry.beyond->material);
+    if (entry.beyond && entry.beyond->rule == Beyond::Rule::follows)
+        links.push_back(entry.beyond->material);
     return links;
 }
 
@@ -112,7 +114,8 @@ std::optional<Material> read_material(const core::Document& document, const Libr
     if (const Node* node = reader.table("unknown"); node != nullptr) {
         TableReader unknown(*node, "[unknown]", problems);
         for (const std::string& key : property_keys()) {
-            if (const auto reason = unknown.text(key)) material.unknown[*property_by_key(key)] = *reason;
+            if (const auto reason = unknown.text(key))
+                material.unknown[*property_by_key(key)] = *reason;
         }
         unknown.finish();
     }
@@ -129,8 +132,9 @@ std::optional<Material> read_material(const core::Document& document, const Libr
     reader.finish();
     const std::string stem = fs::path(document.name).stem().string();
     if (!material.name.empty() && material.name != stem) {
-        reader.problem_at("name", fmt::format("name \"{}\" differs from the file name {}", material.name, stem),
-                          "rename one of the two");
+        reader.problem_at(
+            "name", fmt::format("name \"{}\" differs from the file name {}", material.name, stem),
+            "rename one of the two");
     }
     if (problems.size() != before) return std::nullopt;
     return material;
@@ -140,7 +144,8 @@ void add_references(Library& library, const std::string& folder, core::Problems&
     const fs::path file = fs::path(folder) / "references.toml";
     std::error_code error;
     if (!fs::exists(file, error)) return;
-    if (const auto document = read_or_report(file, problems)) read_references(*document, library, problems);
+    if (const auto document = read_or_report(file, problems))
+        read_references(*document, library, problems);
 }
 
 void add_folder(Library& library, const std::string& folder, core::Problems& problems) {
@@ -172,11 +177,14 @@ void check_links(const Library& library, core::Problems& problems) {
             for (const std::string& link : links_of(property.entry)) {
                 if (library.materials.count(link) != 0) continue;
                 const auto near = core::nearest_spelling(link, library.names());
-                problems.add(place, fmt::format("{} refers to the unknown material \"{}\"", info(id).key, link),
-                             near ? fmt::format("did you mean \"{}\"?", *near) : "");
+                problems.add(
+                    place,
+                    fmt::format("{} refers to the unknown material \"{}\"", info(id).key, link),
+                    near ? fmt::format("did you mean \"{}\"?", *near) : "");
             }
             if (runs_in_circle(library, name, id, 0)) {
-                problems.add(place, fmt::format("{} refers to other materials in a circle", info(id).key));
+                problems.add(place,
+                             fmt::format("{} refers to other materials in a circle", info(id).key));
             }
         }
     }
@@ -192,7 +200,8 @@ void override_properties(Library& library, const std::string& name, const Node& 
         if (node == nullptr) continue;
         const std::string title = fmt::format("{} of {}", about.key, name);
         if (node->find("alternative") == nullptr) {
-            material.properties[about.id] = read_property(*node, title, {&library, about.id, true}, problems);
+            material.properties[about.id] =
+                read_property(*node, title, {&library, about.id, true}, problems);
         } else {
             TableReader choice(*node, title, problems);
             const std::string wanted = choice.text("alternative").value_or("");
@@ -210,7 +219,8 @@ void override_properties(Library& library, const std::string& name, const Node& 
                 Entry entry = found->entry;
                 known->second.entry = std::move(entry);
             } else if (!wanted.empty()) {
-                choice.problem_at("alternative", fmt::format("{} has no alternative \"{}\"", title, wanted),
+                choice.problem_at("alternative",
+                                  fmt::format("{} has no alternative \"{}\"", title, wanted),
                                   names.empty() ? "it has none"
                                                 : fmt::format("known: {}", fmt::join(names, ", ")));
             }

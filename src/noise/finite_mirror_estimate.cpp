@@ -48,8 +48,8 @@ Sums sum_modes(const Elastic& s, double a, double height, double w) {
 
 }  // namespace
 
-FiniteMirrorEstimate finite_mirror_estimate(const Elastic& substrate, const Elastic& film, double radius,
-                                            double thickness, double beam_radius) {
+FiniteMirrorEstimate finite_mirror_estimate(const Elastic& substrate, const Elastic& film,
+                                            double radius, double thickness, double beam_radius) {
     validate(substrate);
     validate(film);
     const double smallest = std::min({radius, thickness, beam_radius});
@@ -66,15 +66,15 @@ FiniteMirrorEstimate finite_mirror_estimate(const Elastic& substrate, const Elas
     const double pi = core::pi;
     const double u0 = (1.0 - nu * nu) * pi * a * a * a / young * sums.energy;
     const double h2 = height * height;
-    const double correction = a * a / (6.0 * pi * h2 * height * young) *
-                              (pi * pi * h2 * h2 * p0 * p0 + 12.0 * pi * h2 * nu * p0 * s +
-                               72.0 * (1.0 - nu) * s * s);
+    const double correction =
+        a * a / (6.0 * pi * h2 * height * young) *
+        (pi * pi * h2 * h2 * p0 * p0 + 12.0 * pi * h2 * nu * p0 * s + 72.0 * (1.0 - nu) * s * s);
     const double half_space = (1.0 - nu * nu) / (2.0 * std::sqrt(pi) * young * w);
 
     const double bend = p0 / height - 24.0 * s / (pi * h2 * height);
-    const double gradient = std::sqrt(pi) * w * w * w *
-                            (area * sums.gradient +
-                             area * height / (4.0 * (1.0 + nu) * (1.0 + nu)) * bend * bend);
+    const double gradient =
+        std::sqrt(pi) * w * w * w *
+        (area * sums.gradient + area * height / (4.0 * (1.0 + nu) * (1.0 + nu)) * bend * bend);
 
     const double yf = film.youngs_modulus, nf = film.poisson_ratio;
     const double across = (1.0 + nf) * (1.0 - 2.0 * nf) / (yf * (1.0 - nf));
@@ -82,8 +82,7 @@ FiniteMirrorEstimate finite_mirror_estimate(const Elastic& substrate, const Elas
     const double coating = area * (yf / (1.0 - nf * nf) * sums.strain + across * sums.pressure +
                                    2.0 * yf * e0 * e0 / (1.0 - nf) + p0 * p0 * across);
     const double eta = face_dilatation(substrate);
-    const double coating_half_space =
-        (yf / (1.0 - nf * nf) * eta * eta + across) / (pi * w * w);
+    const double coating_half_space = (yf / (1.0 - nf * nf) * eta * eta + across) / (pi * w * w);
     return {(u0 + correction) / half_space, gradient, coating / coating_half_space};
 }
 

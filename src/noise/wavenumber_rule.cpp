@@ -17,11 +17,11 @@ int panels_for(double range) {
 
 }  // namespace
 
-WavenumberRule wavenumber_rule(double beam_radius, double diffusion_wavenumber, int refinement) {
+WavenumberRule wavenumber_rule(double beam_radius, double diffusion_wavenumber, int subdivision) {
     using Gauss = boost::math::quadrature::gauss<double, 30>;
     const double w = beam_radius, k_t = diffusion_wavenumber;
     const double range = std::asinh(largest_scaled_wavenumber / (w * k_t));
-    const int panels = refinement * panels_for(range);
+    const int panels = subdivision * panels_for(range);
     const double half = 0.5 * range / panels;
     WavenumberRule rule;
     const auto add = [&](double u, double weight) {

@@ -34,7 +34,8 @@ Json operating_point(const stack::Design& design, const Appraisal& appraisal) {
     const char* names[] = {"s", "p", "unpolarised"};
     return {{"wavelength_m", number(design.light.wavelength)},
             {"angle_rad", number(design.light.angle)},
-            {"polarisation", normal ? Json(nullptr) : Json(names[static_cast<int>(design.light.polarisation)])},
+            {"polarisation",
+             normal ? Json(nullptr) : Json(names[static_cast<int>(design.light.polarisation)])},
             {"medium", design.light.medium},
             {"medium_index", number(appraisal.mirror.incident_index.value)},
             {"incident_power_W", number_or_null(design.light.power)},
@@ -46,14 +47,15 @@ Json coating(const stack::Design& design, const Appraisal& appraisal) {
     Json layers = Json::array();
     int count = 0;
     for (const stack::MirrorLayer& layer : appraisal.mirror.layers) {
-        layers.push_back({{"number", ++count},
-                          {"material", layer.material},
-                          {"reference_thickness_m", number(layer.reference_thickness)},
-                          {"thickness_m", number(layer.thickness)},
-                          {"quarter_waves", number(layer.quarter_waves)},
-                          {"refractive_index", number(layer.optical.index.value)},
-                          {"extinction_coefficient",
-                           layer.optical.extinction_known ? number(layer.optical.extinction) : Json(nullptr)}});
+        layers.push_back(
+            {{"number", ++count},
+             {"material", layer.material},
+             {"reference_thickness_m", number(layer.reference_thickness)},
+             {"thickness_m", number(layer.thickness)},
+             {"quarter_waves", number(layer.quarter_waves)},
+             {"refractive_index", number(layer.optical.index.value)},
+             {"extinction_coefficient",
+              layer.optical.extinction_known ? number(layer.optical.extinction) : Json(nullptr)}});
     }
     return {{"layer_count", count},
             {"thickness_m", number(appraisal.mirror.coating_thickness)},
@@ -126,7 +128,9 @@ Json noise(const assess::Noise& result) {
     }
     Json dominance = Json::array();
     for (const assess::Dominance& stretch : result.dominance) {
-        dominance.push_back({{"from_Hz", number(stretch.from)}, {"to_Hz", number(stretch.to)}, {"title", stretch.title}});
+        dominance.push_back({{"from_Hz", number(stretch.from)},
+                             {"to_Hz", number(stretch.to)},
+                             {"title", stretch.title}});
     }
     return {{"computed", true},
             {"complete", result.complete},
@@ -144,7 +148,8 @@ Json noise(const assess::Noise& result) {
 Json sources(const materials::Library& library, const Appraisal& appraisal, double temperature) {
     Json data = Json::array();
     for (const SourceUse& source : data_sources(library, appraisal, temperature)) {
-        data.push_back({{"key", source.key}, {"citation", source.citation}, {"used_for", source.used_for}});
+        data.push_back(
+            {{"key", source.key}, {"citation", source.citation}, {"used_for", source.used_for}});
     }
     return {{"formulas", formula_sources(appraisal)}, {"data", std::move(data)}};
 }
@@ -158,13 +163,13 @@ std::string layers_csv(const Appraisal& appraisal) {
     for (std::size_t j = 0; j < appraisal.mirror.layers.size(); ++j) {
         const stack::MirrorLayer& layer = appraisal.mirror.layers[j];
         const bool known = layer.optical.extinction_known;
-        text += fmt::format("{},{},{},{},{},{},{},{},{},{},{}\n", j + 1, layer.material,
-                            layer.reference_thickness, layer.thickness, layer.quarter_waves,
-                            layer.optical.index.value, known ? fmt::format("{}", layer.optical.extinction) : "",
-                            known ? fmt::format("{}", optics.response.layer_absorptance[j]) : "",
-                            optics.stored_energy[j], optics.peak_intensity[j],
-                            appraisal.noise.layers.empty() ? ""
-                                                           : fmt::format("{}", appraisal.noise.layers[j].psd));
+        text += fmt::format(
+            "{},{},{},{},{},{},{},{},{},{},{}\n", j + 1, layer.material, layer.reference_thickness,
+            layer.thickness, layer.quarter_waves, layer.optical.index.value,
+            known ? fmt::format("{}", layer.optical.extinction) : "",
+            known ? fmt::format("{}", optics.response.layer_absorptance[j]) : "",
+            optics.stored_energy[j], optics.peak_intensity[j],
+            appraisal.noise.layers.empty() ? "" : fmt::format("{}", appraisal.noise.layers[j].psd));
     }
     return text;
 }
@@ -173,7 +178,8 @@ std::string field_csv(const Appraisal& appraisal) {
     std::string text = "depth_m,layer,material,refractive_index,intensity_ratio\n";
     for (const assess::FieldSample& sample : appraisal.field) {
         text += fmt::format("{},{},{},{},{}\n", sample.depth, sample.layer + 1,
-                            appraisal.mirror.layers[sample.layer].material, sample.index, sample.intensity);
+                            appraisal.mirror.layers[sample.layer].material, sample.index,
+                            sample.intensity);
     }
     return text;
 }
@@ -229,9 +235,12 @@ std::string appraisal_json(const stack::Design& design, const materials::Library
 
 std::string appraisal_csv(const Appraisal& appraisal, CsvTable table) {
     switch (table) {
-        case CsvTable::noise: return noise_csv(appraisal.noise);
-        case CsvTable::layers: return layers_csv(appraisal);
-        case CsvTable::field: return field_csv(appraisal);
+        case CsvTable::noise:
+            return noise_csv(appraisal.noise);
+        case CsvTable::layers:
+            return layers_csv(appraisal);
+        case CsvTable::field:
+            return field_csv(appraisal);
     }
     throw std::logic_error("no such table");
 }

@@ -23,7 +23,9 @@ constexpr std::size_t layers_on_page = 24;
 constexpr std::size_t outermost_on_page = 12;
 constexpr std::size_t innermost_on_page = 4;
 
-double sum(const std::vector<double>& list) { return std::accumulate(list.begin(), list.end(), 0.0); }
+double sum(const std::vector<double>& list) {
+    return std::accumulate(list.begin(), list.end(), 0.0);
+}
 
 std::string reflectance_text(const optics::Response& response) {
     if (response.loss < 1e-3) return fmt::format("1 − {}", fraction_text(response.loss));
@@ -33,10 +35,12 @@ std::string reflectance_text(const optics::Response& response) {
 void mirror_section(Page& page, const stack::Design& design, const Appraisal& appraisal) {
     const stack::Mirror& mirror = appraisal.mirror;
     page.heading("Mirror");
-    page.row("light", fmt::format("{:g} nm in vacuum, {:g}°{} from {}", design.light.wavelength * 1e9,
-                                  design.light.angle * 180.0 / core::pi,
-                                  design.light.angle == 0.0 ? " (normal)" : "", design.light.medium));
-    page.row("beam", fmt::format("radius {} (1/e² intensity), Gaussian", length_text(design.beam_radius)));
+    page.row("light",
+             fmt::format("{:g} nm in vacuum, {:g}°{} from {}", design.light.wavelength * 1e9,
+                         design.light.angle * 180.0 / core::pi,
+                         design.light.angle == 0.0 ? " (normal)" : "", design.light.medium));
+    page.row("beam",
+             fmt::format("radius {} (1/e² intensity), Gaussian", length_text(design.beam_radius)));
     page.row("temperature", fmt::format("{:g} K", design.temperature));
     std::string body = design.mirror.substrate;
     if (design.mirror.diameter) {
@@ -45,11 +49,13 @@ void mirror_section(Page& page, const stack::Design& design, const Appraisal& ap
     } else {
         body += ", taken as a half-space";
     }
-    page.row("substrate", fmt::format("{}; index {:.5f}", body, mirror.substrate_optical.index.value));
-    page.row("coating", fmt::format("{} layers, {}; thicknesses hold at {:g} K, quarter waves counted at {:g} nm",
-                                    mirror.layers.size(), length_text(mirror.coating_thickness),
-                                    design.coating.reference_temperature,
-                                    design.coating.design_wavelength * 1e9));
+    page.row("substrate",
+             fmt::format("{}; index {:.5f}", body, mirror.substrate_optical.index.value));
+    page.row(
+        "coating",
+        fmt::format("{} layers, {}; thicknesses hold at {:g} K, quarter waves counted at {:g} nm",
+                    mirror.layers.size(), length_text(mirror.coating_thickness),
+                    design.coating.reference_temperature, design.coating.design_wavelength * 1e9));
     if (!design.overridden.empty()) {
         page.row("values from the design", fmt::format("{}", fmt::join(design.overridden, ", ")));
     }
@@ -62,17 +68,19 @@ void power_rows(Page& page, const stack::Design& design, const Appraisal& apprai
     const double w = design.beam_radius;
     page.row("incident power", power_text(power));
     page.row("absorbed in the coating", power_text(power * absorptance));
-    page.row("intensity at the centre",
-             fmt::format("{:.4g} W/cm² incident; {:.4g} W/cm² at the field's maximum in the coating",
-                         2.0 * power / (core::pi * w * w) * 1e-4,
-                         2.0 * power / (core::pi * w * w) * 1e-4 *
-                             *std::max_element(appraisal.faces[0].peak_intensity.begin(),
-                                               appraisal.faces[0].peak_intensity.end())));
+    page.row(
+        "intensity at the centre",
+        fmt::format("{:.4g} W/cm² incident; {:.4g} W/cm² at the field's maximum in the coating",
+                    2.0 * power / (core::pi * w * w) * 1e-4,
+                    2.0 * power / (core::pi * w * w) * 1e-4 *
+                        *std::max_element(appraisal.faces[0].peak_intensity.begin(),
+                                          appraisal.faces[0].peak_intensity.end())));
 }
 
 void face_section(Page& page, const FaceOptics& face, bool label, bool lower_limit) {
     const optics::Response& r = face.response;
-    page.heading(label ? "Light, " + polarisation_text(face.polarisation) + " polarisation" : "Light");
+    page.heading(label ? "Light, " + polarisation_text(face.polarisation) + " polarisation"
+                       : "Light");
     page.row("reflectance", reflectance_text(r));
     std::string transmittance = fraction_text(r.transmittance);
     if (std::isfinite(r.log_transmittance) && r.transmittance < 1e-12) {
@@ -88,16 +96,17 @@ void face_section(Page& page, const FaceOptics& face, bool label, bool lower_lim
         page.row("reflection phase", fmt::format("{:.4f} rad", at_end ? core::pi : phase));
         // Adding zero turns a rounded −0.00 into 0.00.
         const double dispersion = std::round(face.phase->group_delay_dispersion * 1e32) / 1e2 + 0.0;
-        page.row("group delay", fmt::format("{}, dispersion {:.2f} fs²", time_text(face.phase->group_delay),
-                                            dispersion));
+        page.row("group delay", fmt::format("{}, dispersion {:.2f} fs²",
+                                            time_text(face.phase->group_delay), dispersion));
     }
     page.row("stored energy", energy_text(sum(face.stored_energy)) + " of incident light");
     page.row("energy penetration depth", length_text(face.energy_penetration_depth));
     const auto peak = std::max_element(face.peak_intensity.begin(), face.peak_intensity.end());
     const auto layer = static_cast<std::size_t>(peak - face.peak_intensity.begin());
-    page.row("|E/E_incident|²", fmt::format("{:.4g} at the face; largest {:.4g} in layer {}, {} below its top",
-                                            face.face_intensity, *peak, layer + 1,
-                                            length_text(face.peak_depth[layer])));
+    page.row(
+        "|E/E_incident|²",
+        fmt::format("{:.4g} at the face; largest {:.4g} in layer {}, {} below its top",
+                    face.face_intensity, *peak, layer + 1, length_text(face.peak_depth[layer])));
 }
 
 std::string percent(double share) { return fmt::format("{:.2f}", share * 100.0); }
@@ -130,12 +139,14 @@ void material_section(Page& page, const Appraisal& appraisal) {
     const double energy = sum(face.stored_energy);
     for (const std::string& name : order) {
         const Sum& s = sums[name];
-        rows.push_back({name, std::to_string(s.layers), fmt::format("{:.1f}", s.thickness * 1e9),
-                        s.absorption_known ? fmt::format("{:.4g}", s.absorptance * 1e6) : "not stated",
-                        percent(s.energy / energy), fmt::format("{:.4g}", s.peak),
-                        shares.empty() ? "–" : percent(s.noise)});
+        rows.push_back(
+            {name, std::to_string(s.layers), fmt::format("{:.1f}", s.thickness * 1e9),
+             s.absorption_known ? fmt::format("{:.4g}", s.absorptance * 1e6) : "not stated",
+             percent(s.energy / energy), fmt::format("{:.4g}", s.peak),
+             shares.empty() ? "–" : percent(s.noise)});
     }
-    page.table({"material", "layers", "nm", "absorbs ppm", "energy %", "|E|² max", "Brownian %"}, rows);
+    page.table({"material", "layers", "nm", "absorbs ppm", "energy %", "|E|² max", "Brownian %"},
+               rows);
 }
 
 void layer_section(Page& page, const Appraisal& appraisal, const PageOptions& options) {
@@ -153,16 +164,18 @@ void layer_section(Page& page, const Appraisal& appraisal, const PageOptions& op
         }
         if (!all && j >= outermost_on_page && j < count - innermost_on_page) continue;
         const stack::MirrorLayer& layer = appraisal.mirror.layers[j];
-        rows.push_back({std::to_string(j + 1), layer.material, fmt::format("{:.2f}", layer.thickness * 1e9),
-                        fmt::format("{:.4f}", layer.quarter_waves), fmt::format("{:.5f}", layer.optical.index.value),
-                        layer.optical.extinction_known
-                            ? fmt::format("{:.3g}", face.response.layer_absorptance[j] * 1e6)
-                            : "not stated",
-                        percent(face.stored_energy[j] / energy), fmt::format("{:.3g}", face.peak_intensity[j]),
-                        shares.empty() ? "–" : percent(shares[j])});
+        rows.push_back(
+            {std::to_string(j + 1), layer.material, fmt::format("{:.2f}", layer.thickness * 1e9),
+             fmt::format("{:.4f}", layer.quarter_waves),
+             fmt::format("{:.5f}", layer.optical.index.value),
+             layer.optical.extinction_known
+                 ? fmt::format("{:.3g}", face.response.layer_absorptance[j] * 1e6)
+                 : "not stated",
+             percent(face.stored_energy[j] / energy), fmt::format("{:.3g}", face.peak_intensity[j]),
+             shares.empty() ? "–" : percent(shares[j])});
     }
-    page.table({"no", "material", "nm", "quarter waves", "index", "absorbs ppm", "energy %", "|E|² max",
-                "Brownian %"},
+    page.table({"no", "material", "nm", "quarter waves", "index", "absorbs ppm", "energy %",
+                "|E|² max", "Brownian %"},
                rows, 2);
 }
 
@@ -170,12 +183,15 @@ void layer_section(Page& page, const Appraisal& appraisal, const PageOptions& op
 std::string loudest_material(const Appraisal& appraisal) {
     const std::vector<double> shares = brownian_shares(appraisal.noise);
     std::map<std::string, double> by_material;
-    for (std::size_t j = 0; j < shares.size(); ++j) by_material[appraisal.mirror.layers[j].material] += shares[j];
-    const auto most = std::max_element(by_material.begin(), by_material.end(),
-                                       [](const auto& a, const auto& b) { return a.second < b.second; });
+    for (std::size_t j = 0; j < shares.size(); ++j)
+        by_material[appraisal.mirror.layers[j].material] += shares[j];
+    const auto most =
+        std::max_element(by_material.begin(), by_material.end(),
+                         [](const auto& a, const auto& b) { return a.second < b.second; });
     if (most == by_material.end()) return "";
-    return fmt::format("{} carries {:.0f} % of the coating's Brownian noise power at {}", most->first,
-                       most->second * 100.0, frequency_text(appraisal.noise.layer_frequency));
+    return fmt::format("{} carries {:.0f} % of the coating's Brownian noise power at {}",
+                       most->first, most->second * 100.0,
+                       frequency_text(appraisal.noise.layer_frequency));
 }
 
 /// The answer in two lines, for those who read no further.
@@ -183,11 +199,12 @@ void short_section(Page& page, const stack::Design& design, const Appraisal& app
     page.heading("In short");
     const double loss = mean_over_faces(appraisal, &optics::Response::loss);
     const double reflectance = mean_over_faces(appraisal, &optics::Response::reflectance);
-    page.item(fmt::format("reflects {}, transmits {}, absorbs {}{}",
-                          loss < 1e-3 ? "1 − " + fraction_text(loss) : fraction_text(reflectance),
-                          fraction_text(mean_over_faces(appraisal, &optics::Response::transmittance)),
-                          fraction_text(mean_over_faces(appraisal, &optics::Response::absorptance)),
-                          design.light.angle > 0.0 && appraisal.faces.size() > 1 ? " (unpolarised)" : ""));
+    page.item(fmt::format(
+        "reflects {}, transmits {}, absorbs {}{}",
+        loss < 1e-3 ? "1 − " + fraction_text(loss) : fraction_text(reflectance),
+        fraction_text(mean_over_faces(appraisal, &optics::Response::transmittance)),
+        fraction_text(mean_over_faces(appraisal, &optics::Response::absorptance)),
+        design.light.angle > 0.0 && appraisal.faces.size() > 1 ? " (unpolarised)" : ""));
     const assess::Noise& noise = appraisal.noise;
     const auto at = std::find(noise.spot.begin(), noise.spot.end(), noise.layer_frequency);
     if (at != noise.spot.end()) {
@@ -201,12 +218,14 @@ void short_section(Page& page, const stack::Design& design, const Appraisal& app
             page.item(fmt::format("moves by {} m/√Hz at {}{}, {:.0f} % of the power from {}",
                                   amplitude_text(noise.spot_total[i]), frequency_text(*at),
                                   noise.complete ? "" : " (terms computed)",
-                                  largest->spot_psd[i] / noise.spot_total[i] * 100.0, largest->title));
+                                  largest->spot_psd[i] / noise.spot_total[i] * 100.0,
+                                  largest->title));
         }
     }
     if (!appraisal.warnings.empty()) {
         page.item(fmt::format("{} warning{} below", appraisal.warnings.size(),
-                              appraisal.warnings.size() == 1 ? "" : "s"), true);
+                              appraisal.warnings.size() == 1 ? "" : "s"),
+                  true);
     }
 }
 
@@ -234,7 +253,8 @@ void noise_section(Page& page, const Appraisal& appraisal) {
     rows.push_back(total);
     page.table(head, rows);
     for (const NoiseTerm& term : noise.terms) {
-        if (!term.missing.empty()) page.item(fmt::format("{} not computed: {}", term.title, term.missing), true);
+        if (!term.missing.empty())
+            page.item(fmt::format("{} not computed: {}", term.title, term.missing), true);
     }
     for (const assess::Dominance& stretch : noise.dominance) {
         page.item(fmt::format("{} is the largest term from {} to {}", stretch.title,
@@ -257,7 +277,8 @@ void noise_section(Page& page, const Appraisal& appraisal) {
     for (const auto& [reason, titles] : reasons) page.item(titles + ": not computed: " + reason);
 }
 
-void list_section(Page& page, const std::string& title, const std::vector<std::string>& list, bool important) {
+void list_section(Page& page, const std::string& title, const std::vector<std::string>& list,
+                  bool important) {
     if (list.empty()) return;
     page.heading(title);
     for (const std::string& text : list) page.item(text, important);
@@ -271,11 +292,12 @@ std::vector<std::string> by_rule(const std::vector<std::string>& analogies, doub
         const std::string how = analogy.substr(colon + 2);
         std::string what = analogy.substr(0, colon);
         const std::string here = fmt::format(" at {:g} K", temperature);
-        if (what.size() > here.size() && what.compare(what.size() - here.size(), here.size(), here) == 0) {
+        if (what.size() > here.size() &&
+            what.compare(what.size() - here.size(), here.size(), here) == 0) {
             what.erase(what.size() - here.size());
         }
-        const auto known =
-            std::find_if(rules.begin(), rules.end(), [&how](const auto& rule) { return rule.first == how; });
+        const auto known = std::find_if(rules.begin(), rules.end(),
+                                        [&how](const auto& rule) { return rule.first == how; });
         if (known == rules.end()) {
             rules.emplace_back(how, what);
         } else {
@@ -293,7 +315,8 @@ std::vector<double> brownian_shares(const assess::Noise& noise) {
     double total = 0.0;
     for (const assess::LayerNoise& layer : noise.layers) total += layer.psd;
     std::vector<double> shares;
-    for (const assess::LayerNoise& layer : noise.layers) shares.push_back(total > 0.0 ? layer.psd / total : 0.0);
+    for (const assess::LayerNoise& layer : noise.layers)
+        shares.push_back(total > 0.0 ? layer.psd / total : 0.0);
     return shares;
 }
 
@@ -304,17 +327,20 @@ std::string appraisal_text(const stack::Design& design, const materials::Library
     page.line("  " + design.document.name);
     short_section(page, design, appraisal);
     mirror_section(page, design, appraisal);
-    const bool lower_limit =
-        std::any_of(appraisal.mirror.layers.begin(), appraisal.mirror.layers.end(),
-                    [](const stack::MirrorLayer& layer) { return !layer.optical.extinction_known; });
+    const bool lower_limit = std::any_of(
+        appraisal.mirror.layers.begin(), appraisal.mirror.layers.end(),
+        [](const stack::MirrorLayer& layer) { return !layer.optical.extinction_known; });
     for (const FaceOptics& face : appraisal.faces) {
         face_section(page, face, design.light.angle > 0.0, lower_limit);
     }
     if (appraisal.faces.size() > 1) {
         page.heading("Light, unpolarised (mean of s and p)");
-        page.row("reflectance", fraction_text(mean_over_faces(appraisal, &optics::Response::reflectance)));
-        page.row("transmittance", fraction_text(mean_over_faces(appraisal, &optics::Response::transmittance)));
-        page.row("absorptance", fraction_text(mean_over_faces(appraisal, &optics::Response::absorptance)));
+        page.row("reflectance",
+                 fraction_text(mean_over_faces(appraisal, &optics::Response::reflectance)));
+        page.row("transmittance",
+                 fraction_text(mean_over_faces(appraisal, &optics::Response::transmittance)));
+        page.row("absorptance",
+                 fraction_text(mean_over_faces(appraisal, &optics::Response::absorptance)));
     }
     power_rows(page, design, appraisal);
     material_section(page, appraisal);
@@ -326,12 +352,16 @@ std::string appraisal_text(const stack::Design& design, const materials::Library
     noise_section(page, appraisal);
     list_section(page, "Warnings", appraisal.warnings, true);
     list_section(page, "Assumed or left out", appraisal.notes, false);
-    list_section(page, "Values by analogy", by_rule(appraisal.analogies, design.temperature), false);
+    list_section(page, "Values by analogy", by_rule(appraisal.analogies, design.temperature),
+                 false);
     page.heading("Uncertainty");
-    page.item("results are given without uncertainty: the material values below carry theirs, see `stillcoat "
-              "materials NAME`");
+    page.item(
+        "results are given without uncertainty: the material values below carry theirs, see "
+        "`stillcoat "
+        "materials NAME`");
     if (!appraisal.fixed.empty()) {
-        page.item(fmt::format("no uncertainty is stated for: {}", fmt::join(appraisal.fixed, ", ")));
+        page.item(
+            fmt::format("no uncertainty is stated for: {}", fmt::join(appraisal.fixed, ", ")));
     }
     sources_section(page, library, appraisal, design.temperature);
     return page.text();

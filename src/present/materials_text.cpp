@@ -12,7 +12,8 @@ using materials::Interval;
 using materials::PropertyInfo;
 
 std::string in_unit(double value, const core::QuantityKind& kind) {
-    return fmt::format("{:.6g}{}{}", value, kind.si_unit == "1" ? "" : " ", kind.si_unit == "1" ? "" : kind.si_unit);
+    return fmt::format("{:.6g}{}{}", value, kind.si_unit == "1" ? "" : " ",
+                       kind.si_unit == "1" ? "" : kind.si_unit);
 }
 
 std::string table_text(const std::vector<double>& x, const std::vector<double>& y, double scale,
@@ -44,7 +45,8 @@ struct CurveText {
         return fmt::format("Cauchy formula {:g} + {:g}/λ² + {:g}/λ⁴, λ in µm", c.a, c.b, c.c);
     }
     std::string operator()(const materials::SameAs& c) const {
-        return fmt::format("as {}{}", c.material, c.factor == 1.0 ? "" : fmt::format(", times {:g}", c.factor));
+        return fmt::format("as {}{}", c.material,
+                           c.factor == 1.0 ? "" : fmt::format(", times {:g}", c.factor));
     }
 };
 
@@ -64,35 +66,45 @@ std::string limits_text(const Entry& entry) {
 std::string beyond_text(const materials::Beyond& beyond) {
     std::string how;
     switch (beyond.rule) {
-        case materials::Beyond::Rule::constant: how = "held constant"; break;
+        case materials::Beyond::Rule::constant:
+            how = "held constant";
+            break;
         case materials::Beyond::Rule::debye:
             how = fmt::format("scaled as a Debye solid of {:g} K", beyond.debye_temperature);
             break;
-        case materials::Beyond::Rule::follows: how = "scaled like that of " + beyond.material; break;
-        case materials::Beyond::Rule::heat_capacity: how = "scaled with its heat capacity"; break;
+        case materials::Beyond::Rule::follows:
+            how = "scaled like that of " + beyond.material;
+            break;
+        case materials::Beyond::Rule::heat_capacity:
+            how = "scaled with its heat capacity";
+            break;
     }
     std::string where;
-    if (beyond.temperature) where += fmt::format(" {:g}–{:g} K", beyond.temperature->lower, beyond.temperature->upper);
+    if (beyond.temperature)
+        where += fmt::format(" {:g}–{:g} K", beyond.temperature->lower, beyond.temperature->upper);
     if (beyond.wavelength) {
-        where += fmt::format(" {:g}–{:g} nm", beyond.wavelength->lower * 1e9, beyond.wavelength->upper * 1e9);
+        where += fmt::format(" {:g}–{:g} nm", beyond.wavelength->lower * 1e9,
+                             beyond.wavelength->upper * 1e9);
     }
-    return fmt::format("beyond its data, for{}: {}{}", where, how, beyond.note.empty() ? "" : "; " + beyond.note);
+    return fmt::format("beyond its data, for{}: {}{}", where, how,
+                       beyond.note.empty() ? "" : "; " + beyond.note);
 }
 
 std::string sources_text(const Entry& entry, const materials::Library& library) {
     std::string text;
     for (const std::string& key : entry.sources) {
         const auto found = library.references.find(key);
-        text += (text.empty() ? "" : "; ") + (found == library.references.end() ? key : found->second.citation);
+        text += (text.empty() ? "" : "; ") +
+                (found == library.references.end() ? key : found->second.citation);
     }
     return fmt::format("{} [{}] ({}, {})", text, entry.place, entry.nature, entry.status);
 }
 
 /// What else an index datum says: its medium, its level, its offset.
 std::string index_text(const Entry& entry) {
-    std::string text = entry.medium == materials::Medium::air        ? "relative to air"
-                       : entry.medium == materials::Medium::vacuum   ? "in vacuum"
-                                                                     : "air or vacuum not stated";
+    std::string text = entry.medium == materials::Medium::air      ? "relative to air"
+                       : entry.medium == materials::Medium::vacuum ? "in vacuum"
+                                                                   : "air or vacuum not stated";
     if (entry.offset != 0.0) text += fmt::format("; plus {:g}", entry.offset);
     if (entry.rescaled_to) {
         text += fmt::format("; the whole rescaled to {:g} at {:g} nm", entry.rescaled_to->second,
@@ -105,14 +117,17 @@ void entry_rows(Page& page, const std::string& label, const Entry& entry, const 
                 const materials::Library& library) {
     page.row(label, std::visit(CurveText{*about.kind}, entry.curve));
     if (about.id == materials::PropertyId::refractive_index) page.row("", index_text(entry));
-    page.row("", width_text(entry.width, *about.kind) +
-                     (entry.between_laboratories
-                          ? fmt::format("; between laboratories {:.3g} to {:.3g}",
-                                        entry.between_laboratories->lower, entry.between_laboratories->upper)
-                          : ""));
-    page.row("", "holds for " + limits_text(entry) + (entry.measured_at.empty() ? "" : "; " + entry.measured_at));
+    page.row(
+        "", width_text(entry.width, *about.kind) +
+                (entry.between_laboratories ? fmt::format("; between laboratories {:.3g} to {:.3g}",
+                                                          entry.between_laboratories->lower,
+                                                          entry.between_laboratories->upper)
+                                            : ""));
+    page.row("", "holds for " + limits_text(entry) +
+                     (entry.measured_at.empty() ? "" : "; " + entry.measured_at));
     if (entry.cold) {
-        page.row("", fmt::format("cold: {} ({})", CurveText{*about.kind}(entry.cold->table), entry.cold->status));
+        page.row("", fmt::format("cold: {} ({})", CurveText{*about.kind}(entry.cold->table),
+                                 entry.cold->status));
     }
     if (entry.beyond) page.row("", beyond_text(*entry.beyond));
     page.row("", sources_text(entry, library));
@@ -129,7 +144,9 @@ std::string materials_list(const materials::Library& library, bool colour) {
             if (material.form == form) rows.push_back({name, material.title});
         }
         if (rows.empty()) continue;
-        page.heading(form == std::string("bulk") ? "Substrates" : form == std::string("film") ? "Films" : "Metals");
+        page.heading(form == std::string("bulk")   ? "Substrates"
+                     : form == std::string("film") ? "Films"
+                                                   : "Metals");
         page.table({"name", "what it is"}, rows, 2);
     }
     page.line("");
@@ -164,16 +181,18 @@ std::string property_page(const materials::Library& library, const std::string& 
     const PropertyInfo& about = materials::info(property);
     Page page(colour);
     page.heading(fmt::format("{} of {}", about.title, name));
-    page.row("at", fmt::format("{:g} K, {:g} nm, {:g} Hz", conditions.temperature, conditions.wavelength * 1e9,
-                               conditions.frequency));
+    page.row("at", fmt::format("{:g} K, {:g} nm, {:g} Hz", conditions.temperature,
+                               conditions.wavelength * 1e9, conditions.frequency));
     const Entry* entry = nullptr;
     std::string analogy;
     if (property == materials::PropertyId::refractive_index) {
-        const auto value = materials::index_at(library, name, conditions.wavelength, conditions.temperature);
+        const auto value =
+            materials::index_at(library, name, conditions.wavelength, conditions.temperature);
         if (!value.index) throw core::InputError(value.missing, "");
         const double group = value.index->value + 2.0 * core::pi * core::speed_of_light /
                                                       conditions.wavelength * value.index->first;
-        page.row("value", fmt::format("{:.6f} in vacuum; group index {:.6f}", value.index->value, group));
+        page.row("value",
+                 fmt::format("{:.6f} in vacuum; group index {:.6f}", value.index->value, group));
         page.row("", width_text(value.width, *about.kind));
         entry = value.entry;
         analogy = value.analogy;
@@ -184,7 +203,8 @@ std::string property_page(const materials::Library& library, const std::string& 
         page.row("", width_text(value.width, *about.kind));
         entry = value.entry;
         analogy = value.analogy;
-        if (value.frequency_extrapolated) page.row("", "outside the frequencies of the measurement");
+        if (value.frequency_extrapolated)
+            page.row("", "outside the frequencies of the measurement");
     }
     if (!analogy.empty()) page.row("by analogy", analogy);
     if (entry != nullptr) {
@@ -199,7 +219,8 @@ std::string units_page(bool colour) {
     page.heading("Units in design files: a number, a blank, a unit, in quotes: \"1397 nm\"");
     std::vector<std::vector<std::string>> rows;
     for (const core::UsualUnits& usual : core::usual_units()) {
-        rows.push_back({usual.kind.name, fmt::format("{}", fmt::join(usual.units, ", ")), usual.used_for});
+        rows.push_back(
+            {usual.kind.name, fmt::format("{}", fmt::join(usual.units, ", ")), usual.used_for});
     }
     page.table({"kind", "usual units", "used for"}, rows, 3);
     page.line("");

@@ -7,8 +7,8 @@
 
 namespace stillcoat::present {
 
-std::vector<SourceUse> data_sources(const materials::Library& library, const assess::Appraisal& appraisal,
-                                    double temperature) {
+std::vector<SourceUse> data_sources(const materials::Library& library,
+                                    const assess::Appraisal& appraisal, double temperature) {
     std::map<std::string, SourceUse> by_key;
     const auto add = [&](const std::string& key, const std::string& use) {
         SourceUse& source = by_key[key];
@@ -16,13 +16,14 @@ std::vector<SourceUse> data_sources(const materials::Library& library, const ass
         const bool known = reference != library.references.end();
         source.key = known ? key : "";
         source.citation = known ? reference->second.citation : key;
-        if (std::find(source.used_for.begin(), source.used_for.end(), use) == source.used_for.end()) {
+        if (std::find(source.used_for.begin(), source.used_for.end(), use) ==
+            source.used_for.end()) {
             source.used_for.push_back(use);
         }
     };
     for (const stack::Ledger::Use& use : appraisal.uses) {
-        const std::string what =
-            fmt::format("{} of {} ({})", materials::info(use.property).title, use.material, use.entry->status);
+        const std::string what = fmt::format("{} of {} ({})", materials::info(use.property).title,
+                                             use.material, use.entry->status);
         for (const std::string& key : use.entry->sources) add(key, what);
         // The sources of a cold table and of a rule count only where they had a say.
         if (use.entry->cold && temperature < use.entry->cold->join.upper) {
@@ -39,15 +40,17 @@ std::vector<SourceUse> data_sources(const materials::Library& library, const ass
 
 std::vector<std::string> formula_sources(const assess::Appraisal& appraisal) {
     std::vector<std::string> list{
-        "optics: characteristic vector of a layered medium, Abelès, Ann. Phys. (Paris) 12, 596 (1950); Born & Wolf, "
+        "optics: characteristic vector of a layered medium, Abelès, Ann. Phys. (Paris) 12, 596 "
+        "(1950); Born & Wolf, "
         "Principles of Optics, §1.6; stored energy in its non-dispersive form"};
     // Terms that rest on the same formula share a line.
     std::vector<std::pair<std::string, std::string>> by_source;
     for (const auto* group : {&appraisal.noise.terms, &appraisal.noise.comparisons}) {
         for (const assess::NoiseTerm& term : *group) {
             if (term.source.empty() || !term.missing.empty()) continue;
-            const auto known = std::find_if(by_source.begin(), by_source.end(),
-                                            [&term](const auto& item) { return item.first == term.source; });
+            const auto known =
+                std::find_if(by_source.begin(), by_source.end(),
+                             [&term](const auto& item) { return item.first == term.source; });
             if (known == by_source.end()) {
                 by_source.emplace_back(term.source, term.title);
             } else {
@@ -59,14 +62,14 @@ std::vector<std::string> formula_sources(const assess::Appraisal& appraisal) {
     return list;
 }
 
-void sources_section(Page& page, const materials::Library& library, const assess::Appraisal& appraisal,
-                     double temperature) {
+void sources_section(Page& page, const materials::Library& library,
+                     const assess::Appraisal& appraisal, double temperature) {
     page.heading("Formulas");
     for (const std::string& text : formula_sources(appraisal)) page.item(text);
     page.heading("Sources of the values used");
     for (const SourceUse& source : data_sources(library, appraisal, temperature)) {
-        page.item(fmt::format("{}{}: {}", source.key.empty() ? "design file: " : "", source.citation,
-                              fmt::join(source.used_for, "; ")));
+        page.item(fmt::format("{}{}: {}", source.key.empty() ? "design file: " : "",
+                              source.citation, fmt::join(source.used_for, "; ")));
     }
 }
 

@@ -11,19 +11,19 @@ namespace stillcoat::present {
 
 /// One source and what it was used for.
 struct SourceUse {
-    std::string key;       ///< of references.toml; empty for a source stated in the design file
+    std::string key;  ///< of references.toml; empty for a source stated in the design file
     std::string citation;
     std::vector<std::string> used_for;  ///< "loss angle of silica-ibs (from memory)"
 };
 
 /// @param temperature operating temperature [K]: which parts of an entry had a say
-std::vector<SourceUse> data_sources(const materials::Library& library, const assess::Appraisal& appraisal,
-                                    double temperature);
+std::vector<SourceUse> data_sources(const materials::Library& library,
+                                    const assess::Appraisal& appraisal, double temperature);
 
 /// Formulas used, with what they leave out, each once.
 std::vector<std::string> formula_sources(const assess::Appraisal& appraisal);
 
-void sources_section(Page& page, const materials::Library& library, const assess::Appraisal& appraisal,
-                     double temperature);
+void sources_section(Page& page, const materials::Library& library,
+                     const assess::Appraisal& appraisal, double temperature);
 
 }  // namespace stillcoat::present

@@ -13,8 +13,9 @@ constexpr std::size_t page_width = 100;
 constexpr std::size_t label_width = 26;
 
 std::size_t characters(const std::string& text) {
-    return static_cast<std::size_t>(std::count_if(
-        text.begin(), text.end(), [](char c) { return (static_cast<unsigned char>(c) & 0xC0) != 0x80; }));
+    return static_cast<std::size_t>(std::count_if(text.begin(), text.end(), [](char c) {
+        return (static_cast<unsigned char>(c) & 0xC0) != 0x80;
+    }));
 }
 
 std::string padded(const std::string& text, std::size_t width, bool left) {
@@ -44,7 +45,9 @@ std::string scaled(double value, const std::vector<Scale>& scales, int digits) {
 }  // namespace
 
 std::string length_text(double metres) {
-    return scaled(metres, {{1e3, "km"}, {1.0, "m"}, {1e-2, "cm"}, {1e-3, "mm"}, {1e-6, "µm"}, {1e-9, "nm"}}, 5);
+    return scaled(metres,
+                  {{1e3, "km"}, {1.0, "m"}, {1e-2, "cm"}, {1e-3, "mm"}, {1e-6, "µm"}, {1e-9, "nm"}},
+                  5);
 }
 
 std::string fraction_text(double fraction) {
@@ -54,7 +57,9 @@ std::string fraction_text(double fraction) {
 }
 
 std::string time_text(double seconds) {
-    return scaled(seconds, {{1.0, "s"}, {1e-3, "ms"}, {1e-6, "µs"}, {1e-9, "ns"}, {1e-12, "ps"}, {1e-15, "fs"}}, 4);
+    return scaled(
+        seconds,
+        {{1.0, "s"}, {1e-3, "ms"}, {1e-6, "µs"}, {1e-9, "ns"}, {1e-12, "ps"}, {1e-15, "fs"}}, 4);
 }
 
 std::string frequency_text(double hertz) {
@@ -62,11 +67,13 @@ std::string frequency_text(double hertz) {
 }
 
 std::string power_text(double watts) {
-    return scaled(watts, {{1e6, "MW"}, {1e3, "kW"}, {1.0, "W"}, {1e-3, "mW"}, {1e-6, "µW"}, {1e-9, "nW"}}, 4);
+    return scaled(
+        watts, {{1e6, "MW"}, {1e3, "kW"}, {1.0, "W"}, {1e-3, "mW"}, {1e-6, "µW"}, {1e-9, "nW"}}, 4);
 }
 
 std::string energy_text(double joules_per_watt) {
-    return scaled(joules_per_watt, {{1e-9, "nJ/W"}, {1e-12, "pJ/W"}, {1e-15, "fJ/W"}, {1e-18, "aJ/W"}}, 4);
+    return scaled(joules_per_watt,
+                  {{1e-9, "nJ/W"}, {1e-12, "pJ/W"}, {1e-15, "fJ/W"}, {1e-18, "aJ/W"}}, 4);
 }
 
 std::string amplitude_text(double psd) { return fmt::format("{:.3e}", std::sqrt(psd)); }
@@ -79,11 +86,16 @@ std::string width_text(const materials::Width& width, const core::QuantityKind& 
     using Form = materials::Width::Form;
     const std::string unit = kind.si_unit == "1" ? "" : " " + kind.si_unit;
     switch (width.form) {
-        case Form::absolute: return fmt::format("± {:.3g}{}", width.value, unit);
-        case Form::relative: return fmt::format("± {:.3g} %", width.value * 100.0);
-        case Form::geometric: return fmt::format("×/÷ {:.3g} (log-normal)", width.value);
-        case Form::uniform: return fmt::format("anywhere from {:.3g} to {:.3g}{}", width.lower, width.upper, unit);
-        case Form::not_stated: break;
+        case Form::absolute:
+            return fmt::format("± {:.3g}{}", width.value, unit);
+        case Form::relative:
+            return fmt::format("± {:.3g} %", width.value * 100.0);
+        case Form::geometric:
+            return fmt::format("×/÷ {:.3g} (log-normal)", width.value);
+        case Form::uniform:
+            return fmt::format("anywhere from {:.3g} to {:.3g}{}", width.lower, width.upper, unit);
+        case Form::not_stated:
+            break;
     }
     return "uncertainty not stated";
 }
@@ -127,8 +139,8 @@ void Page::item(const std::string& text, bool important) {
     }
 }
 
-void Page::table(const std::vector<std::string>& head, const std::vector<std::vector<std::string>>& rows,
-                 std::size_t left_columns) {
+void Page::table(const std::vector<std::string>& head,
+                 const std::vector<std::vector<std::string>>& rows, std::size_t left_columns) {
     std::vector<std::size_t> widths;
     for (const std::string& cell : head) widths.push_back(characters(cell));
     for (const auto& row : rows) {

@@ -9,13 +9,13 @@
 
 namespace stillcoat::present {
 
-std::string length_text(double metres);        ///< "5.927 µm"
-std::string fraction_text(double fraction);    ///< "5.305 ppm" below 0.1 %, else "1.234 %"
-std::string time_text(double seconds);         ///< "2.862 fs"
-std::string frequency_text(double hertz);      ///< "100 Hz", "10 kHz"
-std::string power_text(double watts);          ///< "103.3 mW"
+std::string length_text(double metres);           ///< "5.927 µm"
+std::string fraction_text(double fraction);       ///< "5.305 ppm" below 0.1 %, else "1.234 %"
+std::string time_text(double seconds);            ///< "2.862 fs"
+std::string frequency_text(double hertz);         ///< "100 Hz", "10 kHz"
+std::string power_text(double watts);             ///< "103.3 mW"
 std::string energy_text(double joules_per_watt);  ///< "12.3 fJ/W"
-std::string amplitude_text(double psd);        ///< √psd in m/√Hz, "6.107e-21"
+std::string amplitude_text(double psd);           ///< √psd in m/√Hz, "6.107e-21"
 std::string polarisation_text(optics::Polarisation polarisation);
 std::string width_text(const materials::Width& width, const core::QuantityKind& kind);
 
@@ -30,8 +30,8 @@ class Page {
     /// A paragraph behind a mark, wrapped and indented.
     void item(const std::string& text, bool important = false);
     /// Aligned columns, the first to the left, the others to the right.
-    void table(const std::vector<std::string>& head, const std::vector<std::vector<std::string>>& rows,
-               std::size_t left_columns = 1);
+    void table(const std::vector<std::string>& head,
+               const std::vector<std::vector<std::string>>& rows, std::size_t left_columns = 1);
     const std::string& text() const { return text_; }
 
   private:

@@ -23,7 +23,8 @@ LayerInput read_layer(const Node& node, int number, const materials::Library& li
     layer.quarter_waves = reader.number("quarter_waves", core::positive(""));
     layer.thickness = reader.quantity("thickness", kind::length, core::positive("m"));
     if (reader.has("quarter_waves") && reader.has("thickness")) {
-        reader.contradiction("thickness", "quarter_waves", "a layer has one thickness: keep one of the two");
+        reader.contradiction("thickness", "quarter_waves",
+                             "a layer has one thickness: keep one of the two");
     } else if (!reader.has("quarter_waves") && !reader.has("thickness")) {
         reader.missing("thickness", "\"241.3 nm\", or quarter_waves = 1.0");
     }
@@ -34,8 +35,7 @@ LayerInput read_layer(const Node& node, int number, const materials::Library& li
 void read_block(const Node& node, std::size_t number, const materials::Library& library,
                 core::Problems& problems, std::vector<LayerInput>& layers) {
     TableReader reader(node, fmt::format("[[coating.block]] {}", number), problems);
-    const int repeat =
-        reader.whole_number("repeat", 1, static_cast<int>(most_layers)).value_or(1);
+    const int repeat = reader.whole_number("repeat", 1, static_cast<int>(most_layers)).value_or(1);
     if (!reader.has("layers")) {
         reader.missing("layers", "[ { material = \"silica-ibs\", quarter_waves = 1.0 } ]");
     }
@@ -62,9 +62,11 @@ void read_block(const Node& node, std::size_t number, const materials::Library& 
 Coating read_coating(TableReader& reader, double wavelength, const materials::Library& library) {
     Coating coating{};
     coating.design_wavelength =
-        reader.quantity("design_wavelength", kind::length, core::positive("m")).value_or(wavelength);
+        reader.quantity("design_wavelength", kind::length, core::positive("m"))
+            .value_or(wavelength);
     coating.reference_temperature =
-        reader.quantity("reference_temperature", kind::temperature, core::positive("K")).value_or(295.0);
+        reader.quantity("reference_temperature", kind::temperature, core::positive("K"))
+            .value_or(295.0);
     const core::Limits factor{0.0, 100.0, false, true, "greater than 0, at most 100"};
     coating.excess_loss_stated = reader.has("excess_loss");
     coating.excess_loss = reader.number("excess_loss", factor).value_or(1.0);
@@ -80,7 +82,8 @@ Coating read_coating(TableReader& reader, double wavelength, const materials::Li
         if (reader.problems().size() > enough_problems) break;
     }
     if (reader.has("block") && coating.layers.empty() && reader.problems().size() == before) {
-        reader.problem_at("block", "the coating has no layers", "add [[coating.block]] with layers = [ ... ]");
+        reader.problem_at("block", "the coating has no layers",
+                          "add [[coating.block]] with layers = [ ... ]");
     }
     return coating;
 }

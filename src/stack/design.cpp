@@ -61,14 +61,16 @@ MirrorBody read_mirror(TableReader& document, const materials::Library& library)
     auto reader = section(document, "mirror", "[mirror] with substrate = \"fused-silica\"");
     if (!reader) return mirror;
     mirror.substrate = reader->required_text("substrate");
-    if (!mirror.substrate.empty()) check_material(*reader, "substrate", mirror.substrate, library, {});
+    if (!mirror.substrate.empty())
+        check_material(*reader, "substrate", mirror.substrate, library, {});
     mirror.diameter = reader->quantity("diameter", kind::length, core::positive("m"));
     mirror.thickness = reader->quantity("thickness", kind::length, core::positive("m"));
     if (reader->has("diameter") != reader->has("thickness")) {
         const bool diameter = reader->has("diameter");
-        reader->problem_at(diameter ? "diameter" : "thickness",
-                           fmt::format("{} in [mirror] stands alone", diameter ? "diameter" : "thickness"),
-                           "give diameter and thickness for a finite mirror, neither for a half-space");
+        reader->problem_at(
+            diameter ? "diameter" : "thickness",
+            fmt::format("{} in [mirror] stands alone", diameter ? "diameter" : "thickness"),
+            "give diameter and thickness for a finite mirror, neither for a half-space");
     }
     reader->finish();
     return mirror;
@@ -93,7 +95,9 @@ Band read_band(TableReader& document) {
         std::erase_if(band.spot, [&band](double f) { return f < band.from || f > band.to; });
     }
     if (band.from >= band.to) {
-        reader.problem_at("to", fmt::format("the band ends at {:g} Hz, before it begins at {:g} Hz", band.to, band.from),
+        reader.problem_at("to",
+                          fmt::format("the band ends at {:g} Hz, before it begins at {:g} Hz",
+                                      band.to, band.from),
                           "to must lie above from");
     } else if (std::log10(band.to / band.from) * band.points_per_decade >
                static_cast<double>(most_frequencies)) {
@@ -112,7 +116,8 @@ void read_overrides(TableReader& document, Design& design, materials::Library& l
         const std::string& name = entry.key;
         if (library.materials.count(name) == 0) {
             const auto near = core::nearest_spelling(name, library.names());
-            document.problems().add(entry.value.place(), fmt::format("unknown material \"{}\"", name),
+            document.problems().add(entry.value.place(),
+                                    fmt::format("unknown material \"{}\"", name),
                                     near ? fmt::format("did you mean \"{}\"?", *near)
                                          : "`stillcoat materials` lists the known ones");
             continue;
@@ -130,9 +135,10 @@ void check_material(TableReader& reader, const std::string& key, const std::stri
     std::vector<std::string> names = library.names();
     names.insert(names.end(), others.begin(), others.end());
     const auto near = core::nearest_spelling(name, names);
-    reader.problem_at(key, fmt::format("unknown material \"{}\"", name),
-                      near ? fmt::format("did you mean \"{}\"? `stillcoat materials` lists all", *near)
-                           : "`stillcoat materials` lists the known ones");
+    reader.problem_at(
+        key, fmt::format("unknown material \"{}\"", name),
+        near ? fmt::format("did you mean \"{}\"? `stillcoat materials` lists all", *near)
+             : "`stillcoat materials` lists the known ones");
 }
 
 Design read_design(core::Document document, materials::Library& library) {
@@ -143,13 +149,15 @@ Design read_design(core::Document document, materials::Library& library) {
     design.title = reader.text("title").value_or("Untitled mirror");
     read_overrides(reader, design, library);
     design.light = read_light(reader, library);
-    if (auto beam = section(reader, "beam", "[beam] with radius = \"0.42 mm\" (1/e² intensity radius)")) {
+    if (auto beam =
+            section(reader, "beam", "[beam] with radius = \"0.42 mm\" (1/e² intensity radius)")) {
         design.beam_radius = beam->required_quantity("radius", kind::length, core::positive("m"));
         beam->finish();
     }
     design.mirror = read_mirror(reader, library);
     if (auto room = section(reader, "environment", "[environment] with temperature = \"295 K\"")) {
-        design.temperature = room->required_quantity("temperature", kind::temperature, core::positive("K"));
+        design.temperature =
+            room->required_quantity("temperature", kind::temperature, core::positive("K"));
         room->finish();
     }
     design.band = read_band(reader);
@@ -164,7 +172,8 @@ Design read_design(core::Document document, materials::Library& library) {
 
 std::vector<double> frequencies(const Band& band) {
     const double decades = std::log10(band.to / band.from);
-    const int intervals = std::max(1, static_cast<int>(std::lround(decades * band.points_per_decade)));
+    const int intervals =
+        std::max(1, static_cast<int>(std::lround(decades * band.points_per_decade)));
     std::vector<double> list;
     for (int i = 0; i < intervals; ++i) {
         // Round to twelve digits so that 10 Hz prints as 10 Hz.

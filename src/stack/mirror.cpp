@@ -30,15 +30,18 @@ class OpticalLookup {
             ledger_.use_index(material, index);
             constants.index = *index.index;
         } else {
-            problems.add(node != nullptr ? node->place() : core::Place{}, index.missing,
-                         fmt::format("choose another material, or state refractive_index in [material.\"{}\"]",
-                                     material));
+            problems.add(
+                node != nullptr ? node->place() : core::Place{}, index.missing,
+                fmt::format(
+                    "choose another material, or state refractive_index in [material.\"{}\"]",
+                    material));
         }
         const Value k = materials::evaluate(library_, material, PropertyId::extinction_coefficient,
                                             {temperature_, wavelength_, 1.0});
-        const auto used_as = library_.at(material).properties.count(PropertyId::extinction_coefficient) != 0
-                                 ? PropertyId::extinction_coefficient
-                                 : PropertyId::absorption_coefficient;
+        const auto used_as =
+            library_.at(material).properties.count(PropertyId::extinction_coefficient) != 0
+                ? PropertyId::extinction_coefficient
+                : PropertyId::absorption_coefficient;
         if (const auto number = ledger_.use(material, used_as, k)) {
             constants.extinction = *number;
             constants.extinction_known = true;
@@ -54,8 +57,8 @@ class OpticalLookup {
     std::map<std::string, OpticalConstants> known_;
 };
 
-/// Thickness strain of a clamped film from the reference to the operating temperature; 0 with a note when
-/// an input is unknown.
+/// Thickness strain of a clamped film from the reference to the operating temperature; 0 with a
+/// note when an input is unknown.
 class ThicknessStrain {
   public:
     ThicknessStrain(const Design& design, const Library& library, Ledger& ledger)
@@ -68,7 +71,8 @@ class ThicknessStrain {
         const double from = design_.coating.reference_temperature;
         const double to = design_.temperature;
         const Value film = materials::expansion_between(library_, material, from, to);
-        const Value base = materials::expansion_between(library_, design_.mirror.substrate, from, to);
+        const Value base =
+            materials::expansion_between(library_, design_.mirror.substrate, from, to);
         const Value poisson = materials::evaluate(library_, material, PropertyId::poisson_ratio,
                                                   {to, design_.light.wavelength, 1.0});
         double strain = 0.0;
@@ -80,8 +84,8 @@ class ThicknessStrain {
             strain = ((1.0 + nu) * *film.number - 2.0 * nu * *base.number) / (1.0 - nu);
         } else {
             const Value& culprit = !film.number ? film : !base.number ? base : poisson;
-            ledger_.note(fmt::format("thickness change of {} from {:g} K to {:g} K left out: {}", material,
-                                     from, to, culprit.missing));
+            ledger_.note(fmt::format("thickness change of {} from {:g} K to {:g} K left out: {}",
+                                     material, from, to, culprit.missing));
         }
         known_[material] = strain;
         return strain;
@@ -94,8 +98,8 @@ class ThicknessStrain {
     std::map<std::string, double> known_;
 };
 
-numerics::Jet<double> incident_index(const Design& design, const Library& library, OpticalLookup& lookup,
-                                     Problems& problems) {
+numerics::Jet<double> incident_index(const Design& design, const Library& library,
+                                     OpticalLookup& lookup, Problems& problems) {
     (void)library;
     const std::string& medium = design.light.medium;
     if (medium == "vacuum") return numerics::Jet<double>(1.0);
@@ -103,11 +107,12 @@ numerics::Jet<double> incident_index(const Design& design, const Library& librar
     const core::Node* node = design.document.root.find("light");
     if (node != nullptr) node = node->find("medium");
     const OpticalConstants constants = lookup.get(medium, node, problems);
-    // Bulk absorption over the width of a wave is nothing; a real extinction makes R and T ill defined.
+    // Bulk absorption over the width of a wave is nothing; a real extinction makes R and T ill
+    // defined.
     if (constants.extinction > 1e-6) {
         problems.add(node != nullptr ? node->place() : core::Place{},
-                     fmt::format("{} absorbs (k = {:.3g}): an absorbing incident medium is refused", medium,
-                                 constants.extinction),
+                     fmt::format("{} absorbs (k = {:.3g}): an absorbing incident medium is refused",
+                                 medium, constants.extinction),
                      "reflectance and transmittance are not defined in it");
     }
     return constants.index;
@@ -115,8 +120,10 @@ numerics::Jet<double> incident_index(const Design& design, const Library& librar
 
 }  // namespace
 
-std::optional<double> Ledger::use(const std::string& material, PropertyId property, const Value& value) {
-    if (value.number) add(material, property, value.entry, value.frequency_extrapolated, value.analogy);
+std::optional<double> Ledger::use(const std::string& material, PropertyId property,
+                                  const Value& value) {
+    if (value.number)
+        add(material, property, value.entry, value.frequency_extrapolated, value.analogy);
     return value.number;
 }
 
@@ -130,25 +137,31 @@ void Ledger::note(const std::string& text) {
 
 void Ledger::add(const std::string& material, PropertyId property, const materials::Entry* entry,
                  bool extrapolated, const std::string& analogy) {
-    if (!analogy.empty() && std::find(analogies_.begin(), analogies_.end(), analogy) == analogies_.end()) {
+    if (!analogy.empty() &&
+        std::find(analogies_.begin(), analogies_.end(), analogy) == analogies_.end()) {
         analogies_.push_back(analogy);
     }
     for (Use& known : uses_) {
-        if (known.material != material || known.property != property || known.entry != entry) continue;
+        if (known.material != material || known.property != property || known.entry != entry)
+            continue;
         known.frequency_extrapolated = known.frequency_extrapolated || extrapolated;
         known.by_rule = known.by_rule || !analogy.empty();
         return;
     }
-    if (entry != nullptr) uses_.push_back({material, property, entry, extrapolated, !analogy.empty()});
+    if (entry != nullptr)
+        uses_.push_back({material, property, entry, extrapolated, !analogy.empty()});
 }
 
 Mirror at_operating_point(const Design& design, const Library& library, Ledger& ledger) {
     Problems problems;
     const Coating& coating = design.coating;
-    Ledger unused;  // indices at the reference point count quarter waves; the operating ones are the result
-    OpticalLookup reference(library, coating.design_wavelength, coating.reference_temperature, unused);
+    Ledger unused;  // indices at the reference point count quarter waves; the operating ones are
+                    // the result
+    OpticalLookup reference(library, coating.design_wavelength, coating.reference_temperature,
+                            unused);
     OpticalLookup operating(library, design.light.wavelength, design.temperature, ledger);
-    OpticalLookup reference_colour(library, design.light.wavelength, coating.reference_temperature, unused);
+    OpticalLookup reference_colour(library, design.light.wavelength, coating.reference_temperature,
+                                   unused);
     ThicknessStrain strain(design, library, ledger);
     Mirror mirror{};
     mirror.substrate = design.mirror.substrate;
@@ -167,12 +180,15 @@ Mirror at_operating_point(const Design& design, const Library& library, Ledger& 
         layer.reference_thickness = input.thickness.value_or(0.0);
         if (input.quarter_waves) {
             const double n = reference.get(input.material, node, problems).index.value;
-            layer.reference_thickness = *input.quarter_waves * coating.design_wavelength / (4.0 * n);
+            layer.reference_thickness =
+                *input.quarter_waves * coating.design_wavelength / (4.0 * n);
         }
         layer.thickness = layer.reference_thickness * (1.0 + strain.of(input.material));
-        layer.quarter_waves = 4.0 * layer.optical.index.value * layer.thickness / design.light.wavelength;
+        layer.quarter_waves =
+            4.0 * layer.optical.index.value * layer.thickness / design.light.wavelength;
         path += layer.optical.index.value * layer.thickness;
-        reference_path += reference_colour.get(input.material, node, problems).index.value * layer.reference_thickness;
+        reference_path += reference_colour.get(input.material, node, problems).index.value *
+                          layer.reference_thickness;
         mirror.coating_thickness += layer.thickness;
         mirror.layers.push_back(std::move(layer));
     }

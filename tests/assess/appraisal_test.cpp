@@ -44,53 +44,72 @@ TEST(Appraisal, TotalIsTheSumOfItsTermsAsPower) {
     EXPECT_EQ(noise.layer_frequency, 100.0);
 }
 
-/// A coating whose film has the substrate's elastic constants, with light kept at its face, is the published
-/// closed form of Nakagawa et al., Phys. Rev. D 65, 102001 (2002), from the design file to the result.
+/// A coating whose film has the substrate's elastic constants, with light kept at its face, is the
+/// published closed form of Nakagawa et al., Phys. Rev. D 65, 102001 (2002), from the design file
+/// to the result.
 TEST(Appraisal, ReproducesTheClosedFormOfEqualElasticConstants) {
     const std::string same =
-        "youngs_modulus = { value = \"72 GPa\", source = \"x\" }\npoisson_ratio = { value = 0.17, source = \"x\" }\n"
-        "loss_angle = { value = 3e-4, source = \"x\" }\nphotoelastic_p12 = { value = 0, source = \"x\" }\n";
+        "youngs_modulus = { value = \"72 GPa\", source = \"x\" }\npoisson_ratio = { value = 0.17, "
+        "source = \"x\" }\n"
+        "loss_angle = { value = 3e-4, source = \"x\" }\nphotoelastic_p12 = { value = 0, source = "
+        "\"x\" }\n";
     const assess::Appraisal result = appraised(mirror_text(
-        quarter_wave_pairs, "[material.tantala-ibs]\n" + same + "[material.silica-ibs]\n" + same +
-                                "[material.fused-silica]\nyoungs_modulus = { value = \"72 GPa\", source = \"x\" }\n"
-                                "poisson_ratio = { value = 0.17, source = \"x\" }\n"));
-    const double expected = noise::equal_elastic_psd({72e9, 0.17}, result.mirror.coating_thickness, 3e-4, 0.06, 295.0, 100.0);
+        quarter_wave_pairs,
+        "[material.tantala-ibs]\n" + same + "[material.silica-ibs]\n" + same +
+            "[material.fused-silica]\nyoungs_modulus = { value = \"72 GPa\", source = \"x\" }\n"
+            "poisson_ratio = { value = 0.17, source = \"x\" }\n"));
+    const double expected = noise::equal_elastic_psd({72e9, 0.17}, result.mirror.coating_thickness,
+                                                     3e-4, 0.06, 295.0, 100.0);
     EXPECT_NEAR(term(result.noise, "coating_brownian_at_face").spot_psd[2] / expected, 1.0, 1e-12);
 }
 
 TEST(Appraisal, LeavesOutATermWhoseInputIsUnknownAndSaysWhereToGiveIt) {
-    const std::string gold = "[[coating.block]]\nlayers = [ { material = \"gold-film\", thickness = \"150 nm\" } ]\n";
+    const std::string gold =
+        "[[coating.block]]\nlayers = [ { material = \"gold-film\", thickness = \"150 nm\" } ]\n";
     const assess::Noise noise = appraised(mirror_text(gold)).noise;
     EXPECT_FALSE(noise.complete);
     const auto& thermal = term(noise, "thermal_coherent");
     EXPECT_TRUE(thermal.psd.empty());
     EXPECT_FALSE(thermal.in_total);
-    EXPECT_EQ(thermal.missing, "dn/dT of gold-film unknown: no value recorded; give it in [material.\"gold-film\"]");
+    EXPECT_EQ(thermal.missing,
+              "dn/dT of gold-film unknown: no value recorded; give it in [material.\"gold-film\"]");
     // What can be known is in the total: the expansion without the index.
     EXPECT_TRUE(term(noise, "thermo_elastic_with_substrate").in_total);
-    const assess::Noise given = appraised(mirror_text(gold, "[material.gold-film]\nthermo_optic_coefficient = { value = "
-                                                            "\"-1e-4 1/K\", source = \"x\" }\n")).noise;
+    const assess::Noise given =
+        appraised(mirror_text(gold,
+                              "[material.gold-film]\nthermo_optic_coefficient = { value = "
+                              "\"-1e-4 1/K\", source = \"x\" }\n"))
+            .noise;
     EXPECT_TRUE(given.complete);
 }
 
 TEST(Appraisal, OffNormalGivesOpticsForBothPolarisationsAndSaysThatNoiseComesLater) {
     const assess::Appraisal result = appraised(mirror_text(
-        quarter_wave_pairs, "", "wavelength = \"1064 nm\"\nangle = \"45 deg\"\npolarisation = \"unpolarised\""));
+        quarter_wave_pairs, "",
+        "wavelength = \"1064 nm\"\nangle = \"45 deg\"\npolarisation = \"unpolarised\""));
     ASSERT_EQ(result.faces.size(), 2u);
     EXPECT_FALSE(result.noise.computed);
     EXPECT_FALSE(result.noise.missing.empty());
     EXPECT_GT(result.faces[0].response.reflectance, result.faces[1].response.reflectance);
-    EXPECT_NEAR(mean_over_faces(result, &optics::Response::transmittance),
-                0.5 * (result.faces[0].response.transmittance + result.faces[1].response.transmittance), 1e-18);
+    EXPECT_NEAR(
+        mean_over_faces(result, &optics::Response::transmittance),
+        0.5 * (result.faces[0].response.transmittance + result.faces[1].response.transmittance),
+        1e-18);
 }
 
 TEST(Appraisal, ExcessLossMultipliesTheFilmsAndIsNamed) {
     const assess::Appraisal plain = appraised(mirror_text(quarter_wave_pairs));
-    const assess::Appraisal more = appraised(mirror_text("[coating]\nexcess_loss = 1.15\n" + quarter_wave_pairs));
-    EXPECT_NEAR(term(more.noise, "coating_brownian").psd[5] / term(plain.noise, "coating_brownian").psd[5], 1.15, 1e-12);
-    EXPECT_EQ(term(more.noise, "substrate_brownian").psd[5], term(plain.noise, "substrate_brownian").psd[5]);
+    const assess::Appraisal more =
+        appraised(mirror_text("[coating]\nexcess_loss = 1.15\n" + quarter_wave_pairs));
+    EXPECT_NEAR(
+        term(more.noise, "coating_brownian").psd[5] / term(plain.noise, "coating_brownian").psd[5],
+        1.15, 1e-12);
+    EXPECT_EQ(term(more.noise, "substrate_brownian").psd[5],
+              term(plain.noise, "substrate_brownian").psd[5]);
     EXPECT_NE(std::find_if(more.notes.begin(), more.notes.end(),
-                           [](const std::string& note) { return note.find("excess_loss = 1.15") != std::string::npos; }),
+                           [](const std::string& note) {
+                               return note.find("excess_loss = 1.15") != std::string::npos;
+                           }),
               more.notes.end());
 }
 
@@ -102,27 +121,32 @@ TEST(Appraisal, WarnsOfASmallBeamAndOfAFiniteMirrorWithTheSizeOfTheError) {
     };
     std::string small = mirror_text(quarter_wave_pairs);
     small.replace(small.find("6 cm"), 4, "100 um");
-    EXPECT_NE(text_of(appraised(small)).find("coating is not thin against the beam (d/w = 0.03"), std::string::npos);
+    EXPECT_NE(text_of(appraised(small)).find("coating is not thin against the beam (d/w = 0.03"),
+              std::string::npos);
     std::string finite = mirror_text(quarter_wave_pairs);
-    finite.replace(finite.find("\"fused-silica\""), 14, "\"fused-silica\"\ndiameter = \"34 cm\"\nthickness = \"20 cm\"");
-    EXPECT_NE(text_of(appraised(finite)).find("differs by -3"), std::string::npos) << text_of(appraised(finite));
+    finite.replace(finite.find("\"fused-silica\""), 14,
+                   "\"fused-silica\"\ndiameter = \"34 cm\"\nthickness = \"20 cm\"");
+    EXPECT_NE(text_of(appraised(finite)).find("differs by -3"), std::string::npos)
+        << text_of(appraised(finite));
     EXPECT_EQ(text_of(appraised(mirror_text(quarter_wave_pairs))), "");
 }
 
 TEST(Appraisal, SaysThatAbsorptionIsNotStatedInsteadOfCountingItAsZero) {
     const auto read = test::read_design(mirror_text(quarter_wave_pairs));
     materials::Library library = read.library;
-    library.materials.at("tantala-ibs").properties.erase(materials::PropertyId::extinction_coefficient);
+    library.materials.at("tantala-ibs")
+        .properties.erase(materials::PropertyId::extinction_coefficient);
     const assess::Appraisal result = assess::appraise(read.design, library);
     ASSERT_EQ(result.warnings.size(), 1u);
-    EXPECT_EQ(result.warnings[0].rfind("absorption of tantala-ibs at 1064 nm is not stated", 0), 0u);
+    EXPECT_EQ(result.warnings[0].rfind("absorption of tantala-ibs at 1064 nm is not stated", 0),
+              0u);
 }
 
 TEST(Appraisal, OfASiliconMirrorHasNoExpansionNoiseWhereSiliconDoesNotExpand) {
     // The expansion of silicon crosses zero at 123.5 K in the library.
     const auto at = [](const std::string& temperature) {
-        const assess::Appraisal result =
-            appraised(mirror_text(quarter_wave_pairs, "", "wavelength = \"1550 nm\"", "silicon", temperature));
+        const assess::Appraisal result = appraised(mirror_text(
+            quarter_wave_pairs, "", "wavelength = \"1550 nm\"", "silicon", temperature));
         return term(result.noise, "bare_substrate_thermo_elastic").spot_psd[2];
     };
     EXPECT_LT(at("123.5 K"), 1e-12 * at("140 K"));

@@ -44,17 +44,20 @@ TEST(Document, ThatNestsTooDeepIsRefusedBeforeTheParserRecurses) {
               "d.toml:1:1: nested deeper than 64 levels\n       write the tables flat");
     std::string dotted = "a";
     for (int i = 0; i < 100'000; ++i) dotted += ".a";
-    EXPECT_NE(message_of([&] { parse_document(dotted + " = 1\n", "d.toml"); }).find("nested deeper"),
-              std::string::npos);
+    EXPECT_NE(
+        message_of([&] { parse_document(dotted + " = 1\n", "d.toml"); }).find("nested deeper"),
+        std::string::npos);
 }
 
 TEST(Document, MayHoldBracketsInTextsAndComments) {
-    const std::string text = "a = \"" + std::string(200, '[') + "\"  # " + std::string(200, '{') + "\nb = 1\n";
+    const std::string text =
+        "a = \"" + std::string(200, '[') + "\"  # " + std::string(200, '{') + "\nb = 1\n";
     EXPECT_EQ(parse_document(text, "d.toml").root.entries.size(), 2u);
 }
 
 TEST(Document, DoesNotClampAnIntegerBeyondSixtyFourBits) {
-    const Document document = parse_document("a = 99999999999999999999999\nb = -99999999999999999999999\n", "d.toml");
+    const Document document =
+        parse_document("a = 99999999999999999999999\nb = -99999999999999999999999\n", "d.toml");
     Problems problems;
     TableReader reader(document.root, "the file", problems);
     EXPECT_FALSE(reader.number("a", any_value()).has_value());
@@ -64,7 +67,9 @@ TEST(Document, DoesNotClampAnIntegerBeyondSixtyFourBits) {
 
 class Folder {
   public:
-    Folder() : path_(std::filesystem::temp_directory_path() / ("stillcoat-" + std::to_string(::getpid()))) {
+    Folder()
+        : path_(std::filesystem::temp_directory_path() /
+                ("stillcoat-" + std::to_string(::getpid()))) {
         std::filesystem::create_directories(path_);
     }
     ~Folder() { std::filesystem::remove_all(path_); }
@@ -84,8 +89,10 @@ TEST(File, ThatCannotBeUsedIsRefused) {
     std::ofstream(folder / "big.toml") << std::string(largest_file_bytes + 1, '#');
     EXPECT_EQ(message_of([&] { read_text_file(folder / "big.toml"); }),
               (folder / "big.toml") +
-                  ": 8000001 bytes; files above 8000000 bytes are refused\n       use `repeat` for periodic stacks");
-    EXPECT_NE(message_of([&] { read_text_file("/dev/zero"); }).find("files above"), std::string::npos);
+                  ": 8000001 bytes; files above 8000000 bytes are refused\n       use `repeat` for "
+                  "periodic stacks");
+    EXPECT_NE(message_of([&] { read_text_file("/dev/zero"); }).find("files above"),
+              std::string::npos);
     // Reading this file fails for every user, also for root, whom no permission stops.
     EXPECT_EQ(message_of([&] { read_text_file("/proc/self/mem"); }),
               "/proc/self/mem: cannot be read\n       check its permissions");
@@ -93,7 +100,8 @@ TEST(File, ThatCannotBeUsedIsRefused) {
 
 TEST(Reader, ReportsEveryProblemOfATable) {
     const Document document = parse_document(
-        "[beam]\nradius = 3\nradios = \"4 mm\"\n[light]\nwavelength = \"5 K\"\nangle = nan\n", "d.toml");
+        "[beam]\nradius = 3\nradios = \"4 mm\"\n[light]\nwavelength = \"5 K\"\nangle = nan\n",
+        "d.toml");
     Problems problems;
     TableReader beam(*document.root.find("beam"), "[beam]", problems);
     beam.quantity("radius", kind::length, positive("m"));
@@ -104,13 +112,16 @@ TEST(Reader, ReportsEveryProblemOfATable) {
     light.required_text("medium");
     light.finish();
     const std::string message = message_of([&] { problems.throw_if_any(); });
-    EXPECT_NE(message.find("d.toml:2:10: radius in [beam] needs a length with a unit, here it is a bare number\n"
-                           "     2 | radius = 3\n"
-                           "       |          ^\n"
-                           "       for example radius = \"1397 nm\""),
-              std::string::npos)
+    EXPECT_NE(
+        message.find(
+            "d.toml:2:10: radius in [beam] needs a length with a unit, here it is a bare number\n"
+            "     2 | radius = 3\n"
+            "       |          ^\n"
+            "       for example radius = \"1397 nm\""),
+        std::string::npos)
         << message;
-    EXPECT_NE(message.find("d.toml:3:1: unknown key radios in [beam]"), std::string::npos) << message;
+    EXPECT_NE(message.find("d.toml:3:1: unknown key radios in [beam]"), std::string::npos)
+        << message;
     EXPECT_NE(message.find("did you mean radius?"), std::string::npos);
     EXPECT_NE(message.find("\"K\" is not a unit of length"), std::string::npos);
     EXPECT_NE(message.find("angle in [light] is nan"), std::string::npos);

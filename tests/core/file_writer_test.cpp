@@ -28,7 +28,8 @@ class FileWriter : public ::testing::Test {
         return static_cast<std::size_t>(
             std::distance(fs::directory_iterator(folder_), fs::directory_iterator()));
     }
-    fs::path folder_ = fs::temp_directory_path() / ("stillcoat-writer-" + std::to_string(::getpid()));
+    fs::path folder_ =
+        fs::temp_directory_path() / ("stillcoat-writer-" + std::to_string(::getpid()));
 };
 
 TEST_F(FileWriter, KeepsAnExistingFileUnlessToldOtherwise) {

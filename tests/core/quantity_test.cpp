@@ -51,7 +51,8 @@ TEST(Quantity, WithAWrongKindOfUnitIsRefused) {
 TEST(Quantity, ThatIsNoFiniteNumberIsRefused) {
     expect_refused("nan nm", kind::length, "length is not a finite number");
     expect_refused("inf nm", kind::length, "length is not a finite number");
-    expect_refused("1e400 nm", kind::length, "the number in \"1e400 nm\" is beyond what can be held");
+    expect_refused("1e400 nm", kind::length,
+                   "the number in \"1e400 nm\" is beyond what can be held");
     expect_refused("1e308 km", kind::length, "length is not a finite number");
     expect_refused("nan", kind::number, "\"nan\" has no unit");
 }

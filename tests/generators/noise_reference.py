@@ -294,7 +294,7 @@ def document():
             "tests/generators/noise_reference.py. SI units; one-sided spectra; beam radius at "
             "1/e^2 of intensity; layers from the light side, thin against the beam; index slope of "
             "a layer at zero stress (clamped_index_slope_per_K multiplies the index weight; it "
-            "takes the real part of the index, the strain weight the complex index). The accuracy of "
+            "takes the real part of the index, the strain weight the complex one). Accuracy of "
             "readout_integrals is relative to the thickness of the layer.",
         "layer_columns": cases.LAYER_COLUMNS,
         "boltzmann_constant_J_per_K": BOLTZMANN,

@@ -63,7 +63,8 @@ TEST(ThickCoatingFactor, TendsToOneForThinFilmsAndStaysFiniteForThickOnes) {
             }
         }
     }
-    // ξ → ∞: expansion is diluted over the film, refraction at the face feels the film alone, p_R²/R.
+    // ξ → ∞: expansion is diluted over the film, refraction at the face feels the film alone,
+    // p_R²/R.
     EXPECT_NEAR(thick_coating_factor(1e6, 2.5, 0.0), 1.0 / 2.5, 1e-12);
     EXPECT_LT(thick_coating_factor(1e6, 2.5, 1.0), 1e-5);
     EXPECT_TRUE(std::isfinite(thick_coating_factor(1e30, 2.5, 0.4)));

@@ -76,78 +76,106 @@ inline Grid chebyshev_grid(int n) {
     return grid;
 }
 
-/// The matrix ∫q_a ϑ_b dz for a = e, r, s and b = e, r, s, from three solved right-hand sides.
-/// The constant real part of ss, which is no noise, is left out.
-inline std::vector<std::vector<Number>> products(const Mirror& mirror, double k, double omega,
-                                                 int n = 32) {
-    const Grid grid = chebyshev_grid(n);
-    const std::size_t count = mirror.layers.size(), m = n + 1, size = count * m;
-    const Real kappa_s = mirror.substrate.conductivity, c_s = mirror.substrate.heat_capacity;
-    const Number i(0, 1);
-    const Number gamma = sqrt(Number(Real(k) * k, Real(omega * c_s / kappa_s)));
-    const Real q0 =
-        2 * (1 + Real(mirror.substrate.elastic.poisson_ratio)) * mirror.substrate.expansion;
-    const Number still = q0 / (i * Real(omega) * c_s);  // substrate without conduction, at its top
-    Matrix a(size, std::vector<Number>(size, 0)), b(size, std::vector<Number>(3, 0));
-    const auto source = [&](std::size_t layer, int j, int which) -> Real {
-        const ThermalLayer& l = mirror.layers[layer];
-        const Real nu = l.material.elastic.poisson_ratio, alpha = l.material.expansion;
-        const Real nu_s = mirror.substrate.elastic.poisson_ratio;
-        const Real lambda = lame_lambda(l.material.elastic),
-                   modulus = p_wave_modulus(l.material.elastic);
-        const Real eta = (1 + nu_s) * (1 - 2 * nu_s) / mirror.substrate.elastic.youngs_modulus;
-        const Real stress = alpha * l.material.elastic.youngs_modulus / (1 - 2 * nu);
-        const double z = double(grid.point[j] * l.readout.thickness);
-        const Real flat = stress * (eta + (1 - lambda * eta) / modulus);
-        if (which == 0) return flat;
-        const Real g = optics::strain_weight(l.readout, z), h = optics::index_weight(l.readout, z);
-        return stress * (eta + (g - lambda * eta) / modulus) - flat + h * l.index_slope;
-    };
-    for (std::size_t l = 0; l < count; ++l) {
-        const ThermalMaterial& material = mirror.layers[l].material;
-        const Real h = mirror.layers[l].readout.thickness, kappa = material.conductivity;
-        const std::size_t top = l * m, last = top + n;
-        // Scaled by h²/κ so that all rows are of one size.
-        const Number reaction =
-            h * h * Number(Real(k) * k, Real(omega * material.heat_capacity / kappa));
-        for (int row = 1; row < n; ++row) {
-            for (int col = 0; col <= n; ++col) {
-                Real second = 0;
-                for (int j = 0; j <= n; ++j) second += grid.slope[row][j] * grid.slope[j][col];
-                a[top + row][top + col] = -second;
-            }
-            a[top + row][top + row] += reaction;
-            for (int w = 0; w < 2; ++w) b[top + row][w] = h * h / kappa * source(l, row, w);
+/// Source of a layer at a depth: 0 expansion with g = 1, 1 what refraction adds to it.
+inline Real source(const Mirror& mirror, std::size_t layer, Real depth, int which) {
+    const ThermalLayer& l = mirror.layers[layer];
+    const Elastic& film = l.material.elastic;
+    const Elastic& base = mirror.substrate.elastic;
+    const Real nu = film.poisson_ratio, nu_s = base.poisson_ratio;
+    const Real lambda = lame_lambda(film), modulus = p_wave_modulus(film);
+    const Real eta = (1 + nu_s) * (1 - 2 * nu_s) / base.youngs_modulus;
+    const Real stress = Real(l.material.expansion) * film.youngs_modulus / (1 - 2 * nu);
+    const Real flat = stress * (eta + (1 - lambda * eta) / modulus);
+    if (which == 0) return flat;
+    const double z = double(depth);
+    const Real g = optics::strain_weight(l.readout, z), h = optics::index_weight(l.readout, z);
+    return stress * (eta + (g - lambda * eta) / modulus) - flat + h * l.index_slope;
+}
+
+/// The system of one mirror at one wavenumber and frequency: values at the points of all layers.
+struct System {
+    Grid grid;
+    Matrix a, b;
+    Number gamma;  // of the substrate
+    Number still;  // ϑ of the substrate's source without conduction, at its top
+    Real q0;       // the substrate's source at its top
+};
+
+/// Equations inside a layer, scaled by h²/κ so that all rows are of one size.
+inline void add_layer(const Mirror& mirror, std::size_t l, Real k, Real omega, System& s) {
+    const int n = int(s.grid.point.size()) - 1;
+    const ThermalMaterial& material = mirror.layers[l].material;
+    const Real h = mirror.layers[l].readout.thickness, kappa = material.conductivity;
+    const std::size_t top = l * (n + 1);
+    const Number reaction = h * h * Number(k * k, Real(omega * material.heat_capacity / kappa));
+    for (int row = 1; row < n; ++row) {
+        for (int col = 0; col <= n; ++col) {
+            Real second = 0;
+            for (int j = 0; j <= n; ++j) second += s.grid.slope[row][j] * s.grid.slope[j][col];
+            s.a[top + row][top + col] = -second;
         }
-        for (int col = 0; col <= n; ++col) a[top][top + col] = grid.slope[0][col];
-        for (int col = 0; col <= n; ++col) a[last][top + col] = grid.slope[n][col];
-        if (l > 0) {  // first row: flux continuous with the layer above
-            const Real above = mirror.layers[l - 1].material.conductivity * h /
-                               (kappa * Real(mirror.layers[l - 1].readout.thickness));
-            for (int col = 0; col <= n; ++col) a[top][top - m + col] = -above * grid.slope[n][col];
-        }
-        if (l + 1 < count) {  // last row: temperature continuous with the layer below
-            for (int col = 0; col <= n; ++col) a[last][top + col] = 0;
-            a[last][last] = 1;
-            a[last][last + 1] = -1;
-        } else {  // −κϑ' = κ_sγϑ + κ_s(k − γ)·still
-            a[last][last] += h / kappa * kappa_s * gamma;
-            b[last][2] = -h / kappa * kappa_s * (Real(k) - gamma) * still;
+        s.a[top + row][top + row] += reaction;
+        for (int w = 0; w < 2; ++w) {
+            s.b[top + row][w] = h * h / kappa * source(mirror, l, s.grid.point[row] * h, w);
         }
     }
-    const Matrix x = solve(a, b, m);
+}
+
+/// First row of a layer: its flux is that of the layer above, none at the face. Last row: its
+/// temperature is that of the layer below; at the substrate −κϑ' = κ_sγϑ + κ_s(k − γ)·still.
+inline void add_interfaces(const Mirror& mirror, std::size_t l, Real k, System& s) {
+    const int n = int(s.grid.point.size()) - 1;
+    const std::size_t m = n + 1, top = l * m, last = top + n;
+    const Real h = mirror.layers[l].readout.thickness;
+    const Real kappa = mirror.layers[l].material.conductivity;
+    for (int col = 0; col <= n; ++col) s.a[top][top + col] = s.grid.slope[0][col];
+    if (l > 0) {
+        const Real above = mirror.layers[l - 1].material.conductivity * h /
+                           (kappa * Real(mirror.layers[l - 1].readout.thickness));
+        for (int col = 0; col <= n; ++col) s.a[top][top - m + col] = -above * s.grid.slope[n][col];
+    }
+    if (l + 1 < mirror.layers.size()) {
+        s.a[last][last] = 1;
+        s.a[last][last + 1] = -1;
+        return;
+    }
+    const Real ratio = h / kappa * mirror.substrate.conductivity;
+    for (int col = 0; col <= n; ++col) s.a[last][top + col] = s.grid.slope[n][col];
+    s.a[last][last] += ratio * s.gamma;
+    s.b[last][2] = -ratio * (k - s.gamma) * s.still;
+}
+
+/// The matrix ∫q_a ϑ_b dz for a = e, r, s and b = e, r, s, from three solved right-hand sides.
+/// The constant real part of ss, which is no noise, is left out.
+inline std::vector<std::vector<Number>> products(const Mirror& mirror, Real k, Real omega, int n) {
+    const ThermalMaterial& base = mirror.substrate;
+    const std::size_t m = n + 1, size = mirror.layers.size() * m;
+    System s{chebyshev_grid(n),
+             Matrix(size, std::vector<Number>(size, 0)),
+             Matrix(size, std::vector<Number>(3, 0)),
+             0,
+             0,
+             0};
+    s.gamma = sqrt(Number(k * k, Real(omega * base.heat_capacity / base.conductivity)));
+    s.q0 = 2 * (1 + Real(base.elastic.poisson_ratio)) * base.expansion;
+    s.still = s.q0 / Number(0, Real(omega * base.heat_capacity));
+    for (std::size_t l = 0; l < mirror.layers.size(); ++l) {
+        add_layer(mirror, l, k, omega, s);
+        add_interfaces(mirror, l, k, s);
+    }
+    const Matrix x = solve(s.a, s.b, m);
     std::vector<std::vector<Number>> result(3, std::vector<Number>(3, 0));
     for (int w = 0; w < 3; ++w) {
-        for (std::size_t l = 0; l < count; ++l) {
-            for (int j = 0; j <= n; ++j) {
-                const Real weight = grid.weight[j] * mirror.layers[l].readout.thickness;
-                for (int v = 0; v < 2; ++v)
-                    result[v][w] += weight * source(l, j, v) * x[l * m + j][w];
+        for (std::size_t row = 0; row < size; ++row) {
+            const std::size_t l = row / m, j = row % m;
+            const Real h = mirror.layers[l].readout.thickness;
+            for (int v = 0; v < 2; ++v) {
+                result[v][w] +=
+                    s.grid.weight[j] * h * source(mirror, l, s.grid.point[j] * h, v) * x[row][w];
             }
         }
-        const Number base = x[size - 1][w];
-        const Number deviation = w == 2 ? base - still : base;
-        result[2][w] = q0 * deviation / (Real(k) + gamma);
+        const Number deviation = w == 2 ? x[size - 1][w] - s.still : x[size - 1][w];
+        result[2][w] = s.q0 * deviation / (k + s.gamma);
     }
     return result;
 }

@@ -19,10 +19,10 @@ SourceProducts products(const Mirror& mirror, double k, double omega) {
     return source_products(layered_heat(mirror.substrate, mirror.layers), k, omega);
 }
 
-SourceProducts integrated(const Mirror& mirror, double w, double frequency, int refinement) {
+SourceProducts integrated(const Mirror& mirror, double w, double frequency, int subdivision) {
     const LayeredHeat stack = layered_heat(mirror.substrate, mirror.layers);
     const double omega = 2.0 * core::pi * frequency;
-    const WavenumberRule rule = wavenumber_rule(w, diffusion_wavenumber(stack, omega), refinement);
+    const WavenumberRule rule = wavenumber_rule(w, diffusion_wavenumber(stack, omega), subdivision);
     SourceProducts sum;
     for (std::size_t i = 0; i < rule.weight.size(); ++i) {
         const SourceProducts p = source_products(stack, rule.wavenumber[i], omega);

@@ -15,7 +15,8 @@ Jet<double> variable(double x) { return {x, 1.0, 0.0}; }
 TEST(CubicSpline, PassesThroughItsPoints) {
     const std::vector<double> x{0.0, 0.3, 1.0, 1.1, 4.0}, y{1.0, -2.0, 0.5, 0.6, 7.0};
     const CubicSpline spline(x, y);
-    for (std::size_t i = 0; i < x.size(); ++i) EXPECT_NEAR(spline(variable(x[i])).value, y[i], 1e-14);
+    for (std::size_t i = 0; i < x.size(); ++i)
+        EXPECT_NEAR(spline(variable(x[i])).value, y[i], 1e-14);
 }
 
 TEST(CubicSpline, IsExactForAStraightLine) {
@@ -30,7 +31,8 @@ TEST(CubicSpline, HasContinuousSlopeAndCurvature) {
     const std::vector<double> x{0.0, 0.3, 1.0, 1.1, 4.0};
     const CubicSpline spline(x, {1.0, -2.0, 0.5, 0.6, 7.0});
     for (std::size_t i = 1; i + 1 < x.size(); ++i) {
-        const Jet<double> left = spline(variable(x[i] - 1e-9)), right = spline(variable(x[i] + 1e-9));
+        const Jet<double> left = spline(variable(x[i] - 1e-9)),
+                          right = spline(variable(x[i] + 1e-9));
         EXPECT_NEAR(left.first, right.first, 1e-6);
         EXPECT_NEAR(left.second, right.second, 1e-5);
     }

@@ -36,11 +36,14 @@ TEST(Design, BandIsEvenInLogarithmAndHoldsItsEnds) {
     EXPECT_EQ(list.back(), 1000.0);
     EXPECT_EQ(list[20], 0.1);
     EXPECT_EQ(list[40], 1.0);
-    for (std::size_t i = 1; i < list.size(); ++i) EXPECT_NEAR(list[i] / list[i - 1], std::pow(10.0, 0.05), 1e-10);
+    for (std::size_t i = 1; i < list.size(); ++i)
+        EXPECT_NEAR(list[i] / list[i - 1], std::pow(10.0, 0.05), 1e-10);
 }
 
 TEST(Design, KeepsTheDefaultSpotsInsideItsBand) {
-    const auto design = test::read_design(mirror_text(quarter_wave_pairs, "[band]\nfrom = \"5 Hz\"\nto = \"500 Hz\"\n")).design;
+    const auto design = test::read_design(mirror_text(quarter_wave_pairs,
+                                                      "[band]\nfrom = \"5 Hz\"\nto = \"500 Hz\"\n"))
+                            .design;
     EXPECT_EQ(design.band.spot, (std::vector<double>{10.0, 100.0}));
 }
 
@@ -61,40 +64,53 @@ TEST(Design, ValuesReplaceThoseOfTheLibraryAndTheTwoFormsOfLossExcludeEachOther)
     EXPECT_EQ(at(materials::PropertyId::youngs_modulus).width.value, 4e9);
     EXPECT_EQ(both.design.overridden, (std::vector<std::string>{"tantala-ibs"}));
     // The library itself is untouched.
-    EXPECT_EQ(test::project_library().at("tantala-ibs").properties.count(materials::PropertyId::loss_angle), 1u);
+    EXPECT_EQ(test::project_library()
+                  .at("tantala-ibs")
+                  .properties.count(materials::PropertyId::loss_angle),
+              1u);
 }
 
 TEST(Design, MayChooseANamedAlternative) {
-    const auto chosen = test::read_design(mirror_text(
-        quarter_wave_pairs, "[material.tantala-ibs]\nloss_angle = { alternative = \"cavity-stack\" }\n"));
-    EXPECT_DOUBLE_EQ(*materials::evaluate(chosen.library, "tantala-ibs", materials::PropertyId::loss_angle,
-                                          {295.0, 1064e-9, 100.0}).number,
-                     4e-4);
+    const auto chosen = test::read_design(
+        mirror_text(quarter_wave_pairs,
+                    "[material.tantala-ibs]\nloss_angle = { alternative = \"cavity-stack\" }\n"));
+    EXPECT_DOUBLE_EQ(
+        *materials::evaluate(chosen.library, "tantala-ibs", materials::PropertyId::loss_angle,
+                             {295.0, 1064e-9, 100.0})
+             .number,
+        4e-4);
 }
 
 TEST(Mirror, QuarterWavesAreCountedAtTheDesignWavelengthWithTheIndexThere) {
-    const auto read = test::read_design(mirror_text(
-        "[coating]\ndesign_wavelength = \"1200 nm\"\n" + quarter_wave_pairs));
+    const auto read = test::read_design(
+        mirror_text("[coating]\ndesign_wavelength = \"1200 nm\"\n" + quarter_wave_pairs));
     stack::Ledger ledger;
     const stack::Mirror mirror = stack::at_operating_point(read.design, read.library, ledger);
     const double n = materials::index_at(read.library, "tantala-ibs", 1200e-9, 295.0).index->value;
     EXPECT_NEAR(mirror.layers[0].thickness, 1200e-9 / (4.0 * n), 1e-18);
-    const double here = materials::index_at(read.library, "tantala-ibs", 1064e-9, 295.0).index->value;
-    EXPECT_NEAR(mirror.layers[0].quarter_waves, 4.0 * here * mirror.layers[0].thickness / 1064e-9, 1e-12);
+    const double here =
+        materials::index_at(read.library, "tantala-ibs", 1064e-9, 295.0).index->value;
+    EXPECT_NEAR(mirror.layers[0].quarter_waves, 4.0 * here * mirror.layers[0].thickness / 1064e-9,
+                1e-12);
     EXPECT_EQ(mirror.optical_path_ratio, 1.0);
 }
 
 TEST(Mirror, ClampedFilmShrinksOnCoolingAsPlaneStressSays) {
-    const auto read = test::read_design(mirror_text(quarter_wave_pairs, "", "wavelength = \"1550 nm\"", "silicon", "124 K"));
+    const auto read = test::read_design(
+        mirror_text(quarter_wave_pairs, "", "wavelength = \"1550 nm\"", "silicon", "124 K"));
     stack::Ledger ledger;
     const stack::Mirror mirror = stack::at_operating_point(read.design, read.library, ledger);
-    const double film = *materials::expansion_between(read.library, "tantala-ibs", 295.0, 124.0).number;
+    const double film =
+        *materials::expansion_between(read.library, "tantala-ibs", 295.0, 124.0).number;
     const double base = *materials::expansion_between(read.library, "silicon", 295.0, 124.0).number;
-    const double nu = *materials::evaluate(read.library, "tantala-ibs", materials::PropertyId::poisson_ratio,
-                                           {124.0, 1550e-9, 1.0}).number;
+    const double nu =
+        *materials::evaluate(read.library, "tantala-ibs", materials::PropertyId::poisson_ratio,
+                             {124.0, 1550e-9, 1.0})
+             .number;
     const double strain = ((1.0 + nu) * film - 2.0 * nu * base) / (1.0 - nu);
     EXPECT_LT(strain, 0.0);
-    EXPECT_NEAR(mirror.layers[0].thickness / mirror.layers[0].reference_thickness - 1.0, strain, 1e-15);
+    EXPECT_NEAR(mirror.layers[0].thickness / mirror.layers[0].reference_thickness - 1.0, strain,
+                1e-15);
     EXPECT_LT(mirror.optical_path_ratio, 1.0);
     EXPECT_FALSE(ledger.analogies().empty());
 }

@@ -35,8 +35,9 @@ inline std::string mirror_text(const std::string& coating, const std::string& re
                                const std::string& light = "wavelength = \"1064 nm\"",
                                const std::string& substrate = "fused-silica",
                                const std::string& temperature = "295 K") {
-    return "[light]\n" + light + "\n[beam]\nradius = \"6 cm\"\n[mirror]\nsubstrate = \"" + substrate +
-           "\"\n[environment]\ntemperature = \"" + temperature + "\"\n" + coating + "\n" + rest;
+    return "[light]\n" + light + "\n[beam]\nradius = \"6 cm\"\n[mirror]\nsubstrate = \"" +
+           substrate + "\"\n[environment]\ntemperature = \"" + temperature + "\"\n" + coating +
+           "\n" + rest;
 }
 
 inline const std::string quarter_wave_pairs =

@@ -27,8 +27,8 @@ struct FaceOptics {
 
 /// The field through the stack, for tables and figures.
 struct FieldSample {
-    double depth;      ///< below the face [m]
-    std::size_t layer; ///< from 0; the number of layers: the substrate
+    double depth;       ///< below the face [m]
+    std::size_t layer;  ///< from 0; the number of layers: the substrate
     double index;
     double intensity;  ///< |E|² over the incident one
 };
@@ -57,10 +57,10 @@ struct Dominance {
 
 struct Noise {
     bool computed = false;
-    std::string missing;  ///< why there is no noise at all (oblique incidence)
+    std::string missing;                    ///< why there is no noise at all (oblique incidence)
     std::vector<double> frequencies, spot;  ///< [Hz]
-    std::vector<NoiseTerm> terms;           ///< what the total is made of, largest share first in time
-    std::vector<NoiseTerm> comparisons;     ///< parts, named models, light crossing the substrate
+    std::vector<NoiseTerm> terms;        ///< what the total is made of, largest share first in time
+    std::vector<NoiseTerm> comparisons;  ///< parts, named models, light crossing the substrate
     std::vector<double> total, spot_total;  ///< sum of the terms computed [m²/Hz]
     bool complete = false;                  ///< every term of the total was computed
     double layer_frequency = 0.0;           ///< [Hz]
@@ -70,8 +70,8 @@ struct Noise {
 
 struct Appraisal {
     stack::Mirror mirror;
-    std::vector<FaceOptics> faces;  ///< one, or s and p for unpolarised light
-    std::vector<FieldSample> field; ///< of the first face
+    std::vector<FaceOptics> faces;   ///< one, or s and p for unpolarised light
+    std::vector<FieldSample> field;  ///< of the first face
     Noise noise;
     std::vector<std::string> warnings;   ///< what the designer should act on
     std::vector<std::string> notes;      ///< what was left out or assumed

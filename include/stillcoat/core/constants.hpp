@@ -6,8 +6,8 @@
 namespace stillcoat::core {
 
 inline constexpr double pi = std::numbers::pi;
-inline constexpr double boltzmann_constant = 1.380649e-23;    ///< k_B [J/K], exact
-inline constexpr double speed_of_light = 299792458.0;         ///< c [m/s], exact
-inline constexpr double planck_constant = 6.62607015e-34;     ///< h [J s], exact
+inline constexpr double boltzmann_constant = 1.380649e-23;  ///< k_B [J/K], exact
+inline constexpr double speed_of_light = 299792458.0;       ///< c [m/s], exact
+inline constexpr double planck_constant = 6.62607015e-34;   ///< h [J s], exact
 
 }  // namespace stillcoat::core

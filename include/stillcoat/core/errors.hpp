@@ -16,9 +16,9 @@ namespace stillcoat::core {
 /// A stretch of text in a file: what an error message underlines.
 struct Place {
     std::string file;
-    int line = 0;    ///< from 1; 0: the file as a whole
-    int column = 0;  ///< from 1
-    int length = 1;  ///< characters to underline
+    int line = 0;      ///< from 1; 0: the file as a whole
+    int column = 0;    ///< from 1
+    int length = 1;    ///< characters to underline
     std::string text;  ///< the whole line
 };
 

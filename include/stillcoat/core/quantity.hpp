@@ -1,9 +1,9 @@
 #pragma once
 /// Quantities as people write them: a number and a unit, "1397 nm", "0.42 mm", "5 ppm".
 ///
-/// Units are those of the UDUNITS-2 library (Unidata), which knows the SI with its prefixes, products,
-/// quotients and powers; "dB" (ten times the decimal logarithm of a power ratio) is added here.
-/// A quantity is read into SI.
+/// Units are those of the UDUNITS-2 library (Unidata), which knows the SI with its prefixes,
+/// products, quotients and powers; "dB" (ten times the decimal logarithm of a power ratio) is added
+/// here. A quantity is read into SI.
 
 #include <string>
 #include <vector>

@@ -1,7 +1,7 @@
 #pragma once
-/// Reads one table of a document strictly: every key is asked for by name, every quantity carries its
-/// unit, whatever is left over is an unknown key. Problems are collected, never thrown, so that a
-/// file is reported whole; after a problem a value is absent.
+/// Reads one table of a document strictly: every key is asked for by name, every quantity carries
+/// its unit, whatever is left over is an unknown key. Problems are collected, never thrown, so that
+/// a file is reported whole; after a problem a value is absent.
 
 #include <optional>
 #include <string>
@@ -41,14 +41,16 @@ class TableReader {
     const Node* find(const std::string& key);
     std::optional<double> quantity(const std::string& key, const QuantityKind& kind,
                                    const Limits& limits);
-    double required_quantity(const std::string& key, const QuantityKind& kind, const Limits& limits);
+    double required_quantity(const std::string& key, const QuantityKind& kind,
+                             const Limits& limits);
     /// A pure number: bare, or a text with ppm, % or dB.
     std::optional<double> number(const std::string& key, const Limits& limits);
     std::optional<int> whole_number(const std::string& key, int lower, int upper);
     std::optional<std::string> text(const std::string& key);
     std::string required_text(const std::string& key);
     /// One of a few words; the nearest spelling is offered for anything else.
-    std::optional<std::string> choice(const std::string& key, const std::vector<std::string>& allowed);
+    std::optional<std::string> choice(const std::string& key,
+                                      const std::vector<std::string>& allowed);
     /// A list of bare finite numbers.
     std::optional<std::vector<double>> numbers(const std::string& key);
     std::optional<std::vector<std::string>> texts(const std::string& key);
@@ -60,7 +62,8 @@ class TableReader {
     std::vector<const Node*> tables(const std::string& key);
 
     void missing(const std::string& key, const std::string& example);
-    void problem_at(const std::string& key, const std::string& message, const std::string& hint = "");
+    void problem_at(const std::string& key, const std::string& message,
+                    const std::string& hint = "");
     /// Two keys that must not stand together.
     void contradiction(const std::string& key, const std::string& other, const std::string& why);
     /// Reports every key that was not asked for.

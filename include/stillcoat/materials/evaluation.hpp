@@ -1,8 +1,8 @@
 #pragma once
 /// Values of properties under stated conditions, or the reason why there is none.
 ///
-/// Nothing is extrapolated silently: outside an entry's range only its explicit rule is used, and the
-/// result says so.
+/// Nothing is extrapolated silently: outside an entry's range only its explicit rule is used, and
+/// the result says so.
 
 #include <optional>
 #include <string>
@@ -21,11 +21,12 @@ struct Conditions {
 /// A value in SI with how it came about.
 struct Value {
     std::optional<double> number;
-    std::string missing;             ///< reason when there is no number
-    const Entry* entry = nullptr;    ///< the datum that was used
-    std::string analogy;             ///< how the rule beyond the data gave it; empty within the range
+    std::string missing;           ///< reason when there is no number
+    const Entry* entry = nullptr;  ///< the datum that was used
+    std::string analogy;           ///< how the rule beyond the data gave it; empty within the range
     Width width;
-    bool frequency_extrapolated = false;  ///< a loss law used outside the frequencies of its measurement
+    bool frequency_extrapolated =
+        false;  ///< a loss law used outside the frequencies of its measurement
 
     bool known() const { return number.has_value(); }
 };
@@ -48,8 +49,10 @@ struct IndexValue {
 IndexValue index_at(const Library& library, const std::string& material, double wavelength,
                     double temperature);
 
-/// Linear expansion from one temperature to another, ∫α dT; the reason when α is unknown on the way.
-Value expansion_between(const Library& library, const std::string& material, double from, double to);
+/// Linear expansion from one temperature to another, ∫α dT; the reason when α is unknown on the
+/// way.
+Value expansion_between(const Library& library, const std::string& material, double from,
+                        double to);
 
 /// Heat capacity of a Debye solid relative to its high-temperature limit, at T/θ.
 /// P. Debye, Ann. Phys. (Leipzig) 344, 789 (1912).

@@ -1,6 +1,6 @@
 #pragma once
-/// The materials known to a run: those of the installed folder, of the user's folder, and what a design
-/// file replaces.
+/// The materials known to a run: those of the installed folder, of the user's folder, and what a
+/// design file replaces.
 
 #include <map>
 #include <optional>
@@ -31,8 +31,8 @@ struct Library {
     std::vector<std::string> names() const;
 };
 
-/// Reads the materials and references of a folder into `library`, replacing materials of the same name.
-/// All problems of all files are added to `problems`.
+/// Reads the materials and references of a folder into `library`, replacing materials of the same
+/// name. All problems of all files are added to `problems`.
 void add_folder(Library& library, const std::string& folder, core::Problems& problems);
 
 /// Reads the references.toml of a folder, when it has one.

@@ -1,6 +1,6 @@
 #pragma once
-/// One property of one substance as its file states it: the datum, how wide it is, where it comes from,
-/// where it holds, and what may be done outside that range.
+/// One property of one substance as its file states it: the datum, how wide it is, where it comes
+/// from, where it holds, and what may be done outside that range.
 
 #include <array>
 #include <optional>
@@ -108,8 +108,8 @@ struct Beyond {
     std::string place, note;
 };
 
-/// Loss below room temperature: used as printed below `join.lower`, interpolated in log–log to the room
-/// temperature entry at `join.upper`.
+/// Loss below room temperature: used as printed below `join.lower`, interpolated in log–log to the
+/// room temperature entry at `join.upper`.
 struct ColdTable {
     TemperatureTable table;
     Interval join;
@@ -123,9 +123,10 @@ enum class Medium { vacuum, air, unstated };
 
 struct Entry {
     Curve curve;
-    double offset = 0.0;               ///< added to an index formula
-    Medium medium = Medium::vacuum;    ///< refractive index: relative to what
-    std::optional<std::pair<double, double>> rescaled_to;  ///< wavelength [m], value: factor on the whole curve
+    double offset = 0.0;             ///< added to an index formula
+    Medium medium = Medium::vacuum;  ///< refractive index: relative to what
+    std::optional<std::pair<double, double>>
+        rescaled_to;                       ///< wavelength [m], value: factor on the whole curve
     std::optional<double> at_temperature;  ///< [K]
     Width width;
     std::vector<WidthSpan> width_spans;

@@ -13,16 +13,18 @@ namespace stillcoat::noise {
 
 /// How the optical thickness of a layer is taken to grow with temperature.
 enum class LayerStrain {
-    own_thickness,    ///< α(1+ν)/(1−ν), the strain of the layer itself: what changes its optical thickness
-    with_substrate,   ///< the effective expansion including the bending of the substrate, as in the article
+    own_thickness,  ///< α(1+ν)/(1−ν), the strain of the layer itself: what changes its optical
+                    ///< thickness
+    with_substrate,  ///< the effective expansion including the bending of the substrate, as in the
+                     ///< article
 };
 
 struct ClassicThermoOptic {
-    double temperature_psd;          ///< S_ΔT [K²/Hz], beam-averaged face temperature of the substrate
-    double thermo_elastic_length;    ///< ᾱ_c d − ᾱ_s d C_c/C_s [m/K]
-    double thermo_refractive_length; ///< β̄λ [m/K]
-    double thickness_factor;         ///< Γ, dimensionless; infinite where the lengths cancel exactly
-    double psd;                      ///< S [m²/Hz]
+    double temperature_psd;  ///< S_ΔT [K²/Hz], beam-averaged face temperature of the substrate
+    double thermo_elastic_length;     ///< ᾱ_c d − ᾱ_s d C_c/C_s [m/K]
+    double thermo_refractive_length;  ///< β̄λ [m/K]
+    double thickness_factor;  ///< Γ, dimensionless; infinite where the lengths cancel exactly
+    double psd;               ///< S [m²/Hz]
 };
 
 ClassicThermoOptic classic_thermo_optic(const ThermalMaterial& substrate,
@@ -31,19 +33,22 @@ ClassicThermoOptic classic_thermo_optic(const ThermalMaterial& substrate,
 
 /// Beam-averaged temperature noise of a half-space's face [K²/Hz]: all frequencies,
 /// S = (2k_BT²/(πκ)) Re∫k e^{−k²w²/4}/√(k²+iωC/κ) dk; one-dimensional limit (diffusion length short
-/// against the beam), V. B. Braginsky, M. L. Gorodetsky, S. P. Vyatchanin, Phys. Lett. A 271, 303 (2000).
+/// against the beam), V. B. Braginsky, M. L. Gorodetsky, S. P. Vyatchanin, Phys. Lett. A 271, 303
+/// (2000).
 double face_temperature_psd(double conductivity, double heat_capacity, double beam_radius,
                             double temperature, double frequency);
 double face_temperature_psd_one_dimensional(double conductivity, double heat_capacity,
-                                            double beam_radius, double temperature, double frequency);
+                                            double beam_radius, double temperature,
+                                            double frequency);
 
 /// Γ of the article's thick-coating correction, →1 for ξ → 0.
-/// @param xi d√(2ωC_c/κ_c), @param ratio √(κ_cC_c/(κ_sC_s)), @param elastic_share p_E, refractive share 1−p_E
+/// @param xi d√(2ωC_c/κ_c), @param ratio √(κ_cC_c/(κ_sC_s)), @param elastic_share p_E, refractive
+/// share 1−p_E
 double thick_coating_factor(double xi, double ratio, double elastic_share);
 
 /// Effective dn/dT of a quarter-wave stack, dn/dT part only, vacuum outside [1/K], δx = λ β̄ δT:
-/// V. B. Braginsky et al. (2000) for the low index outermost; M. L. Gorodetsky, Phys. Lett. A 372, 6813
-/// (2008) for both orders.
+/// V. B. Braginsky et al. (2000) for the low index outermost; M. L. Gorodetsky, Phys. Lett. A 372,
+/// 6813 (2008) for both orders.
 double quarter_wave_index_slope(double high_index, double low_index, double high_slope,
                                 double low_slope, bool high_index_outermost);
 

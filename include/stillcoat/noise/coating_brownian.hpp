@@ -5,13 +5,13 @@
 /// imposes its in-plane strain; the energy lost per cycle in bulk and in shear is the noise
 /// (Y. Levin, Phys. Rev. D 57, 659 (1998)):
 ///     S = (8 k_B T/ω) Σ_j (φ_bulk U_bulk + φ_shear U_shear)/F0².
-/// With φ_bulk = φ_shear and g = 1 this is the per-layer form of G. M. Harry et al., Class. Quantum Grav.
-/// 19, 897 (2002) with φ∥ = φ⊥; with equal elastic constants it is N. Nakagawa et al., Phys. Rev. D 65,
-/// 102001 (2002); with g(z) it is T. Hong et al., Phys. Rev. D 87, 082001 (2013).
+/// With φ_bulk = φ_shear and g = 1 this is the per-layer form of G. M. Harry et al., Class. Quantum
+/// Grav. 19, 897 (2002) with φ∥ = φ⊥; with equal elastic constants it is N. Nakagawa et al., Phys.
+/// Rev. D 65, 102001 (2002); with g(z) it is T. Hong et al., Phys. Rev. D 87, 082001 (2013).
 ///
-/// Leaves out: the finite ratio of coating thickness to beam radius (too high by 11 % in bulk and 22 %
-/// in shear for a stiff film at d/w = 0.02), in-plane readout, the finite mirror.
-/// Valid when: d/w below about 0.001 for 1 % (stiff film on silica).
+/// Leaves out: the finite ratio of coating thickness to beam radius (too high by 11 % in bulk and
+/// 22 % in shear for a stiff film at d/w = 0.02), in-plane readout, the finite mirror. Valid when:
+/// d/w below about 0.001 for 1 % (stiff film on silica).
 
 #include <vector>
 
@@ -49,8 +49,8 @@ double brownian_psd(const StrainEnergy& energy, const Loss& loss, double tempera
                     double frequency);
 
 /// The form with loss angles for stress in the plane and across it, one homogeneous film without
-/// light penetration: G. M. Harry et al. (2002), coating part only [m²/Hz]. Not a sum of positive energies
-/// for a film much stiffer than the substrate; kept for comparison with published numbers.
+/// light penetration: G. M. Harry et al. (2002), coating part only [m²/Hz]. Not a sum of positive
+/// energies for a film much stiffer than the substrate; kept for comparison with published numbers.
 double parallel_perpendicular_psd(const Elastic& substrate, const Elastic& film, double thickness,
                                   double loss_parallel, double loss_perpendicular,
                                   double beam_radius, double temperature, double frequency);

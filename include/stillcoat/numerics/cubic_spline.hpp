@@ -1,7 +1,7 @@
 #pragma once
-/// Natural cubic spline through points with any spacing: value, slope and curvature are continuous, so
-/// that dispersion derived from a table has no steps.
-/// Source: C. de Boor, A Practical Guide to Splines (Springer, 1978), ch. IV.
+/// Natural cubic spline through points with any spacing: value, slope and curvature are continuous,
+/// so that dispersion derived from a table has no steps. Source: C. de Boor, A Practical Guide to
+/// Splines (Springer, 1978), ch. IV.
 
 #include <vector>
 

@@ -6,12 +6,14 @@
 ///     dE/dz = i k0 a H,   dH/dz = i k0 b E;   s: a = 1, b = n²−β²;   p: a = 1−β²/n², b = n².
 /// They are carried upwards from the substrate as a scaled vector: the growth exp(Im δ) of each
 /// absorbing or evanescent layer is kept as a number, so that metal of any thickness stays finite.
-/// Conventions: time factor exp(−iωt); absorbing index n + ik, k ≥ 0; z into the mirror; layers listed
-/// from the light side; r is the ratio of tangential E at the face, so r_p = r_s at normal incidence.
+/// Conventions: time factor exp(−iωt); absorbing index n + ik, k ≥ 0; z into the mirror; layers
+/// listed from the light side; r is the ratio of tangential E at the face, so r_p = r_s at normal
+/// incidence.
 ///
 /// Leaves out: roughness and scatter, finite beam divergence, the rear face of the substrate.
 /// Valid when: plane wave, isotropic layers, real incident index.
-/// Source: F. Abelès, Ann. Phys. (Paris) 12, 596 (1950); M. Born & E. Wolf, Principles of Optics, §1.6.
+/// Source: F. Abelès, Ann. Phys. (Paris) 12, 596 (1950); M. Born & E. Wolf, Principles of Optics,
+/// §1.6.
 
 #include <complex>
 #include <vector>
@@ -42,19 +44,20 @@ struct Illumination {
 };
 
 struct Response {
-    Complex reflection;         ///< amplitude ratio of tangential E
-    double reflectance;         ///< |r|²
-    double transmittance;       ///< power that enters the substrate per incident power; may underflow to 0
-    double log_transmittance;   ///< natural logarithm of T; −infinity when nothing can enter
-    double absorptance;         ///< Σ over the layers
-    double loss;                ///< 1 − R without cancellation: T + Σ A_j
+    Complex reflection;  ///< amplitude ratio of tangential E
+    double reflectance;  ///< |r|²
+    double
+        transmittance;  ///< power that enters the substrate per incident power; may underflow to 0
+    double log_transmittance;  ///< natural logarithm of T; −infinity when nothing can enter
+    double absorptance;        ///< Σ over the layers
+    double loss;               ///< 1 − R without cancellation: T + Σ A_j
     std::vector<double> layer_absorptance;
 };
 
 /// Reflection, transmission and absorption.
 /// @throws core::DomainError for an incident index, wavelength, angle or thickness out of range, a
-///         negative extinction coefficient, or a number that is not finite. Accepted: |index| from 1e-6
-///         to 1e6, layers up to 1e9 wavelengths (beyond, a double no longer holds the phase).
+///         negative extinction coefficient, or a number that is not finite. Accepted: |index| from
+///         1e-6 to 1e6, layers up to 1e9 wavelengths (beyond, a double no longer holds the phase).
 Response response(const OpticalStack& stack, const Illumination& light);
 
 /// The same layer for derivatives with respect to the angular frequency ω.
@@ -69,12 +72,13 @@ struct PhaseResponse {
     double reflection_phase;        ///< arg r [rad], in (−π, π]
     double group_delay;             ///< +d arg r/dω [s], positive for a mirror, at fixed angle
     double group_delay_dispersion;  ///< d² arg r/dω² [s²], at fixed angle
-    double transmission_group_delay;  ///< +d arg t/dω [s], t referred to face and substrate boundary
+    double
+        transmission_group_delay;  ///< +d arg t/dω [s], t referred to face and substrate boundary
 };
 
 /// Phase, delay and dispersion of the reflected light by exact differentiation.
-/// Undefined where |r| < 1e-13 (rounding noise) and where a dispersive substrate passes its critical
-/// angle (infinite delay); then all members are quiet NaN and the caller says so.
+/// Undefined where |r| < 1e-13 (rounding noise) and where a dispersive substrate passes its
+/// critical angle (infinite delay); then all members are quiet NaN and the caller says so.
 /// @throws core::DomainError as response() does; std::logic_error when the counts differ.
 PhaseResponse phase_response(const DispersiveStack& stack, const Illumination& light);
 

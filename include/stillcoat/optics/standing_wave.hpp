@@ -1,10 +1,10 @@
 #pragma once
 /// The field inside the stack: standing wave, stored energy, peaks.
 ///
-/// In a layer of thickness h the tangential field is E(z) = A e^{iqz} + B e^{iq(h−z)}, z from its top,
-/// q = k0 n cosθ: both parts decay from where they start, so thick metal stays finite.
-/// Source: M. Born & E. Wolf, Principles of Optics, §1.6; stored energy in its non-dispersive form,
-/// J. D. Jackson, Classical Electrodynamics, §6.8 (where dispersion matters the true energy is larger).
+/// In a layer of thickness h the tangential field is E(z) = A e^{iqz} + B e^{iq(h−z)}, z from its
+/// top, q = k0 n cosθ: both parts decay from where they start, so thick metal stays finite. Source:
+/// M. Born & E. Wolf, Principles of Optics, §1.6; stored energy in its non-dispersive form, J. D.
+/// Jackson, Classical Electrodynamics, §6.8 (where dispersion matters the true energy is larger).
 
 #include <complex>
 #include <vector>

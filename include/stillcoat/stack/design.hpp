@@ -16,8 +16,8 @@ inline constexpr std::size_t most_frequencies = 20'000;
 enum class PolarisationChoice { s, p, unpolarised };
 
 struct Light {
-    double wavelength;  ///< in vacuum [m]
-    double angle;       ///< in the incident medium [rad]
+    double wavelength;                ///< in vacuum [m]
+    double angle;                     ///< in the incident medium [rad]
     PolarisationChoice polarisation;  ///< s at normal incidence
     std::string medium;               ///< "vacuum", "air" or a material
     std::optional<double> power;      ///< incident [W]

@@ -2,9 +2,9 @@
 /// The mirror at its operating point: every layer with its thickness and index at the operating
 /// temperature and wavelength.
 ///
-/// A clamped film grows in thickness by [(1+ν)∫α_f dT − 2ν∫α_s dT]/(1−ν) between the reference and the
-/// operating temperature (plane stress across, strain of the substrate in the plane; S. Timoshenko & J. N.
-/// Goodier, Theory of Elasticity, §13.4).
+/// A clamped film grows in thickness by [(1+ν)∫α_f dT − 2ν∫α_s dT]/(1−ν) between the reference and
+/// the operating temperature (plane stress across, strain of the substrate in the plane; S.
+/// Timoshenko & J. N. Goodier, Theory of Elasticity, §13.4).
 
 #include <map>
 #include <string>
@@ -36,8 +36,9 @@ struct Mirror {
     std::vector<MirrorLayer> layers;
     std::string substrate;
     OpticalConstants substrate_optical;
-    double coating_thickness;   ///< at the operating temperature [m]
-    double optical_path_ratio;  ///< Σ n d at the operating temperature over that at the reference one
+    double coating_thickness;  ///< at the operating temperature [m]
+    double
+        optical_path_ratio;  ///< Σ n d at the operating temperature over that at the reference one
 };
 
 /// What was looked up on the way, for the reader of the result.
