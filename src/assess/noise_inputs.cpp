@@ -7,7 +7,7 @@ namespace stillcoat::assess {
 using materials::PropertyId;
 
 NoiseInputs::NoiseInputs(const stack::Design& design, const materials::Library& library,
-                         const stack::Mirror&, stack::Ledger& ledger)
+                         stack::Ledger& ledger)
     : design_(design), library_(library), ledger_(ledger) {}
 
 Wanted<double> NoiseInputs::property_at(const std::string& material, PropertyId id,

@@ -22,7 +22,7 @@ struct Wanted {
 class NoiseInputs {
   public:
     NoiseInputs(const stack::Design& design, const materials::Library& library,
-                const stack::Mirror& mirror, stack::Ledger& ledger);
+                stack::Ledger& ledger);
 
     Wanted<noise::Elastic> elastic(const std::string& material);
     Wanted<noise::ThermalMaterial> thermal(const std::string& material);

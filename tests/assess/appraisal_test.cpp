@@ -7,7 +7,7 @@
 
 #include "stillcoat/noise/coating_brownian.hpp"
 #include "stillcoat/noise/substrate.hpp"
-#include "support/project_library.hpp"
+#include "support/written_design.hpp"
 
 namespace {
 

@@ -7,23 +7,14 @@
 
 #include "stillcoat/materials/evaluation.hpp"
 #include "support/csv.hpp"
+#include "support/project_library.hpp"
 
 namespace {
 
 using namespace stillcoat;
 using materials::PropertyId;
 
-const materials::Library& library() {
-    static const materials::Library loaded = [] {
-        materials::Library list;
-        core::Problems problems;
-        materials::add_folder(list, STILLCOAT_MATERIALS, problems);
-        materials::check_links(list, problems);
-        problems.throw_if_any();
-        return list;
-    }();
-    return loaded;
-}
+const materials::Library& library() { return test::project_library(); }
 
 TEST(Library, HoldsTheMaterialsThatItPromises) {
     for (const char* name : {"fused-silica",

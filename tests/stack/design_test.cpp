@@ -6,7 +6,7 @@
 
 #include "stillcoat/core/constants.hpp"
 #include "stillcoat/stack/mirror.hpp"
-#include "support/project_library.hpp"
+#include "support/written_design.hpp"
 
 namespace {
 
