@@ -15,6 +15,23 @@ namespace {
 
 using materials::PropertyId;
 
+std::vector<FieldSample> field_profile(const stack::Mirror& mirror,
+                                       const optics::StandingWave& wave) {
+    constexpr int samples_per_layer = 24;
+    std::vector<FieldSample> field;
+    double top = 0.0;
+    for (std::size_t j = 0; j < mirror.layers.size(); ++j) {
+        const stack::MirrorLayer& layer = mirror.layers[j];
+        for (int i = 0; i <= samples_per_layer; ++i) {
+            const double depth = std::min(layer.thickness, layer.thickness * i / samples_per_layer);
+            field.push_back({top + depth, j, layer.optical.index.value,
+                             optics::relative_intensity(wave, j, depth)});
+        }
+        top += layer.thickness;
+    }
+    return field;
+}
+
 FaceOptics face_optics(const stack::Mirror& mirror, const optics::Illumination& light) {
     FaceOptics face{};
     face.polarisation = light.polarisation;
@@ -32,25 +49,8 @@ FaceOptics face_optics(const stack::Mirror& mirror, const optics::Illumination& 
         face.peak_intensity.push_back(peak.intensity);
         face.peak_depth.push_back(peak.depth);
     }
+    face.field = field_profile(mirror, wave);
     return face;
-}
-
-std::vector<FieldSample> field_profile(const stack::Mirror& mirror,
-                                       const optics::Illumination& light) {
-    constexpr int samples_per_layer = 24;
-    const optics::StandingWave wave = optics::standing_wave(optical_stack(mirror), light);
-    std::vector<FieldSample> field;
-    double top = 0.0;
-    for (std::size_t j = 0; j < mirror.layers.size(); ++j) {
-        const stack::MirrorLayer& layer = mirror.layers[j];
-        for (int i = 0; i <= samples_per_layer; ++i) {
-            const double depth = std::min(layer.thickness, layer.thickness * i / samples_per_layer);
-            field.push_back({top + depth, j, layer.optical.index.value,
-                             optics::relative_intensity(wave, j, depth)});
-        }
-        top += layer.thickness;
-    }
-    return field;
 }
 
 /// Layers whose absorption nobody stated count as transparent, which the result must say.
@@ -63,7 +63,7 @@ void warn_of_unknown_absorption(const stack::Mirror& mirror, double wavelength,
     for (const std::string& material : unknown) {
         warnings.push_back(fmt::format(
             "absorption of {} at {:g} nm is not stated: its layers count as transparent and the "
-            "absorptance below is a lower limit; give extinction_coefficient in [material.\"{}\"]",
+            "absorptance is a lower limit; give extinction_coefficient in [material.\"{}\"]",
             material, wavelength * 1e9, material));
     }
 }
@@ -72,7 +72,8 @@ void warn_of_unknown_absorption(const stack::Mirror& mirror, double wavelength,
 void note_metals(const stack::Mirror& mirror, std::vector<std::string>& notes) {
     std::set<std::string> metals;
     for (const stack::MirrorLayer& layer : mirror.layers) {
-        if (layer.optical.extinction > layer.optical.index.value) metals.insert(layer.material);
+        if (layer.optical.extinction.value > layer.optical.index.value)
+            metals.insert(layer.material);
     }
     for (const std::string& material : metals) {
         notes.push_back(fmt::format(
@@ -92,6 +93,33 @@ void note_shift(const stack::Design& design, const stack::Mirror& mirror,
                     "moves by {:+.2f} nm",
                     design.coating.reference_temperature, design.temperature, ppm,
                     (mirror.optical_path_ratio - 1.0) * design.light.wavelength * 1e9));
+}
+
+/// Phase, delay and noise belong to the reflected light, also where there is little of it.
+void warn_of_weak_reflection(const Appraisal& appraisal, std::vector<std::string>& warnings) {
+    constexpr double weak = 0.01;
+    const double reflectance = mean_over_faces(appraisal, &optics::Response::reflectance);
+    if (reflectance >= weak) return;
+    warnings.push_back(fmt::format(
+        "only {:.2g} % of the light is reflected: reflection phase, delay and noise describe that "
+        "remainder, not the light that passes",
+        reflectance * 100.0));
+}
+
+/// Near a zero of the substrate's expansion its thermo-elastic noise is known no better than that
+/// zero.
+void note_uncertain_expansion(const stack::Design& design, const materials::Library& library,
+                              std::vector<std::string>& notes) {
+    const materials::Value alpha =
+        materials::evaluate(library, design.mirror.substrate, PropertyId::thermal_expansion,
+                            {design.temperature, design.light.wavelength, 1.0});
+    const bool known = alpha.number && alpha.width.form == materials::Width::Form::absolute;
+    if (!known || std::abs(*alpha.number) >= alpha.width.value) return;
+    notes.push_back(
+        fmt::format("linear expansion of {} is {:.2g} ± {:.2g} 1/K here, less than its own "
+                    "uncertainty: so is the "
+                    "substrate's thermo-elastic noise, which goes with its square",
+                    design.mirror.substrate, *alpha.number, alpha.width.value));
 }
 
 std::vector<std::string> without_uncertainty(const std::vector<stack::Ledger::Use>& uses) {
@@ -137,12 +165,12 @@ Appraisal appraise(const stack::Design& design, const materials::Library& librar
         result.faces.push_back(face_optics(
             result.mirror, {design.light.wavelength, design.light.angle, polarisation}));
     }
-    result.field = field_profile(result.mirror,
-                                 {design.light.wavelength, design.light.angle, polarisations[0]});
     warn_of_unknown_absorption(result.mirror, design.light.wavelength, result.warnings);
     note_metals(result.mirror, result.notes);
     note_shift(design, result.mirror, result.notes);
     if (design.light.angle == 0.0) {
+        warn_of_weak_reflection(result, result.warnings);
+        note_uncertain_expansion(design, library, result.notes);
         result.noise = assemble_noise(design, library, result.mirror, ledger, result.warnings);
     } else {
         result.noise.missing =

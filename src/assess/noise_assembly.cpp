@@ -76,7 +76,7 @@ Noise assemble_noise(const stack::Design& design, const materials::Library& libr
         ledger.note(fmt::format("the films' loss angles are multiplied by excess_loss = {:g}",
                                 design.coating.excess_loss));
     }
-    warn_of_validity(design, mirror, model.substrate_elastic(), model.elastic_layers(), warnings);
+    warn_of_validity(design, mirror, model, warnings);
     return noise;
 }
 

@@ -6,6 +6,15 @@ namespace stillcoat::assess {
 
 using materials::PropertyId;
 
+namespace {
+
+/// Two reasons as one; either may be empty.
+std::string joined(const std::string& first, const std::string& second) {
+    return first.empty() || second.empty() ? first + second : first + "; " + second;
+}
+
+}  // namespace
+
 NoiseInputs::NoiseInputs(const stack::Design& design, const materials::Library& library,
                          stack::Ledger& ledger)
     : design_(design), library_(library), ledger_(ledger) {}
@@ -25,22 +34,23 @@ Wanted<double> NoiseInputs::property(const std::string& material, PropertyId id)
 Wanted<noise::Elastic> NoiseInputs::elastic(const std::string& material) {
     const Wanted<double> modulus = property(material, PropertyId::youngs_modulus);
     const Wanted<double> poisson = property(material, PropertyId::poisson_ratio);
-    if (!modulus.value) return {std::nullopt, modulus.missing};
-    if (!poisson.value) return {std::nullopt, poisson.missing};
+    if (!modulus.value || !poisson.value)
+        return {std::nullopt, joined(modulus.missing, poisson.missing)};
     return {noise::Elastic{*modulus.value, *poisson.value}, ""};
 }
 
 Wanted<noise::ThermalMaterial> NoiseInputs::thermal(const std::string& material) {
     const Wanted<noise::Elastic> constants = elastic(material);
-    if (!constants.value) return {std::nullopt, constants.missing};
+    std::string missing = constants.missing;
     const PropertyId ids[] = {PropertyId::thermal_expansion, PropertyId::thermal_conductivity,
                               PropertyId::specific_heat, PropertyId::density};
     double numbers[4] = {};
     for (int i = 0; i < 4; ++i) {
         const Wanted<double> number = property(material, ids[i]);
-        if (!number.value) return {std::nullopt, number.missing};
-        numbers[i] = *number.value;
+        missing = joined(missing, number.missing);
+        numbers[i] = number.value.value_or(0.0);
     }
+    if (!missing.empty()) return {std::nullopt, missing};
     return {
         noise::ThermalMaterial{*constants.value, numbers[0], numbers[1], numbers[2] * numbers[3]},
         ""};

@@ -25,6 +25,7 @@ class NoiseModel {
     std::vector<NoiseTerm> terms() const;
     std::vector<NoiseTerm> comparisons() const;
     const Wanted<noise::Elastic>& substrate_elastic() const { return substrate_elastic_; }
+    const Wanted<noise::ThermalMaterial>& substrate_thermal() const { return substrate_thermal_; }
     const std::vector<noise::ElasticLayer>& elastic_layers() const { return elastic_layers_; }
 
   private:

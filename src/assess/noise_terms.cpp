@@ -66,10 +66,10 @@ std::vector<NoiseTerm> NoiseModel::comparisons() const {
         named("coating_coherent", "coating thermo-optic, coherent", heat, refraction_missing_),
         named("bare_substrate_thermo_elastic", "substrate thermo-elastic, bare",
               "Cerdonio et al., Phys. Rev. D 63, 082003 (2001)", substrate_thermal_.missing),
-        named(
-            "classic_thermo_optic", "classic closed form of coating thermo-optic",
-            "Evans et al., Phys. Rev. D 78, 102003 (2008), layer strain without substrate bending",
-            refraction_missing_),
+        named("classic_thermo_optic", "classic closed form of the same",
+              "Evans et al., Phys. Rev. D 78, 102003 (2008): the substrate's share at the "
+              "coating's heat capacity subtracted, layer strain without substrate bending",
+              refraction_missing_),
         named("transmitted_thermo_refractive", "light crossing the substrate once",
               "optical path: Braginsky & Vyatchanin, Phys. Lett. A 324, 345 (2004)", path_missing_),
         named("transmitted_standing_wave", "its standing-wave part",

@@ -24,55 +24,104 @@ noise::Elastic mean_elastic(const std::vector<noise::ElasticLayer>& layers) {
 
 std::string percent_change(double ratio) { return fmt::format("{:+.1f} %", (ratio - 1.0) * 100.0); }
 
-}  // namespace
-
-void warn_of_validity(const stack::Design& design, const stack::Mirror& mirror,
-                      const Wanted<noise::Elastic>& substrate,
-                      const std::vector<noise::ElasticLayer>& layers,
-                      std::vector<std::string>& warnings) {
+/// The ratio of coating thickness to beam radius at which the thin-film formula stops being a
+/// formula.
+void warn_of_small_beam(const stack::Design& design, const stack::Mirror& mirror,
+                        std::vector<std::string>& warnings) {
     // Layered elasticity of a silica/tantala coating on silica: the exact energy falls below the
     // thin-film one by 3.7 d/w (bulk) to 7.3 d/w (shear) for small d/w (independent derivation).
-    constexpr double bulk_slope = 3.7, shear_slope = 7.3, worth_saying = 0.01;
+    constexpr double bulk_slope = 3.7, shear_slope = 7.3, worth_saying = 0.01, last_linear = 0.05;
     const double ratio = mirror.coating_thickness / design.beam_radius;
-    if (shear_slope * ratio > worth_saying) {
+    if (ratio > last_linear) {
         warnings.push_back(
-            fmt::format("the coating is not thin against the beam (d/w = {:.2g}): coating Brownian "
-                        "noise power is given "
-                        "by the thin-film formula and is too high by some {:.0f}–{:.0f} % for "
-                        "stiff films on silica",
-                        ratio, std::min(50.0, bulk_slope * ratio * 100.0),
-                        std::min(55.0, shear_slope * ratio * 100.0)));
+            fmt::format("the coating is not thin against the beam (d/w = {:.2g}): the thin-film "
+                        "formula of coating Brownian noise does not apply",
+                        ratio));
+    } else if (shear_slope * ratio > worth_saying) {
+        warnings.push_back(
+            fmt::format("the coating is not thin against the beam (d/w = {:.2g}): for "
+                        "silica/tantala on silica the thin-film "
+                        "formula of coating Brownian noise power is then too high by {:.1f} % "
+                        "(bulk) to {:.1f} % (shear); "
+                        "other materials differ, soft films on a stiff substrate even in sign",
+                        ratio, bulk_slope * ratio * 100.0, shear_slope * ratio * 100.0));
     }
-    const bool finite = design.mirror.diameter && design.mirror.thickness;
-    if (finite && substrate.value && !layers.empty()) {
-        const double radius = *design.mirror.diameter / 2.0;
-        const double height = *design.mirror.thickness;
-        const noise::FiniteMirrorEstimate estimate = noise::finite_mirror_estimate(
-            *substrate.value, mean_elastic(layers), radius, height, design.beam_radius);
+    const double divergence = design.light.wavelength / (core::pi * design.beam_radius);
+    constexpr double largest_divergence = 0.05;
+    if (divergence > largest_divergence) {
+        warnings.push_back(fmt::format(
+            "the beam diverges by {:.2g} rad: a plane wave no longer describes it", divergence));
+    }
+}
+
+void warn_of_finite_mirror(const stack::Design& design, const noise::Elastic& substrate,
+                           const noise::Elastic& film, std::vector<std::string>& warnings) {
+    const double radius = *design.mirror.diameter / 2.0;
+    const double height = *design.mirror.thickness;
+    const double w = design.beam_radius;
+    const std::string shape =
+        fmt::format("beam radius / mirror radius {:.2g}, thickness / radius {:.2g}", w / radius,
+                    height / radius);
+    constexpr double widest_beam = 0.6, thinnest_plate = 0.1, worth_saying = 0.01;
+    if (w > widest_beam * radius || height < thinnest_plate * radius) {
+        warnings.push_back(
+            fmt::format("a half-space does not describe this mirror ({}): do not use the noise "
+                        "figures",
+                        shape));
+    } else {
+        const noise::FiniteMirrorEstimate estimate =
+            noise::finite_mirror_estimate(substrate, film, radius, height, w);
         const double worst = std::max({std::abs(estimate.substrate_brownian - 1.0),
                                        std::abs(estimate.substrate_thermo_elastic - 1.0),
                                        std::abs(estimate.coating_brownian - 1.0)});
         if (worst > worth_saying) {
             warnings.push_back(
-                fmt::format("noise is that of a half-space; for this mirror (beam radius / mirror "
-                            "radius {:.2f}, thickness / "
-                            "radius {:.2f}) the closed sums of the literature give a noise power "
-                            "that differs by {} "
-                            "(substrate Brownian), {} (substrate thermo-elastic), {} (coating "
-                            "Brownian, a rough figure)",
-                            design.beam_radius / radius, height / radius,
-                            percent_change(estimate.substrate_brownian),
+                fmt::format("noise is that of a half-space; for this mirror ({}) the closed sums "
+                            "of the literature give a "
+                            "noise power that differs by {} (substrate Brownian), {} (substrate "
+                            "thermo-elastic while heat "
+                            "stays near the beam), {} (coating Brownian, a rough figure)",
+                            shape, percent_change(estimate.substrate_brownian),
                             percent_change(estimate.substrate_thermo_elastic),
                             percent_change(estimate.coating_brownian)));
         }
-        const double missed = std::exp(-2.0 * std::pow(radius / design.beam_radius, 2));
-        if (missed > 1e-6) {
-            warnings.push_back(
-                fmt::format("{:.2g} of the light power misses the mirror's face", missed));
-        }
     }
-    const double hottest = design.band.to * core::planck_constant / core::boltzmann_constant;
-    if (hottest > 0.05 * design.temperature) {
+    const double missed = std::exp(-2.0 * std::pow(radius / w, 2));
+    if (missed > 1e-6) {
+        warnings.push_back(
+            fmt::format("{:.2g} % of the light power misses the mirror's face", missed * 100.0));
+    }
+}
+
+/// Below this frequency heat crosses the whole mirror within a period, which a half-space does not
+/// know.
+void warn_of_heat_in_mirror(const stack::Design& design, const noise::ThermalMaterial& substrate,
+                            std::vector<std::string>& warnings) {
+    const double size = std::min(*design.mirror.diameter / 2.0, *design.mirror.thickness);
+    const double frequency =
+        substrate.conductivity / (substrate.heat_capacity * 2.0 * core::pi * size * size);
+    if (frequency <= design.band.from) return;
+    warnings.push_back(fmt::format(
+        "below {:.2g} Hz heat crosses the whole mirror within a period: the half-space's "
+        "thermal noise does not hold there",
+        frequency));
+}
+
+}  // namespace
+
+void warn_of_validity(const stack::Design& design, const stack::Mirror& mirror,
+                      const NoiseModel& model, std::vector<std::string>& warnings) {
+    warn_of_small_beam(design, mirror, warnings);
+    const bool finite = design.mirror.diameter && design.mirror.thickness;
+    if (finite && model.substrate_elastic().value && !model.elastic_layers().empty()) {
+        warn_of_finite_mirror(design, *model.substrate_elastic().value,
+                              mean_elastic(model.elastic_layers()), warnings);
+    }
+    if (finite && model.substrate_thermal().value) {
+        warn_of_heat_in_mirror(design, *model.substrate_thermal().value, warnings);
+    }
+    const double quantum = design.band.to * core::planck_constant / core::boltzmann_constant;
+    if (quantum > 0.05 * design.temperature) {
         warnings.push_back(
             fmt::format("at {:g} Hz a quantum is no longer small against k_B T", design.band.to));
     }

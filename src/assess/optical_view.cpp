@@ -3,11 +3,10 @@
 namespace stillcoat::assess {
 namespace {
 
-/// Extinction is taken as constant over the line width that a delay needs.
 numerics::Jet<optics::Complex> complex_index(const stack::OpticalConstants& constants) {
-    numerics::Jet<optics::Complex> n = numerics::to_complex(constants.index);
-    n.value += optics::Complex(0.0, constants.extinction);
-    return n;
+    const numerics::Jet<double>& n = constants.index;
+    const numerics::Jet<double>& k = constants.extinction;
+    return {{n.value, k.value}, {n.first, k.first}, {n.second, k.second}};
 }
 
 }  // namespace

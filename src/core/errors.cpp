@@ -99,6 +99,14 @@ DomainError::DomainError(const std::string& quantity, double value, const std::s
 
 std::optional<std::string> nearest_spelling(const std::string& word,
                                             const std::vector<std::string>& candidates) {
+    // A word that was cut short, "tantala" for "tantala-ibs": the shortest that begins with it.
+    constexpr std::size_t shortest_stem = 3;
+    std::optional<std::string> longer;
+    for (const std::string& candidate : candidates) {
+        const bool begins = word.size() >= shortest_stem && candidate.rfind(word, 0) == 0;
+        if (begins && (!longer || candidate.size() < longer->size())) longer = candidate;
+    }
+    if (longer) return longer;
     // Levenshtein distance, one row at a time.
     const auto distance = [&word](const std::string& other) {
         std::vector<std::size_t> row(other.size() + 1);
@@ -115,7 +123,7 @@ std::optional<std::string> nearest_spelling(const std::string& word,
         return row.back();
     };
     std::optional<std::string> best;
-    std::size_t best_distance = std::max<std::size_t>(2, word.size() / 2) + 1;
+    std::size_t best_distance = std::max<std::size_t>(2, word.size() / 3) + 1;
     for (const std::string& candidate : candidates) {
         const std::size_t d = distance(candidate);
         if (d < best_distance) {
@@ -123,13 +131,7 @@ std::optional<std::string> nearest_spelling(const std::string& word,
             best = candidate;
         }
     }
-    if (best) return best;
-    // A word that was cut short: "tantal" for "tantala-ibs".
-    constexpr std::size_t shortest_stem = 3;
-    for (const std::string& candidate : candidates) {
-        if (word.size() >= shortest_stem && candidate.rfind(word, 0) == 0) return candidate;
-    }
-    return std::nullopt;
+    return best;
 }
 
 }  // namespace stillcoat::core

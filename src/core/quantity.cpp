@@ -58,7 +58,8 @@ QuantityReading failed(std::string message, std::string hint) {
 }
 
 std::string example_of(const QuantityKind& kind) {
-    return fmt::format("write a {} with its unit, for example \"{}\"", kind.name, kind.example);
+    return fmt::format("write {} with its unit, for example \"{}\"", with_article(kind.name),
+                       kind.example);
 }
 
 /// A unit text begins with a letter, a sign such as %, or "1/"; numbers in front were taken
@@ -101,6 +102,12 @@ QuantityReading converted(double number, const std::string& unit_text, const Qua
 
 }  // namespace
 
+std::string with_article(const std::string& noun) {
+    const bool vowel =
+        !noun.empty() && std::string("aeiou").find(noun.front()) != std::string::npos;
+    return (vowel ? "an " : "a ") + noun;
+}
+
 QuantityReading read_quantity(double number, const std::string& unit, const QuantityKind& kind) {
     return converted(number, unit, kind, false);
 }
@@ -112,7 +119,7 @@ QuantityReading read_difference(double number, const std::string& unit, const Qu
 QuantityReading read_quantity(const std::string& text, const QuantityKind& kind) {
     std::size_t begin = text.find_first_not_of(' ');
     if (begin == std::string::npos) {
-        return failed(fmt::format("an empty text where a {} is expected", kind.name),
+        return failed(fmt::format("an empty text where {} is expected", with_article(kind.name)),
                       example_of(kind));
     }
     if (text[begin] == '+') ++begin;

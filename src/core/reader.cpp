@@ -61,18 +61,18 @@ const Node* TableReader::find_of_type(const std::string& key, Node::Type type,
 }
 
 void TableReader::check(double value, const Node& node, const std::string& key,
-                        const Limits& limits, const std::string& unit,
-                        std::optional<double>& result) {
+                        const Limits& limits, std::optional<double>& result) {
     const bool above = value > limits.lower || (limits.lower_itself && value == limits.lower);
     const bool below = value < limits.upper || (limits.upper_itself && value == limits.upper);
     if (std::isfinite(value) && above && below) {
         result = value;
         return;
     }
-    problems_.add(
-        node.place(),
-        fmt::format("{} in {} is {:.6g}{}{}", key, name_, value, unit.empty() ? "" : " ", unit),
-        fmt::format("it must be {}", limits.words));
+    // A quantity is quoted as it was written, a bare number as it was understood.
+    const std::string found =
+        node.type == Node::Type::text ? "\"" + node.text + "\"" : fmt::format("{:.6g}", value);
+    problems_.add(node.place(), fmt::format("{} in {} is {}", key, name_, found),
+                  fmt::format("it must be {}", limits.words));
 }
 
 std::optional<double> TableReader::quantity_of(const Node& value, const std::string& key,
@@ -80,14 +80,14 @@ std::optional<double> TableReader::quantity_of(const Node& value, const std::str
     std::optional<double> result;
     const bool pure = kind.si_unit == "1";
     if (value.is_number() && pure) {
-        check(value.number, value, key, limits, "", result);
+        check(value.number, value, key, limits, result);
         return result;
     }
     if (value.type != Node::Type::text) {
         const std::string found = value.is_number() ? "a bare number" : describe(value.type);
         problems_.add(value.place(),
-                      fmt::format("{} in {} needs a {} with a unit, here it is {}", key, name_,
-                                  kind.name, found),
+                      fmt::format("{} in {} needs {} with a unit, here it is {}", key, name_,
+                                  with_article(kind.name), found),
                       fmt::format("for example {} = \"{}\"", key, kind.example));
         return result;
     }
@@ -98,7 +98,7 @@ std::optional<double> TableReader::quantity_of(const Node& value, const std::str
                       reading.failure.hint);
         return result;
     }
-    check(reading.value, value, key, limits, pure ? "" : kind.si_unit, result);
+    check(reading.value, value, key, limits, result);
     return result;
 }
 

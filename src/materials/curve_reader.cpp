@@ -119,8 +119,10 @@ Curve read_scalar(TableReader& reader, const EntryContext& context, double& scal
     if (context.from_design || with_unit_inside || about.kind->si_unit == "1") {
         if (reader.has("unit")) {
             reader.find("unit");
+            const bool pure = about.kind->si_unit == "1";
             reader.problem_at("unit", "unit in " + reader.name() + " is not used here",
-                              fmt::format("write value = \"{}\"", about.kind->example));
+                              pure ? "it is a pure number: leave the unit out"
+                                   : fmt::format("write value = \"{}\"", about.kind->example));
         }
         return Scalar{reader.quantity("value", *about.kind, about.limits).value_or(1.0)};
     }

@@ -41,6 +41,9 @@ std::string range_words(const Interval& range) {
 /// Where an entry holds, with its rule.
 std::string holds_words(const Entry& entry) {
     std::string words = "its data hold for " + range_words(*entry.temperature);
+    if (entry.cold) {
+        words += fmt::format(", its cold table from {:g} K", entry.cold->table.temperature.front());
+    }
     if (entry.beyond && entry.beyond->temperature) {
         words += ", its rule for " + range_words(*entry.beyond->temperature);
     }
@@ -112,11 +115,14 @@ class Evaluator {
         } else if (const auto* same = std::get_if<SameAs>(&datum.curve)) {
             Value other = Evaluator(library_, at(temperature)).property(same->material, id);
             if (other.number) *other.number *= same->factor;
+            if (other.analogy.empty()) {
+                other.analogy = fmt::format("{} of {} at {:g} K: as {}", info(id).title, material,
+                                            temperature, same->material);
+            }
             return other;
         } else {
             value.number = optical_value(datum, conditions_.wavelength);
         }
-        (void)material;
         return value;
     }
 
@@ -137,6 +143,7 @@ class Evaluator {
         Value value = plain(datum, material, id, table.join.upper);
         if (!value.number) return value;
         value.width = width_at(table.width, table.width_spans, t);
+        value.from_cold_table = true;
         if (t <= table.join.lower) {
             value.number = interpolate(table.table, t);
             value.frequency_extrapolated = false;
@@ -348,6 +355,32 @@ IndexValue index_at(const Library& library, const std::string& material, double 
         result.missing = change.missing + ", so its index at the operating temperature is unknown";
     }
     return result;
+}
+
+numerics::Jet<double> with_dispersion(const Value& extinction, bool per_length, double wavelength) {
+    const double k = *extinction.number;
+    const double omega = 2.0 * core::pi * core::speed_of_light / wavelength;
+    const Entry* entry = extinction.entry;
+    if (per_length) return {k, -k / omega, 2.0 * k / (omega * omega)};
+    const bool table = entry != nullptr && std::holds_alternative<WavelengthTable>(entry->curve) &&
+                       (!entry->wavelength || entry->wavelength->contains(wavelength));
+    return table ? dispersion(*entry, wavelength, 295.0) : numerics::Jet<double>(k);
+}
+
+std::vector<std::string> alternatives_that_hold(const Library& library, const std::string& material,
+                                                PropertyId property, const Conditions& conditions) {
+    std::vector<std::string> names;
+    const auto& properties = library.at(material).properties;
+    const auto found = properties.find(property);
+    if (found == properties.end()) return names;
+    for (const Alternative& other : found->second.alternatives) {
+        const bool warm =
+            !other.entry.temperature || other.entry.temperature->contains(conditions.temperature);
+        const bool lit =
+            !other.entry.wavelength || other.entry.wavelength->contains(conditions.wavelength);
+        if (warm && lit) names.push_back(other.name);
+    }
+    return names;
 }
 
 Value expansion_between(const Library& library, const std::string& material, double from,

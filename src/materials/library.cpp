@@ -196,8 +196,16 @@ void override_properties(Library& library, const std::string& name, const Node& 
     Material& material = library.materials.at(name);
     check_loss_forms(reader);
     for (const PropertyInfo& about : property_table()) {
-        const Node* node = reader.table(about.key);
+        const Node* node = reader.find(about.key);
         if (node == nullptr) continue;
+        if (node->type != Node::Type::table) {
+            const bool pure = about.kind->si_unit == "1";
+            reader.problem_at(
+                about.key, fmt::format("{} in {} must be a table", about.key, reader.name()),
+                fmt::format("for example {} = {{ value = {}, source = \"...\" }}", about.key,
+                            pure ? "0.2" : "\"" + about.kind->example + "\""));
+            continue;
+        }
         const std::string title = fmt::format("{} of {}", about.key, name);
         if (node->find("alternative") == nullptr) {
             material.properties[about.id] =

@@ -2,12 +2,14 @@
 
 #include <fmt/format.h>
 
+#include <algorithm>
 #include <cmath>
 #include <nlohmann/json.hpp>
 #include <numeric>
 #include <stdexcept>
 
 #include "present/sources.hpp"
+#include "present/wording.hpp"
 
 namespace stillcoat::present {
 namespace {
@@ -47,15 +49,15 @@ Json coating(const stack::Design& design, const Appraisal& appraisal) {
     Json layers = Json::array();
     int count = 0;
     for (const stack::MirrorLayer& layer : appraisal.mirror.layers) {
-        layers.push_back(
-            {{"number", ++count},
-             {"material", layer.material},
-             {"reference_thickness_m", number(layer.reference_thickness)},
-             {"thickness_m", number(layer.thickness)},
-             {"quarter_waves", number(layer.quarter_waves)},
-             {"refractive_index", number(layer.optical.index.value)},
-             {"extinction_coefficient",
-              layer.optical.extinction_known ? number(layer.optical.extinction) : Json(nullptr)}});
+        layers.push_back({{"number", ++count},
+                          {"material", layer.material},
+                          {"reference_thickness_m", number(layer.reference_thickness)},
+                          {"thickness_m", number(layer.thickness)},
+                          {"quarter_waves", number(layer.quarter_waves)},
+                          {"refractive_index", number(layer.optical.index.value)},
+                          {"extinction_coefficient", layer.optical.extinction_known
+                                                         ? number(layer.optical.extinction.value)
+                                                         : Json(nullptr)}});
     }
     return {{"layer_count", count},
             {"thickness_m", number(appraisal.mirror.coating_thickness)},
@@ -66,22 +68,28 @@ Json coating(const stack::Design& design, const Appraisal& appraisal) {
             {"layers", std::move(layers)}};
 }
 
-Json face(const assess::FaceOptics& optics) {
+Json face(const assess::FaceOptics& optics, const stack::Mirror& mirror) {
     const optics::Response& r = optics.response;
     Json layers = Json::array();
     for (std::size_t j = 0; j < optics.stored_energy.size(); ++j) {
         layers.push_back({{"number", j + 1},
-                          {"absorptance", number(r.layer_absorptance[j])},
+                          {"absorptance", mirror.layers[j].optical.extinction_known
+                                              ? number(r.layer_absorptance[j])
+                                              : Json(nullptr)},
                           {"stored_energy_J_per_W", number(optics.stored_energy[j])},
                           {"peak_intensity_ratio", number(optics.peak_intensity[j])},
                           {"peak_depth_m", number(optics.peak_depth[j])}});
     }
+    const bool lower_limit = std::any_of(
+        mirror.layers.begin(), mirror.layers.end(),
+        [](const stack::MirrorLayer& layer) { return !layer.optical.extinction_known; });
     const bool dark = !std::isfinite(r.log_transmittance);
     Json document{{"polarisation", optics.polarisation == optics::Polarisation::s ? "s" : "p"},
                   {"reflectance", number(r.reflectance)},
                   {"transmittance", number(r.transmittance)},
                   {"log_transmittance", dark ? Json(nullptr) : number(r.log_transmittance)},
                   {"absorptance", number(r.absorptance)},
+                  {"absorptance_is_lower_limit", lower_limit},
                   {"loss", number(r.loss)},
                   {"reflection_amplitude_real", number(r.reflection.real())},
                   {"reflection_amplitude_imaginary", number(r.reflection.imag())}};
@@ -156,41 +164,50 @@ Json sources(const materials::Library& library, const Appraisal& appraisal, doub
 
 std::string layers_csv(const Appraisal& appraisal) {
     std::string text =
-        "number,material,reference_thickness_m,thickness_m,quarter_waves,refractive_index,"
+        "polarisation,number,material,reference_thickness_m,thickness_m,quarter_waves,refractive_"
+        "index,"
         "extinction_coefficient,absorptance,stored_energy_J_per_W,peak_intensity_ratio,"
         "brownian_psd_m2_per_Hz\n";
-    const assess::FaceOptics& optics = appraisal.faces.front();
-    for (std::size_t j = 0; j < appraisal.mirror.layers.size(); ++j) {
-        const stack::MirrorLayer& layer = appraisal.mirror.layers[j];
-        const bool known = layer.optical.extinction_known;
-        text += fmt::format(
-            "{},{},{},{},{},{},{},{},{},{},{}\n", j + 1, layer.material, layer.reference_thickness,
-            layer.thickness, layer.quarter_waves, layer.optical.index.value,
-            known ? fmt::format("{}", layer.optical.extinction) : "",
-            known ? fmt::format("{}", optics.response.layer_absorptance[j]) : "",
-            optics.stored_energy[j], optics.peak_intensity[j],
-            appraisal.noise.layers.empty() ? "" : fmt::format("{}", appraisal.noise.layers[j].psd));
+    for (const assess::FaceOptics& face : appraisal.faces) {
+        for (std::size_t j = 0; j < appraisal.mirror.layers.size(); ++j) {
+            const stack::MirrorLayer& layer = appraisal.mirror.layers[j];
+            const bool known = layer.optical.extinction_known;
+            text += fmt::format(
+                "{},{},{},{},{},{},{},{},{},{},{},{}\n", polarisation_text(face.polarisation),
+                j + 1, layer.material, layer.reference_thickness, layer.thickness,
+                layer.quarter_waves, layer.optical.index.value,
+                known ? fmt::format("{}", layer.optical.extinction.value) : "",
+                known ? fmt::format("{}", face.response.layer_absorptance[j]) : "",
+                face.stored_energy[j], face.peak_intensity[j],
+                appraisal.noise.layers.empty() ? ""
+                                               : fmt::format("{}", appraisal.noise.layers[j].psd));
+        }
     }
     return text;
 }
 
 std::string field_csv(const Appraisal& appraisal) {
-    std::string text = "depth_m,layer,material,refractive_index,intensity_ratio\n";
-    for (const assess::FieldSample& sample : appraisal.field) {
-        text += fmt::format("{},{},{},{},{}\n", sample.depth, sample.layer + 1,
-                            appraisal.mirror.layers[sample.layer].material, sample.index,
-                            sample.intensity);
+    std::string text = "polarisation,depth_m,layer,material,refractive_index,intensity_ratio\n";
+    for (const assess::FaceOptics& face : appraisal.faces) {
+        for (const assess::FieldSample& sample : face.field) {
+            text += fmt::format("{},{},{},{},{},{}\n", polarisation_text(face.polarisation),
+                                sample.depth, sample.layer + 1,
+                                appraisal.mirror.layers[sample.layer].material, sample.index,
+                                sample.intensity);
+        }
     }
     return text;
 }
 
 std::string noise_csv(const assess::Noise& result) {
     if (!result.computed) throw core::InputError("there is no noise table: " + result.missing, "");
-    std::string text = "frequency_Hz,total_psd_m2_per_Hz";
+    // A term that could not be computed keeps its column, empty; a total that lacks it says so in
+    // its name.
+    std::string text = result.complete ? "frequency_Hz,total_psd_m2_per_Hz"
+                                       : "frequency_Hz,total_of_terms_computed_psd_m2_per_Hz";
     std::vector<const assess::NoiseTerm*> columns;
     for (const auto* group : {&result.terms, &result.comparisons}) {
         for (const assess::NoiseTerm& item : *group) {
-            if (!item.missing.empty()) continue;
             columns.push_back(&item);
             text += "," + item.key + "_psd_m2_per_Hz";
         }
@@ -198,7 +215,9 @@ std::string noise_csv(const assess::Noise& result) {
     text += "\n";
     for (std::size_t i = 0; i < result.frequencies.size(); ++i) {
         text += fmt::format("{},{}", result.frequencies[i], result.total[i]);
-        for (const assess::NoiseTerm* item : columns) text += fmt::format(",{}", item->psd[i]);
+        for (const assess::NoiseTerm* item : columns) {
+            text += "," + (item->psd.empty() ? "" : fmt::format("{}", item->psd[i]));
+        }
         text += "\n";
     }
     return text;
@@ -209,12 +228,14 @@ std::string noise_csv(const assess::Noise& result) {
 std::string appraisal_json(const stack::Design& design, const materials::Library& library,
                            const Appraisal& appraisal) {
     Json faces = Json::array();
-    for (const assess::FaceOptics& item : appraisal.faces) faces.push_back(face(item));
+    for (const assess::FaceOptics& item : appraisal.faces)
+        faces.push_back(face(item, appraisal.mirror));
     const Json document{
         {"document", "appraisal"},
         {"program", "stillcoat"},
         {"version", STILLCOAT_VERSION},
         {"title", design.title},
+        {"design_file", design.document.name},
         {"operating_point", operating_point(design, appraisal)},
         {"mirror",
          {{"substrate", design.mirror.substrate},

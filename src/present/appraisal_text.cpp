@@ -28,8 +28,31 @@ double sum(const std::vector<double>& list) {
 }
 
 std::string reflectance_text(const optics::Response& response) {
-    if (response.loss < 1e-3) return fmt::format("1 − {}", fraction_text(response.loss));
-    return fraction_text(response.reflectance);
+    return near_one_text(response.reflectance, response.loss);
+}
+
+/// Transmittance of one face, or of unpolarised light from the mean.
+std::string transmittance_text(const optics::Response& response) {
+    return present::transmittance_text(response.transmittance, response.log_transmittance,
+                                       response.reflectance + response.absorptance);
+}
+
+/// Means over the faces as one response: what unpolarised light sees.
+optics::Response mean_response(const Appraisal& appraisal) {
+    optics::Response mean = appraisal.faces.front().response;
+    if (appraisal.faces.size() == 1) return mean;
+    mean.reflectance = mean_over_faces(appraisal, &optics::Response::reflectance);
+    mean.transmittance = mean_over_faces(appraisal, &optics::Response::transmittance);
+    mean.absorptance = mean_over_faces(appraisal, &optics::Response::absorptance);
+    mean.loss = mean_over_faces(appraisal, &optics::Response::loss);
+    mean.log_transmittance = std::log(mean.transmittance);
+    return mean;
+}
+
+bool absorption_unknown(const Appraisal& appraisal) {
+    return std::any_of(
+        appraisal.mirror.layers.begin(), appraisal.mirror.layers.end(),
+        [](const stack::MirrorLayer& layer) { return !layer.optical.extinction_known; });
 }
 
 void mirror_section(Page& page, const stack::Design& design, const Appraisal& appraisal) {
@@ -51,13 +74,13 @@ void mirror_section(Page& page, const stack::Design& design, const Appraisal& ap
     }
     page.row("substrate",
              fmt::format("{}; index {:.5f}", body, mirror.substrate_optical.index.value));
-    page.row(
-        "coating",
-        fmt::format("{} layers, {}; thicknesses hold at {:g} K, quarter waves counted at {:g} nm",
-                    mirror.layers.size(), length_text(mirror.coating_thickness),
-                    design.coating.reference_temperature, design.coating.design_wavelength * 1e9));
+    page.row("coating",
+             fmt::format(
+                 "{}, {}; thicknesses hold at {:g} K, quarter waves counted at {:g} nm",
+                 count_text(mirror.layers.size(), "layer"), length_text(mirror.coating_thickness),
+                 design.coating.reference_temperature, design.coating.design_wavelength * 1e9));
     if (!design.overridden.empty()) {
-        page.row("values from the design", fmt::format("{}", fmt::join(design.overridden, ", ")));
+        page.row("values from the design", fmt::format("{}", fmt::join(design.overridden, "; ")));
     }
 }
 
@@ -68,13 +91,17 @@ void power_rows(Page& page, const stack::Design& design, const Appraisal& apprai
     const double w = design.beam_radius;
     page.row("incident power", power_text(power));
     page.row("absorbed in the coating", power_text(power * absorptance));
+    double peak = 0.0;
+    for (const FaceOptics& face : appraisal.faces) {
+        peak = std::max(peak,
+                        *std::max_element(face.peak_intensity.begin(), face.peak_intensity.end()));
+    }
+    const double centre = 2.0 * power / (core::pi * w * w) * 1e-4;
     page.row(
         "intensity at the centre",
-        fmt::format("{:.4g} W/cm² incident; {:.4g} W/cm² at the field's maximum in the coating",
-                    2.0 * power / (core::pi * w * w) * 1e-4,
-                    2.0 * power / (core::pi * w * w) * 1e-4 *
-                        *std::max_element(appraisal.faces[0].peak_intensity.begin(),
-                                          appraisal.faces[0].peak_intensity.end())));
+        fmt::format("{:.4g} W/cm² incident; {:.4g} W/cm² at the field's maximum in the coating{}",
+                    centre, centre * peak,
+                    appraisal.faces.size() > 1 ? " (of s and p the larger)" : ""));
 }
 
 void face_section(Page& page, const FaceOptics& face, bool label, bool lower_limit) {
@@ -82,11 +109,7 @@ void face_section(Page& page, const FaceOptics& face, bool label, bool lower_lim
     page.heading(label ? "Light, " + polarisation_text(face.polarisation) + " polarisation"
                        : "Light");
     page.row("reflectance", reflectance_text(r));
-    std::string transmittance = fraction_text(r.transmittance);
-    if (std::isfinite(r.log_transmittance) && r.transmittance < 1e-12) {
-        transmittance = fmt::format("10^{:.2f}", r.log_transmittance / std::log(10.0));
-    }
-    page.row("transmittance", transmittance + " (into the substrate)");
+    page.row("transmittance", transmittance_text(r) + " (into the substrate)");
     page.row("absorptance", (lower_limit ? "at least " : "") + fraction_text(r.absorptance));
     page.row("scatter", "not stated");
     if (face.phase) {
@@ -103,10 +126,10 @@ void face_section(Page& page, const FaceOptics& face, bool label, bool lower_lim
     page.row("energy penetration depth", length_text(face.energy_penetration_depth));
     const auto peak = std::max_element(face.peak_intensity.begin(), face.peak_intensity.end());
     const auto layer = static_cast<std::size_t>(peak - face.peak_intensity.begin());
-    page.row(
-        "|E/E_incident|²",
-        fmt::format("{:.4g} at the face; largest {:.4g} in layer {}, {} below its top",
-                    face.face_intensity, *peak, layer + 1, length_text(face.peak_depth[layer])));
+    page.row("|E/E_incident|²",
+             fmt::format(
+                 "{:.4g} at the face; in the coating at most {:.4g}, in layer {}, {} below its top",
+                 face.face_intensity, *peak, layer + 1, length_text(face.peak_depth[layer])));
 }
 
 std::string percent(double share) { return fmt::format("{:.2f}", share * 100.0); }
@@ -155,13 +178,12 @@ void layer_section(Page& page, const Appraisal& appraisal, const PageOptions& op
     const std::size_t count = appraisal.mirror.layers.size();
     const bool all = options.all_layers || count <= layers_on_page;
     const double energy = sum(face.stored_energy);
-    page.heading("Layers, from the light to the substrate");
+    page.heading(appraisal.faces.size() > 1
+                     ? "Layers, from the light to the substrate (s polarisation)"
+                     : "Layers, from the light to the substrate");
     std::vector<std::vector<std::string>> rows;
     for (std::size_t j = 0; j < count; ++j) {
-        if (!all && j == outermost_on_page) {
-            rows.push_back({"…", fmt::format("{} more: --all-layers, or --csv layers",
-                                             count - outermost_on_page - innermost_on_page)});
-        }
+        if (!all && j == outermost_on_page) rows.push_back({"…", "…"});
         if (!all && j >= outermost_on_page && j < count - innermost_on_page) continue;
         const stack::MirrorLayer& layer = appraisal.mirror.layers[j];
         rows.push_back(
@@ -177,6 +199,10 @@ void layer_section(Page& page, const Appraisal& appraisal, const PageOptions& op
     page.table({"no", "material", "nm", "quarter waves", "index", "absorbs ppm", "energy %",
                 "|E|² max", "Brownian %"},
                rows, 2);
+    if (!all) {
+        page.line(fmt::format("  … {} more layers: --all-layers, or --csv layers",
+                              count - outermost_on_page - innermost_on_page));
+    }
 }
 
 /// Which material carries most of the coating's Brownian noise: where a change pays first.
@@ -195,37 +221,36 @@ std::string loudest_material(const Appraisal& appraisal) {
 }
 
 /// The answer in two lines, for those who read no further.
-void short_section(Page& page, const stack::Design& design, const Appraisal& appraisal) {
+void short_section(Page& page, const Appraisal& appraisal) {
     page.heading("In short");
-    const double loss = mean_over_faces(appraisal, &optics::Response::loss);
-    const double reflectance = mean_over_faces(appraisal, &optics::Response::reflectance);
+    const optics::Response mean = mean_response(appraisal);
     page.item(fmt::format(
-        "reflects {}, transmits {}, absorbs {}{}",
-        loss < 1e-3 ? "1 − " + fraction_text(loss) : fraction_text(reflectance),
-        fraction_text(mean_over_faces(appraisal, &optics::Response::transmittance)),
-        fraction_text(mean_over_faces(appraisal, &optics::Response::absorptance)),
-        design.light.angle > 0.0 && appraisal.faces.size() > 1 ? " (unpolarised)" : ""));
+        "reflects {}, transmits {}, absorbs {}{}{}", reflectance_text(mean),
+        transmittance_text(mean), absorption_unknown(appraisal) ? "at least " : "",
+        fraction_text(mean.absorptance), appraisal.faces.size() > 1 ? " (unpolarised)" : ""));
     const assess::Noise& noise = appraisal.noise;
     const auto at = std::find(noise.spot.begin(), noise.spot.end(), noise.layer_frequency);
     if (at != noise.spot.end()) {
         const auto i = static_cast<std::size_t>(at - noise.spot.begin());
         const NoiseTerm* largest = nullptr;
+        std::string missing;
         for (const NoiseTerm& term : noise.terms) {
-            if (!term.missing.empty()) continue;
-            if (largest == nullptr || term.spot_psd[i] > largest->spot_psd[i]) largest = &term;
+            if (!term.missing.empty()) {
+                missing += (missing.empty() ? "" : ", ") + term.title;
+            } else if (largest == nullptr || term.spot_psd[i] > largest->spot_psd[i]) {
+                largest = &term;
+            }
         }
         if (largest != nullptr) {
             page.item(fmt::format("moves by {} m/√Hz at {}{}, {:.0f} % of the power from {}",
                                   amplitude_text(noise.spot_total[i]), frequency_text(*at),
-                                  noise.complete ? "" : " (terms computed)",
+                                  missing.empty() ? "" : " without " + missing,
                                   largest->spot_psd[i] / noise.spot_total[i] * 100.0,
                                   largest->title));
         }
     }
     if (!appraisal.warnings.empty()) {
-        page.item(fmt::format("{} warning{} below", appraisal.warnings.size(),
-                              appraisal.warnings.size() == 1 ? "" : "s"),
-                  true);
+        page.item(count_text(appraisal.warnings.size(), "warning") + " below", true);
     }
 }
 
@@ -257,8 +282,11 @@ void noise_section(Page& page, const Appraisal& appraisal) {
             page.item(fmt::format("{} not computed: {}", term.title, term.missing), true);
     }
     for (const assess::Dominance& stretch : noise.dominance) {
-        page.item(fmt::format("{} is the largest term from {} to {}", stretch.title,
-                              frequency_text(stretch.from), frequency_text(stretch.to)));
+        const std::string where = stretch.from == stretch.to
+                                      ? "at " + frequency_text(stretch.from)
+                                      : fmt::format("from {} to {}", frequency_text(stretch.from),
+                                                    frequency_text(stretch.to));
+        page.item(fmt::format("{} is the largest term {}", stretch.title, where));
     }
     const std::string loudest = loudest_material(appraisal);
     if (!loudest.empty()) page.item(loudest);
@@ -325,22 +353,18 @@ std::string appraisal_text(const stack::Design& design, const materials::Library
     Page page(options.colour);
     page.heading(design.title);
     page.line("  " + design.document.name);
-    short_section(page, design, appraisal);
+    short_section(page, appraisal);
     mirror_section(page, design, appraisal);
-    const bool lower_limit = std::any_of(
-        appraisal.mirror.layers.begin(), appraisal.mirror.layers.end(),
-        [](const stack::MirrorLayer& layer) { return !layer.optical.extinction_known; });
+    const bool lower_limit = absorption_unknown(appraisal);
     for (const FaceOptics& face : appraisal.faces) {
         face_section(page, face, design.light.angle > 0.0, lower_limit);
     }
     if (appraisal.faces.size() > 1) {
         page.heading("Light, unpolarised (mean of s and p)");
-        page.row("reflectance",
-                 fraction_text(mean_over_faces(appraisal, &optics::Response::reflectance)));
-        page.row("transmittance",
-                 fraction_text(mean_over_faces(appraisal, &optics::Response::transmittance)));
-        page.row("absorptance",
-                 fraction_text(mean_over_faces(appraisal, &optics::Response::absorptance)));
+        const optics::Response mean = mean_response(appraisal);
+        page.row("reflectance", reflectance_text(mean));
+        page.row("transmittance", transmittance_text(mean));
+        page.row("absorptance", (lower_limit ? "at least " : "") + fraction_text(mean.absorptance));
     }
     power_rows(page, design, appraisal);
     material_section(page, appraisal);

@@ -91,6 +91,10 @@ struct AppraiseOptions {
 /// Says which terms of the total are missing; refuses to go on without them when that was asked
 /// for.
 void report_missing_terms(const assess::Noise& noise, bool strict) {
+    if (!noise.computed && strict) {
+        throw core::InputError("noise not computed: " + noise.missing,
+                               "refused because of --strict; nothing was written");
+    }
     for (const assess::NoiseTerm& term : noise.terms) {
         if (term.missing.empty()) continue;
         const std::string message = fmt::format("{} not computed: {}", term.title, term.missing);
@@ -138,6 +142,11 @@ int materials_command(const std::string& program, const MaterialsOptions& option
     if (!options.check.empty()) {
         core::Problems problems;
         materials::Library changed = library;
+        if (fs::path(options.check).filename() == "references.toml") {
+            throw core::InputError(
+                options.check + ": holds references, not a material",
+                "check a material file beside it; its references are read with it");
+        }
         const fs::path folder = fs::path(options.check).parent_path();
         materials::add_references(changed, folder.empty() ? "." : folder.string(), problems);
         auto material =
@@ -147,8 +156,9 @@ int materials_command(const std::string& program, const MaterialsOptions& option
             materials::check_links(changed, problems);
         }
         problems.throw_if_any();
-        options.output.write(fmt::format("{}: no problems, {} properties\n", options.check,
-                                         material->properties.size()));
+        options.output.write(
+            fmt::format("{}: no problems, {}\n", options.check,
+                        count_text(material->properties.size(), "property table")));
         return fine;
     }
     if (options.name.empty()) {

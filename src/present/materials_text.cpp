@@ -90,14 +90,24 @@ std::string beyond_text(const materials::Beyond& beyond) {
                        beyond.note.empty() ? "" : "; " + beyond.note);
 }
 
-std::string sources_text(const Entry& entry, const materials::Library& library) {
+std::string citations(const std::vector<std::string>& keys, const materials::Library& library) {
     std::string text;
-    for (const std::string& key : entry.sources) {
+    for (const std::string& key : keys) {
         const auto found = library.references.find(key);
         text += (text.empty() ? "" : "; ") +
                 (found == library.references.end() ? key : found->second.citation);
     }
-    return fmt::format("{} [{}] ({}, {})", text, entry.place, entry.nature, entry.status);
+    return text;
+}
+
+std::string sources_text(const Entry& entry, const materials::Library& library) {
+    return fmt::format("{} [{}] ({}, {})", citations(entry.sources, library), entry.place,
+                       entry.nature, entry.status);
+}
+
+std::string cold_sources_text(const materials::ColdTable& cold, const materials::Library& library) {
+    return fmt::format("{} [{}] ({}, {})", citations(cold.sources, library), cold.place,
+                       cold.nature, cold.status);
 }
 
 /// What else an index datum says: its medium, its level, its offset.
@@ -185,6 +195,7 @@ std::string property_page(const materials::Library& library, const std::string& 
                                conditions.wavelength * 1e9, conditions.frequency));
     const Entry* entry = nullptr;
     std::string analogy;
+    bool cold = false;
     if (property == materials::PropertyId::refractive_index) {
         const auto value =
             materials::index_at(library, name, conditions.wavelength, conditions.temperature);
@@ -203,12 +214,20 @@ std::string property_page(const materials::Library& library, const std::string& 
         page.row("", width_text(value.width, *about.kind));
         entry = value.entry;
         analogy = value.analogy;
+        cold = value.from_cold_table;
         if (value.frequency_extrapolated)
             page.row("", "outside the frequencies of the measurement");
     }
     if (!analogy.empty()) page.row("by analogy", analogy);
+    if (cold && entry != nullptr && entry->cold) {
+        page.row("cold table",
+                 fmt::format(
+                     "used as printed up to {:g} K, joined to the room-temperature value at {:g} K",
+                     entry->cold->join.lower, entry->cold->join.upper));
+        page.row("its source", cold_sources_text(*entry->cold, library));
+    }
     if (entry != nullptr) {
-        page.row("holds for", limits_text(*entry));
+        page.row(cold ? "room temperature" : "holds for", limits_text(*entry));
         page.row("source", sources_text(*entry, library));
     }
     return page.text();

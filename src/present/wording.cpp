@@ -56,6 +56,22 @@ std::string fraction_text(double fraction) {
     return fmt::format("{:.4g} %", fraction * 100.0);
 }
 
+std::string near_one_text(double fraction, double lack) {
+    return lack < 1e-3 ? "1 − " + fraction_text(lack) : fraction_text(fraction);
+}
+
+std::string transmittance_text(double transmittance, double logarithm, double lack) {
+    constexpr double still_ppm = 1e-12;
+    if (transmittance < still_ppm && std::isfinite(logarithm)) {
+        return fmt::format("10^{:.2f}", logarithm / std::log(10.0));
+    }
+    return near_one_text(transmittance, lack);
+}
+
+std::string count_text(std::size_t count, const std::string& noun) {
+    return fmt::format("{} {}{}", count, noun, count == 1 ? "" : "s");
+}
+
 std::string time_text(double seconds) {
     return scaled(
         seconds,
@@ -63,7 +79,9 @@ std::string time_text(double seconds) {
 }
 
 std::string frequency_text(double hertz) {
-    return scaled(hertz, {{1e9, "GHz"}, {1e6, "MHz"}, {1e3, "kHz"}, {1.0, "Hz"}, {1e-3, "mHz"}}, 4);
+    return scaled(
+        hertz,
+        {{1e9, "GHz"}, {1e6, "MHz"}, {1e3, "kHz"}, {1.0, "Hz"}, {1e-3, "mHz"}, {1e-6, "µHz"}}, 4);
 }
 
 std::string power_text(double watts) {

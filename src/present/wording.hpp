@@ -9,13 +9,18 @@
 
 namespace stillcoat::present {
 
-std::string length_text(double metres);           ///< "5.927 µm"
-std::string fraction_text(double fraction);       ///< "5.305 ppm" below 0.1 %, else "1.234 %"
-std::string time_text(double seconds);            ///< "2.862 fs"
-std::string frequency_text(double hertz);         ///< "100 Hz", "10 kHz"
-std::string power_text(double watts);             ///< "103.3 mW"
-std::string energy_text(double joules_per_watt);  ///< "12.3 fJ/W"
-std::string amplitude_text(double psd);           ///< √psd in m/√Hz, "6.107e-21"
+std::string length_text(double metres);      ///< "5.927 µm"
+std::string fraction_text(double fraction);  ///< "5.305 ppm" below 0.1 %, else "1.234 %"
+/// A fraction near 1 as "1 − 6.988 ppm", from what it lacks; any other as fraction_text.
+std::string near_one_text(double fraction, double lack);
+/// A transmittance, as a power of ten when it is very small. @param logarithm ln T
+std::string transmittance_text(double transmittance, double logarithm, double lack);
+std::string count_text(std::size_t count, const std::string& noun);  ///< "1 layer", "2 layers"
+std::string time_text(double seconds);                               ///< "2.862 fs"
+std::string frequency_text(double hertz);                            ///< "100 Hz", "10 kHz"
+std::string power_text(double watts);                                ///< "103.3 mW"
+std::string energy_text(double joules_per_watt);                     ///< "12.3 fJ/W"
+std::string amplitude_text(double psd);  ///< √psd in m/√Hz, "6.107e-21"
 std::string polarisation_text(optics::Polarisation polarisation);
 std::string width_text(const materials::Width& width, const core::QuantityKind& kind);
 

@@ -2,6 +2,7 @@
 
 #include <fmt/format.h>
 
+#include <algorithm>
 #include <cmath>
 #include <limits>
 
@@ -16,6 +17,9 @@ using core::Node;
 using core::Problems;
 using core::TableReader;
 namespace kind = core::kind;
+
+/// A length whose example is a beam radius.
+const core::QuantityKind beam_radius_kind{"length", "m", "0.42 mm"};
 
 const double infinity = std::numeric_limits<double>::infinity();
 
@@ -76,6 +80,18 @@ MirrorBody read_mirror(TableReader& document, const materials::Library& library)
     return mirror;
 }
 
+/// Powers of ten in the band, at most six from its beginning; its ends when there is none.
+std::vector<double> powers_of_ten(const Band& band) {
+    constexpr std::size_t most = 6;
+    std::vector<double> list;
+    for (int power = -300; power <= 300 && list.size() < most; ++power) {
+        const double f = std::stod(fmt::format("1e{}", power));
+        if (f >= band.from && f <= band.to) list.push_back(f);
+    }
+    if (list.empty()) list = {band.from, band.to};
+    return list;
+}
+
 Band read_band(TableReader& document) {
     Band band{1.0, 1e4, 20, {1.0, 10.0, 100.0, 1000.0}};
     if (!document.has("band")) {
@@ -88,11 +104,16 @@ Band read_band(TableReader& document) {
     band.from = reader.quantity("from", kind::frequency, core::positive("Hz")).value_or(band.from);
     band.to = reader.quantity("to", kind::frequency, core::positive("Hz")).value_or(band.to);
     band.points_per_decade = reader.whole_number("points_per_decade", 1, 1000).value_or(20);
-    const auto spot = reader.quantities("spot", kind::frequency, core::positive("Hz"));
-    if (spot) {
+    if (const auto spot = reader.quantities("spot", kind::frequency, core::positive("Hz"))) {
         band.spot = *spot;
-    } else if (!reader.has("spot")) {
-        std::erase_if(band.spot, [&band](double f) { return f < band.from || f > band.to; });
+        std::vector<double> sorted = *spot;
+        std::sort(sorted.begin(), sorted.end());
+        if (sorted.empty() || std::adjacent_find(sorted.begin(), sorted.end()) != sorted.end()) {
+            reader.problem_at("spot", "spot in [band] must hold at least one frequency, each once",
+                              "leave it out for the powers of ten in the band");
+        }
+    } else if (reader.has("from") || reader.has("to")) {
+        band.spot = powers_of_ten(band);
     }
     if (band.from >= band.to) {
         reader.problem_at("to",
@@ -123,7 +144,10 @@ void read_overrides(TableReader& document, Design& design, materials::Library& l
             continue;
         }
         materials::override_properties(library, name, entry.value, document.problems());
-        design.overridden.push_back(name);
+        std::string keys;
+        for (const core::Entry& value : entry.value.entries)
+            keys += (keys.empty() ? "" : ", ") + value.key;
+        design.overridden.push_back(fmt::format("{} of {}", keys, name));
     }
 }
 
@@ -151,7 +175,8 @@ Design read_design(core::Document document, materials::Library& library) {
     design.light = read_light(reader, library);
     if (auto beam =
             section(reader, "beam", "[beam] with radius = \"0.42 mm\" (1/e² intensity radius)")) {
-        design.beam_radius = beam->required_quantity("radius", kind::length, core::positive("m"));
+        design.beam_radius =
+            beam->required_quantity("radius", beam_radius_kind, core::positive("m"));
         beam->finish();
     }
     design.mirror = read_mirror(reader, library);

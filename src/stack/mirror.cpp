@@ -24,17 +24,14 @@ class OpticalLookup {
     OpticalConstants get(const std::string& material, const core::Node* node, Problems& problems) {
         const auto found = known_.find(material);
         if (found != known_.end()) return found->second;
-        OpticalConstants constants{numerics::Jet<double>(1.0), 0.0, false};
+        OpticalConstants constants{numerics::Jet<double>(1.0), numerics::Jet<double>(0.0), false};
         const IndexValue index = materials::index_at(library_, material, wavelength_, temperature_);
         if (index.index) {
             ledger_.use_index(material, index);
             constants.index = *index.index;
         } else {
-            problems.add(
-                node != nullptr ? node->place() : core::Place{}, index.missing,
-                fmt::format(
-                    "choose another material, or state refractive_index in [material.\"{}\"]",
-                    material));
+            problems.add(place_of(node), index.missing,
+                         hint(material, PropertyId::refractive_index));
         }
         const Value k = materials::evaluate(library_, material, PropertyId::extinction_coefficient,
                                             {temperature_, wavelength_, 1.0});
@@ -42,15 +39,38 @@ class OpticalLookup {
             library_.at(material).properties.count(PropertyId::extinction_coefficient) != 0
                 ? PropertyId::extinction_coefficient
                 : PropertyId::absorption_coefficient;
-        if (const auto number = ledger_.use(material, used_as, k)) {
-            constants.extinction = *number;
+        if (ledger_.use(material, used_as, k)) {
+            const bool per_length = used_as == PropertyId::absorption_coefficient;
+            constants.extinction = materials::with_dispersion(k, per_length, wavelength_);
             constants.extinction_known = true;
+        } else if (library_.at(material).form == "metal") {
+            // A transparent metal is no approximation of one.
+            problems.add(place_of(node), k.missing, hint(material, used_as));
         }
         known_[material] = constants;
         return constants;
     }
 
   private:
+    static core::Place place_of(const core::Node* node) {
+        return node != nullptr ? node->place() : core::Place{};
+    }
+
+    /// What to do about an unknown optical constant: an alternative that reaches there, if there is
+    /// one.
+    std::string hint(const std::string& material, PropertyId property) const {
+        const std::vector<std::string> names = materials::alternatives_that_hold(
+            library_, material, property, {temperature_, wavelength_, 1.0});
+        const std::string& key = materials::info(property).key;
+        if (!names.empty()) {
+            return fmt::format(
+                "its alternative reaches there: [material.\"{}\"] {} = {{ alternative = \"{}\" }}",
+                material, key, names.front());
+        }
+        return fmt::format("choose another material, or state {} in [material.\"{}\"]", key,
+                           material);
+    }
+
     const Library& library_;
     double wavelength_, temperature_;
     Ledger& ledger_;
@@ -109,10 +129,10 @@ numerics::Jet<double> incident_index(const Design& design, const Library& librar
     const OpticalConstants constants = lookup.get(medium, node, problems);
     // Bulk absorption over the width of a wave is nothing; a real extinction makes R and T ill
     // defined.
-    if (constants.extinction > 1e-6) {
+    if (constants.extinction.value > 1e-6) {
         problems.add(node != nullptr ? node->place() : core::Place{},
                      fmt::format("{} absorbs (k = {:.3g}): an absorbing incident medium is refused",
-                                 medium, constants.extinction),
+                                 medium, constants.extinction.value),
                      "reflectance and transmittance are not defined in it");
     }
     return constants.index;

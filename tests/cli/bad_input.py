@@ -34,27 +34,27 @@ CASES = {
 {f}:4:10: radius in [beam]: "1" has no unit
      4 | radius = "1"
        |          ^^^
-       write a length with its unit, for example "1397 nm\""""),
+       write a length with its unit, for example "0.42 mm\""""),
     "bare-number": (change('"1 mm"', "0.001"), """\
 {f}:4:10: radius in [beam] needs a length with a unit, here it is a bare number
      4 | radius = 0.001
        |          ^^^^^
-       for example radius = "1397 nm\""""),
+       for example radius = "0.42 mm\""""),
     "wrong-kind-of-unit": (change('"1 mm"', '"1 K"'), """\
 {f}:4:10: radius in [beam]: "K" is not a unit of length
      4 | radius = "1 K"
        |          ^^^^^
-       write a length with its unit, for example "1397 nm\""""),
+       write a length with its unit, for example "0.42 mm\""""),
     "unknown-unit": (change('"1 mm"', '"1 mmm"'), """\
 {f}:4:10: radius in [beam]: "mmm" is not a known unit
      4 | radius = "1 mmm"
        |          ^^^^^^^
-       write a length with its unit, for example "1397 nm"; `stillcoat units` lists the usual ones"""),
+       write a length with its unit, for example "0.42 mm"; `stillcoat units` lists the usual ones"""),
     "unknown-key": (change("radius =", "radios ="), """\
 {f}:3:1: radius is missing in [beam]
      3 | [beam]
        | ^^^^^^
-       add radius = "1397 nm"
+       add radius = "0.42 mm"
 {f}:4:1: unknown key radios in [beam]
      4 | radios = "1 mm"
        | ^^^^^^
@@ -71,7 +71,7 @@ CASES = {
        |                         ^^^^^^^^^^^^^^
        did you mean "tantala-ibs"? `stillcoat materials` lists all"""),
     "negative-thickness": (change("quarter_waves = 1.0", 'thickness = "-3 nm"'), """\
-{f}:10:52: thickness in layer 1 of the block is -3e-09 m
+{f}:10:52: thickness in layer 1 of the block is "-3 nm"
     10 | layers = [ { material = "tantala-ibs", thickness = "-3 nm" } ]
        |                                                    ^^^^^^^
        it must be greater than 0 m"""),
@@ -134,7 +134,7 @@ CASES = {
 {f}:4:10: radius in [beam]: the number in "1e400 mm" is beyond what can be held
      4 | radius = "1e400 mm"
        |          ^^^^^^^^^^
-       write a length with its unit, for example "1397 nm\""""),
+       write a length with its unit, for example "0.42 mm\""""),
     "no-block": (change("[[coating.block]]\n" + LAYER, "[coating]"), """\
 {f}:9:1: the coating has no layers
      9 | [coating]
@@ -145,12 +145,12 @@ CASES = {
     10 | layers = []
        |          ^^"""),
     "beam-radius-zero": (change('"1 mm"', '"0 mm"'), """\
-{f}:4:10: radius in [beam] is 0 m
+{f}:4:10: radius in [beam] is "0 mm"
      4 | radius = "0 mm"
        |          ^^^^^^
        it must be greater than 0 m"""),
     "right-angle": (change('"1064 nm"', '"1064 nm"\nangle = "90 deg"\npolarisation = "s"'), """\
-{f}:3:9: angle in [light] is 1.5708 rad
+{f}:3:9: angle in [light] is "90 deg"
      3 | angle = "90 deg"
        |         ^^^^^^^^
        it must be from 0 deg to less than 90 deg"""),
@@ -213,7 +213,7 @@ thermal, all coherent not computed: dn/dT of gold-film unknown: no value recorde
 {f}:4:10: radius in [beam]: "K" is not a unit of length
      4 | radius = "1 K"
        |          ^^^^^
-       write a length with its unit, for example "1397 nm"
+       write a length with its unit, for example "0.42 mm"
 {f}:8:15: temperature in [environment] needs a temperature with a unit, here it is a bare number
      8 | temperature = 295
        |               ^^^

@@ -13,6 +13,14 @@
 
 namespace stillcoat::assess {
 
+/// The field through the stack, for tables and figures.
+struct FieldSample {
+    double depth;       ///< below the face [m]
+    std::size_t layer;  ///< from 0; the number of layers: the substrate
+    double index;
+    double intensity;  ///< |E|² over the incident one
+};
+
 /// Optics of the coated face for one polarisation.
 struct FaceOptics {
     optics::Polarisation polarisation;
@@ -23,14 +31,7 @@ struct FaceOptics {
     double face_intensity;                       ///< |E|² at the face over the incident one
     std::vector<double> peak_intensity;          ///< per layer, over the incident one
     std::vector<double> peak_depth;              ///< per layer, below its top [m]
-};
-
-/// The field through the stack, for tables and figures.
-struct FieldSample {
-    double depth;       ///< below the face [m]
-    std::size_t layer;  ///< from 0; the number of layers: the substrate
-    double index;
-    double intensity;  ///< |E|² over the incident one
+    std::vector<FieldSample> field;
 };
 
 struct NoiseTerm {
@@ -70,8 +71,7 @@ struct Noise {
 
 struct Appraisal {
     stack::Mirror mirror;
-    std::vector<FaceOptics> faces;   ///< one, or s and p for unpolarised light
-    std::vector<FieldSample> field;  ///< of the first face
+    std::vector<FaceOptics> faces;  ///< one, or s and p for unpolarised light
     Noise noise;
     std::vector<std::string> warnings;   ///< what the designer should act on
     std::vector<std::string> notes;      ///< what was left out or assumed

@@ -22,6 +22,9 @@ extern const QuantityKind length, angle, temperature, frequency, power, number, 
     thermal_conductivity, specific_heat, per_kelvin, per_length, thermal_resistance;
 }
 
+/// "a length", "an angle".
+std::string with_article(const std::string& noun);
+
 /// A quantity text that cannot be read; `hint` says what would be accepted.
 struct QuantityFailure {
     std::string message;

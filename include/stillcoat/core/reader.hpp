@@ -73,7 +73,7 @@ class TableReader {
     std::optional<double> quantity_of(const Node& value, const std::string& key,
                                       const QuantityKind& kind, const Limits& limits);
     void check(double value, const Node& node, const std::string& key, const Limits& limits,
-               const std::string& unit, std::optional<double>& result);
+               std::optional<double>& result);
     const Node* find_of_type(const std::string& key, Node::Type type, const std::string& expected);
 
     const Node* table_;

@@ -6,6 +6,7 @@
 
 #include <optional>
 #include <string>
+#include <vector>
 
 #include "stillcoat/materials/library.hpp"
 #include "stillcoat/numerics/jet.hpp"
@@ -25,6 +26,7 @@ struct Value {
     const Entry* entry = nullptr;  ///< the datum that was used
     std::string analogy;           ///< how the rule beyond the data gave it; empty within the range
     Width width;
+    bool from_cold_table = false;  ///< the entry's cold table was used, at least in part
     bool frequency_extrapolated =
         false;  ///< a loss law used outside the frequencies of its measurement
 
@@ -48,6 +50,14 @@ struct IndexValue {
 };
 IndexValue index_at(const Library& library, const std::string& material, double wavelength,
                     double temperature);
+
+/// Derivatives of an extinction coefficient with respect to angular frequency, from the entry that
+/// gave its value: those of a table in wavelength, of k = aλ/4π, or none for a single number.
+numerics::Jet<double> with_dispersion(const Value& extinction, bool per_length, double wavelength);
+
+/// Names of the alternatives of a property whose data hold under these conditions.
+std::vector<std::string> alternatives_that_hold(const Library& library, const std::string& material,
+                                                PropertyId property, const Conditions& conditions);
 
 /// Linear expansion from one temperature to another, ∫α dT; the reason when α is unknown on the
 /// way.

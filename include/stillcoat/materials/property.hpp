@@ -60,7 +60,11 @@ struct WidthSpan {
 
 struct Interval {
     double lower, upper;
-    bool contains(double x) const { return x >= lower && x <= upper; }
+    /// Ends included; "0.4 µm" and 400 nm differ by a rounding, which must not decide.
+    bool contains(double x) const {
+        constexpr double rounding = 1e-12;
+        return x >= lower * (1.0 - rounding) && x <= upper * (1.0 + rounding);
+    }
 };
 
 struct Scalar {

@@ -58,7 +58,8 @@ struct Design {
     double temperature;  ///< [K]
     Band band;
     Coating coating;
-    std::vector<std::string> overridden;  ///< materials whose values the file replaces
+    std::vector<std::string>
+        overridden;  ///< "loss_angle of tantala-ibs": values that the file replaces
 };
 
 /// Reads a design; values of [material] tables replace those of `library`.

@@ -18,8 +18,8 @@ namespace stillcoat::stack {
 
 /// A material's optical constants at the operating point.
 struct OpticalConstants {
-    numerics::Jet<double> index;  ///< in vacuum, with d/dω [s] and d²/dω² [s²]
-    double extinction;            ///< k; 0 when not known
+    numerics::Jet<double> index;       ///< in vacuum, with d/dω [s] and d²/dω² [s²]
+    numerics::Jet<double> extinction;  ///< k with its derivatives; 0 when not known
     bool extinction_known;
 };
 
