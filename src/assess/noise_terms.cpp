@@ -66,7 +66,7 @@ std::vector<NoiseTerm> NoiseModel::comparisons() const {
         named("coating_coherent", "coating thermo-optic, coherent", heat, refraction_missing_),
         named("bare_substrate_thermo_elastic", "substrate thermo-elastic, bare",
               "Cerdonio et al., Phys. Rev. D 63, 082003 (2001)", substrate_thermal_.missing),
-        named("classic_thermo_optic", "classic closed form of the same",
+        named("classic_thermo_optic", "coating thermo-optic, classic form",
               "Evans et al., Phys. Rev. D 78, 102003 (2008): the substrate's share at the "
               "coating's heat capacity subtracted, layer strain without substrate bending",
               refraction_missing_),
