@@ -203,7 +203,9 @@ void override_properties(Library& library, const std::string& name, const Node& 
             reader.problem_at(
                 about.key, fmt::format("{} in {} must be a table", about.key, reader.name()),
                 fmt::format("for example {} = {{ value = {}, source = \"...\" }}", about.key,
-                            pure ? "0.2" : "\"" + about.kind->example + "\""));
+                            is_loss(about.id) ? "3e-4"
+                            : pure            ? "0.2"
+                                              : "\"" + about.kind->example + "\""));
             continue;
         }
         const std::string title = fmt::format("{} of {}", about.key, name);

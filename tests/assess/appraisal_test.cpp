@@ -2,9 +2,11 @@
 
 #include <gtest/gtest.h>
 
+#include <algorithm>
 #include <cmath>
 #include <numeric>
 
+#include "stillcoat/core/constants.hpp"
 #include "stillcoat/noise/coating_brownian.hpp"
 #include "stillcoat/noise/substrate.hpp"
 #include "support/written_design.hpp"
@@ -140,6 +142,47 @@ TEST(Appraisal, SaysThatAbsorptionIsNotStatedInsteadOfCountingItAsZero) {
     ASSERT_EQ(result.warnings.size(), 1u);
     EXPECT_EQ(result.warnings[0].rfind("absorption of tantala-ibs at 1064 nm is not stated", 0),
               0u);
+}
+
+TEST(Appraisal, WarnsWhereHeatCrossesTheWholeMirrorWithinAPeriod) {
+    std::string cold =
+        mirror_text(quarter_wave_pairs, "", "wavelength = \"1550 nm\"", "silicon", "20 K");
+    cold.replace(cold.find("\"silicon\""), 9,
+                 "\"silicon\"\ndiameter = \"26 cm\"\nthickness = \"14 cm\"");
+    const assess::Appraisal result = appraised(cold);
+    const auto found = std::find_if(
+        result.warnings.begin(), result.warnings.end(), [](const std::string& warning) {
+            return warning.find("heat crosses the whole mirror") != std::string::npos;
+        });
+    EXPECT_NE(found, result.warnings.end());
+}
+
+TEST(Appraisal, SaysOfAnAntireflectionCoatingThatItsNoiseIsThatOfTheReflectedRemainder) {
+    const assess::Appraisal result =
+        appraised(mirror_text("[[coating.block]]\nlayers = [ { material = "
+                              "\"magnesium-fluoride-ibs\", quarter_waves = 1 } ]\n",
+                              "", "wavelength = \"1064 nm\"", "sapphire"));
+    ASSERT_LT(result.faces[0].response.reflectance, 0.01);
+    EXPECT_EQ(result.warnings.at(0).rfind("only ", 0), 0u) << result.warnings[0];
+}
+
+/// The delay of a metal needs the dispersion of both n and k: against differences of its own phase.
+TEST(Appraisal, GroupDelayOfGoldFollowsItsPhase) {
+    const auto phase_at = [](double nanometres) {
+        return appraised(mirror_text("[[coating.block]]\nlayers = [ { material = \"gold-film\", "
+                                     "thickness = \"500 nm\" } ]\n",
+                                     "", "wavelength = \"" + std::to_string(nanometres) + " nm\""))
+            .faces[0]
+            .phase.value();
+    };
+    const auto omega = [](double nanometres) {
+        return 2.0 * core::pi * core::speed_of_light / (nanometres * 1e-9);
+    };
+    const double h = 0.5;
+    const double difference =
+        (phase_at(1270.0 - h).reflection_phase - phase_at(1270.0 + h).reflection_phase) /
+        (omega(1270.0 - h) - omega(1270.0 + h));
+    EXPECT_NEAR(phase_at(1270.0).group_delay / difference, 1.0, 1e-4);
 }
 
 TEST(Appraisal, OfASiliconMirrorHasNoExpansionNoiseWhereSiliconDoesNotExpand) {

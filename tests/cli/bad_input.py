@@ -175,6 +175,26 @@ CASES = {
     "property-unknown-and-strict": (change("tantala-ibs", "gold-film"), """\
 thermal, all coherent not computed: dn/dT of gold-film unknown: no value recorded; give it in [material."gold-film"]
        refused because of --strict; nothing was written""", ["appraise", "design.toml", "--strict", "--out", "result.txt"]),
+    "strict-off-normal": (change('"1064 nm"', '"1064 nm"\nangle = "10 deg"\npolarisation = "s"'), """\
+noise not computed: noise is computed for normal incidence only; the optics hold at this angle
+       refused because of --strict; nothing was written""",
+                          ["appraise", "design.toml", "--strict", "--out", "result.txt"]),
+    "metal-without-absorption": (change("tantala-ibs", "gold-film").replace('"295 K"', '"124 K"') +
+                                 '[material.gold-film]\nrefractive_index = { value = 0.2, source = "x" }\n', """\
+{f}:10:25: extinction coefficient of gold-film at 124 K unknown (its data hold for 283–313 K)
+    10 | layers = [ { material = "gold-film", quarter_waves = 1.0 } ]
+       |                         ^^^^^^^^^^^
+       choose another material, or state extinction_coefficient in [material."gold-film"]"""),
+    "override-not-a-table": (GOOD + "[material.tantala-ibs]\nloss_angle = 3e-4\n", """\
+{f}:12:14: loss_angle in [material."tantala-ibs"] must be a table
+    12 | loss_angle = 3e-4
+       |              ^^^^
+       for example loss_angle = { value = 3e-4, source = "..." }"""),
+    "spot-twice": (GOOD + '[band]\nspot = ["1 Hz", "1 Hz"]\n', """\
+{f}:12:8: spot in [band] must hold at least one frequency, each once
+    12 | spot = ["1 Hz", "1 Hz"]
+       |        ^^^^^^^^^^^^^^^^
+       leave it out for the powers of ten in the band"""),
     "two-losses": (GOOD + '[material.tantala-ibs]\nloss_angle = { value = 1e-4, source = "x" }\n'
                    'loss_angle_bulk = { value = 1e-4, source = "x" }\n', """\
 {f}:13:1: loss_angle_bulk and loss_angle in [material."tantala-ibs"] contradict each other

@@ -47,6 +47,38 @@ TEST(Design, KeepsTheDefaultSpotsInsideItsBand) {
     EXPECT_EQ(design.band.spot, (std::vector<double>{10.0, 100.0}));
 }
 
+TEST(Design, QuotesPowersOfTenOfItsOwnBand) {
+    const auto design = test::read_design(mirror_text(quarter_wave_pairs,
+                                                      "[band]\nfrom = \"1 mHz\"\nto = \"1 Hz\"\n"))
+                            .design;
+    EXPECT_EQ(design.band.spot, (std::vector<double>{1e-3, 1e-2, 1e-1, 1.0}));
+}
+
+TEST(Design, TakesAWavelengthAtTheEndOfARangeInAnyUnit) {
+    for (const char* wavelength : {"400 nm", "0.4 um", "0.0004 mm", "4000 angstrom"}) {
+        const auto read = test::read_design(mirror_text(
+            quarter_wave_pairs, "", std::string("wavelength = \"") + wavelength + "\""));
+        stack::Ledger ledger;
+        EXPECT_NO_THROW(stack::at_operating_point(read.design, read.library, ledger)) << wavelength;
+    }
+}
+
+TEST(Design, NamesTheAlternativeThatReachesWhereTheDefaultDoesNot) {
+    const auto read = test::read_design(
+        mirror_text(quarter_wave_pairs, "", "wavelength = \"1550 nm\"", "titania-silica-glass"));
+    stack::Ledger ledger;
+    try {
+        stack::at_operating_point(read.design, read.library, ledger);
+        FAIL() << "the default index ends at 1100 nm";
+    } catch (const core::InputError& error) {
+        EXPECT_NE(std::string(error.what())
+                      .find("[material.\"titania-silica-glass\"] refractive_index = { "
+                            "alternative = \"silica-shape\" }"),
+                  std::string::npos)
+            << error.what();
+    }
+}
+
 TEST(Design, ValuesReplaceThoseOfTheLibraryAndTheTwoFormsOfLossExcludeEachOther) {
     const auto both = test::read_design(mirror_text(
         quarter_wave_pairs,
