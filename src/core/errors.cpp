@@ -3,6 +3,7 @@
 #include <fmt/format.h>
 
 #include <algorithm>
+#include <cmath>
 #include <numeric>
 
 namespace stillcoat::core {
@@ -94,8 +95,12 @@ void Problems::throw_if_any() const {
 
 DomainError::DomainError(const std::string& quantity, double value, const std::string& unit,
                          const std::string& allowed, const std::string& source)
-    : std::domain_error(fmt::format("{} is {:.6g}{}{}; allowed: {} ({})", quantity, value,
-                                    unit.empty() ? "" : " ", unit, allowed, source)) {}
+    : std::domain_error(
+          std::isfinite(value)
+              ? fmt::format("{} is {:.6g}{}{}; allowed: {} ({})", quantity, value,
+                            unit.empty() ? "" : " ", unit, allowed, source)
+              : fmt::format("{} is beyond what can be computed with; allowed: {} ({})", quantity,
+                            allowed, source)) {}
 
 std::optional<std::string> nearest_spelling(const std::string& word,
                                             const std::vector<std::string>& candidates) {

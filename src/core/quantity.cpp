@@ -62,10 +62,17 @@ std::string example_of(const QuantityKind& kind) {
                        kind.example);
 }
 
+constexpr std::size_t longest_unit = 60;
+
 /// A unit text begins with a letter, a sign such as %, or "1/"; numbers in front were taken
 /// already.
 bool looks_like_unit(const std::string& unit) {
-    if (unit.empty()) return false;
+    // UDUNITS-2 also reads origins ("K from 3") and logarithms ("lg(re 1 K)"), which no unit here
+    // is, and its parser recurses, so that a very long text is refused.
+    if (unit.empty() || unit.size() > longest_unit) return false;
+    for (const char* word : {" from ", " after ", " since ", " ref ", "(re ", "(re:"}) {
+        if (unit.find(word) != std::string::npos) return false;
+    }
     const auto first = static_cast<unsigned char>(unit.front());
     if (unit.rfind("1/", 0) == 0) return unit.find('@') == std::string::npos;
     return (std::isalpha(first) != 0 || first == '%' || first >= 0x80) &&
@@ -79,7 +86,10 @@ QuantityReading converted(double number, const std::string& unit_text, const Qua
     }
     if (kind.si_unit == "1" && unit_text == "dB") return {true, std::pow(10.0, number / 10.0), {}};
     if (!looks_like_unit(unit_text)) {
-        return failed(fmt::format("\"{}\" is not a unit", unit_text), example_of(kind));
+        const bool brief = unit_text.size() <= longest_unit;
+        return failed(brief ? fmt::format("\"{}\" is not a unit", unit_text)
+                            : "a text this long is not a unit",
+                      example_of(kind));
     }
     const Unit from(ut_parse(unit_system(), unit_text.c_str(), UT_UTF8));
     if (!from)
@@ -122,7 +132,7 @@ QuantityReading read_quantity(const std::string& text, const QuantityKind& kind)
         return failed(fmt::format("an empty text where {} is expected", with_article(kind.name)),
                       example_of(kind));
     }
-    if (text[begin] == '+') ++begin;
+    if (text[begin] == '+' && begin + 1 < text.size() && text[begin + 1] != '-') ++begin;
     double number = 0.0;
     const char* const end = text.data() + text.size();
     const auto [after, error] = std::from_chars(text.data() + begin, end, number);

@@ -131,6 +131,11 @@ Beyond read_beyond(const Node& node, const std::string& name, const EntryContext
         beyond.debye_temperature =
             reader.number("debye_temperature_K", core::positive("K")).value_or(1.0);
     }
+    if (beyond.rule == Beyond::Rule::heat_capacity &&
+        context.property == PropertyId::specific_heat) {
+        reader.problem_at("rule", "rule in " + name + " follows itself",
+                          "take debye, follows or constant for the specific heat");
+    }
     if (beyond.rule == Beyond::Rule::follows) beyond.material = reader.required_text("material");
     beyond.temperature = read_interval(reader, "temperature_K", 1.0);
     beyond.wavelength = read_interval(reader, "wavelength_nm", 1e-9);
@@ -155,6 +160,12 @@ ColdTable read_cold(const Node& node, const std::string& name, const EntryContex
     TableReader reader(node, name, problems);
     ColdTable cold;
     cold.table = read_temperature_table(reader, context.property, 1.0);
+    for (const char* key : {"joins_K", "nature", "status"}) {
+        if (!reader.has(key))
+            reader.missing(key, key[0] == 'j'   ? "[200, 295]"
+                                : key[0] == 'n' ? "\"measured\""
+                                                : "\"seen\"");
+    }
     cold.join = read_interval(reader, "joins_K", 1.0).value_or(Interval{200.0, 295.0});
     cold.width = read_width(reader, 1.0).value_or(Width{});
     cold.width_spans = read_width_spans(reader, 1.0);

@@ -13,6 +13,9 @@
 namespace stillcoat::materials {
 namespace {
 
+/// References from material to material that are followed; more is taken for a circle.
+constexpr int longest_chain = 4;
+
 Value missing(std::string reason) {
     Value value;
     value.missing = std::move(reason);
@@ -52,11 +55,20 @@ std::string holds_words(const Entry& entry) {
 
 class Evaluator {
   public:
-    Evaluator(const Library& library, const Conditions& conditions)
-        : library_(library), conditions_(conditions) {}
+    Evaluator(const Library& library, const Conditions& conditions, int depth = 0)
+        : library_(library), conditions_(conditions), depth_(depth) {}
 
     Value property(const std::string& material, PropertyId id) const {
-        const Material& substance = library_.at(material);
+        if (depth_ > longest_chain) {
+            return missing(fmt::format("{} of {} refers to other materials in a circle",
+                                       info(id).title, material));
+        }
+        const auto known = library_.materials.find(material);
+        if (known == library_.materials.end()) {
+            return missing(
+                fmt::format("{} refers to the unknown material \"{}\"", info(id).title, material));
+        }
+        const Material& substance = known->second;
         const auto found = substance.properties.find(id);
         if (found == substance.properties.end()) {
             const auto reason = substance.unknown.find(id);
@@ -113,7 +125,8 @@ class Evaluator {
             value.frequency_extrapolated =
                 datum.frequency && !datum.frequency->contains(conditions_.frequency);
         } else if (const auto* same = std::get_if<SameAs>(&datum.curve)) {
-            Value other = Evaluator(library_, at(temperature)).property(same->material, id);
+            Value other =
+                Evaluator(library_, at(temperature), depth_ + 1).property(same->material, id);
             if (other.number) *other.number *= same->factor;
             if (other.analogy.empty()) {
                 other.analogy = fmt::format("{} of {} at {:g} K: as {}", info(id).title, material,
@@ -179,7 +192,7 @@ class Evaluator {
         const double reference = warm ? t : reference_temperature(datum, t);
         Conditions known = conditions_;
         if (!lit) known.wavelength = nearest(*datum.wavelength, conditions_.wavelength);
-        Value value = Evaluator(library_, known).plain(datum, material, id, reference);
+        Value value = Evaluator(library_, known, depth_).plain(datum, material, id, reference);
         if (!value.number) return value;
         double factor = 1.0;
         std::string how = "held constant";
@@ -191,8 +204,9 @@ class Evaluator {
             const bool own = rule.rule == Beyond::Rule::heat_capacity;
             const PropertyId other_id = own ? PropertyId::specific_heat : id;
             const std::string& other = own ? material : rule.material;
-            const Value here = Evaluator(library_, at(t)).property(other, other_id);
-            const Value there = Evaluator(library_, at(reference)).property(other, other_id);
+            const Value here = Evaluator(library_, at(t), depth_ + 1).property(other, other_id);
+            const Value there =
+                Evaluator(library_, at(reference), depth_ + 1).property(other, other_id);
             if (!here.number) return here;
             if (!there.number) return there;
             factor = *here.number / *there.number;
@@ -209,6 +223,7 @@ class Evaluator {
 
     const Library& library_;
     Conditions conditions_;
+    int depth_;  // references followed so far
 };
 
 /// "α of X at 280 K: how" becomes "α of X from 295 K to 124 K: how".
@@ -286,10 +301,21 @@ Value evaluate(const Library& library, const std::string& material, PropertyId p
     return evaluator.property(material, property);
 }
 
-IndexValue index_at(const Library& library, const std::string& material, double wavelength,
-                    double temperature) {
+namespace {
+
+IndexValue index_through(const Library& library, const std::string& material, double wavelength,
+                         double temperature, int depth) {
     IndexValue result;
-    const Material& substance = library.at(material);
+    const auto known = library.materials.find(material);
+    if (known == library.materials.end() || depth > longest_chain) {
+        result.missing =
+            known == library.materials.end()
+                ? fmt::format("refractive index refers to the unknown material \"{}\"", material)
+                : fmt::format("refractive index of {} refers to other materials in a circle",
+                              material);
+        return result;
+    }
+    const Material& substance = known->second;
     const auto found = substance.properties.find(PropertyId::refractive_index);
     if (found == substance.properties.end()) {
         const auto reason = substance.unknown.find(PropertyId::refractive_index);
@@ -300,12 +326,12 @@ IndexValue index_at(const Library& library, const std::string& material, double 
     }
     const Entry& entry = found->second.entry;
     if (const auto* same = std::get_if<SameAs>(&entry.curve)) {
-        result = index_at(library, same->material, wavelength, temperature);
+        result = index_through(library, same->material, wavelength, temperature, depth + 1);
         if (!result.index) return result;
         numerics::Jet<double> factor(same->factor);
         if (entry.rescaled_to) {
-            const auto there = index_at(library, same->material, entry.rescaled_to->first,
-                                        entry.at_temperature.value_or(temperature));
+            const auto there = index_through(library, same->material, entry.rescaled_to->first,
+                                             entry.at_temperature.value_or(temperature), depth + 1);
             if (!there.index) return there;
             factor = numerics::Jet<double>(entry.rescaled_to->second / there.index->value);
         }
@@ -355,6 +381,13 @@ IndexValue index_at(const Library& library, const std::string& material, double 
         result.missing = change.missing + ", so its index at the operating temperature is unknown";
     }
     return result;
+}
+
+}  // namespace
+
+IndexValue index_at(const Library& library, const std::string& material, double wavelength,
+                    double temperature) {
+    return index_through(library, material, wavelength, temperature, 0);
 }
 
 numerics::Jet<double> with_dispersion(const Value& extinction, bool per_length, double wavelength) {

@@ -174,7 +174,11 @@ void check_links(const Library& library, core::Problems& problems) {
     for (const auto& [name, material] : library.materials) {
         for (const auto& [id, property] : material.properties) {
             const core::Place place{material.file, 0, 0, 1, ""};
-            for (const std::string& link : links_of(property.entry)) {
+            std::vector<std::string> links = links_of(property.entry);
+            for (const Alternative& other : property.alternatives) {
+                for (std::string& link : links_of(other.entry)) links.push_back(std::move(link));
+            }
+            for (const std::string& link : links) {
                 if (library.materials.count(link) != 0) continue;
                 const auto near = core::nearest_spelling(link, library.names());
                 problems.add(
@@ -233,6 +237,19 @@ void override_properties(Library& library, const std::string& name, const Node& 
                                   fmt::format("{} has no alternative \"{}\"", title, wanted),
                                   names.empty() ? "it has none"
                                                 : fmt::format("known: {}", fmt::join(names, ", ")));
+            }
+        }
+        const auto changed = material.properties.find(about.id);
+        if (changed != material.properties.end()) {
+            for (const std::string& link : links_of(changed->second.entry)) {
+                if (library.materials.count(link) != 0) continue;
+                const auto near = core::nearest_spelling(link, library.names());
+                reader.problem_at(
+                    about.key, fmt::format("{} refers to the unknown material \"{}\"", title, link),
+                    near ? fmt::format("did you mean \"{}\"?", *near) : "");
+            }
+            if (runs_in_circle(library, name, about.id, 0)) {
+                reader.problem_at(about.key, title + " refers to other materials in a circle");
             }
         }
         material.unknown.erase(about.id);

@@ -251,7 +251,8 @@ std::string appraisal_json(const stack::Design& design, const materials::Library
         {"uncertainty", {{"propagated", false}, {"inputs_without_uncertainty", appraisal.fixed}}},
         {"sources", sources(library, appraisal, design.temperature)},
     };
-    return document.dump(2) + "\n";
+    // A file name need not be UTF-8, a JSON document must be.
+    return document.dump(2, ' ', false, Json::error_handler_t::replace) + "\n";
 }
 
 std::string appraisal_csv(const Appraisal& appraisal, CsvTable table) {

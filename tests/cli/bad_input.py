@@ -195,6 +195,25 @@ noise not computed: noise is computed for normal incidence only; the optics hold
     12 | spot = ["1 Hz", "1 Hz"]
        |        ^^^^^^^^^^^^^^^^
        leave it out for the powers of ten in the band"""),
+    "refers-to-itself": (GOOD + '[material.tantala-ibs]\ndensity = { same_as = "tantala-ibs", source = "x" }\n', """\
+{f}:12:11: density of tantala-ibs refers to other materials in a circle
+    12 | density = { same_as = "tantala-ibs", source = "x" }
+       |           ^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^"""),
+    "refers-to-nothing": (GOOD + '[material.tantala-ibs]\ndensity = { same_as = "silica-ib", source = "x" }\n', """\
+{f}:12:11: density of tantala-ibs refers to the unknown material "silica-ib"
+    12 | density = { same_as = "silica-ib", source = "x" }
+       |           ^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^
+       did you mean "silica-ibs"?"""),
+    "unit-with-an-origin": (change('"295 K"', '"295 K from 3"'), """\
+{f}:8:15: temperature in [environment]: "K from 3" is not a unit
+     8 | temperature = "295 K from 3"
+       |               ^^^^^^^^^^^^^^
+       write a temperature with its unit, for example "295 K\""""),
+    "unit-without-end": (change('"1 mm"', '"1 m' + "(" * 100_000 + '"'), """\
+{f}:4:10: radius in [beam]: a text this long is not a unit
+     4 | radius = "1 m""" + "(" * 87 + """
+       |          """ + "^" * 91 + """
+       write a length with its unit, for example "0.42 mm\""""),
     "two-losses": (GOOD + '[material.tantala-ibs]\nloss_angle = { value = 1e-4, source = "x" }\n'
                    'loss_angle_bulk = { value = 1e-4, source = "x" }\n', """\
 {f}:13:1: loss_angle_bulk and loss_angle in [material."tantala-ibs"] contradict each other
