@@ -216,7 +216,8 @@ std::string noise_csv(const assess::Noise& result) {
     for (std::size_t i = 0; i < result.frequencies.size(); ++i) {
         text += fmt::format("{},{}", result.frequencies[i], result.total[i]);
         for (const assess::NoiseTerm* item : columns) {
-            text += "," + (item->psd.empty() ? "" : fmt::format("{}", item->psd[i]));
+            text += ",";
+            if (!item->psd.empty()) text += fmt::format("{}", item->psd[i]);
         }
         text += "\n";
     }
