@@ -1,6 +1,6 @@
 # The Debian packages that Stillcoat needs; sourced by examples/run.sh and tests/run.sh.
 build_packages="g++ cmake ninja-build libfmt-dev libtoml11-dev libboost-dev nlohmann-json3-dev
-libcli11-dev libudunits2-dev libudunits2-data"
+libcli11-dev libudunits2-dev libudunits2-data gnuplot-nox"
 test_packages="libgtest-dev clang-tidy python3 python3-mpmath python3-numpy python3-scipy python3-jsonschema git"
 
 # Installs what is missing of the named packages; as root, or with sudo as a user.

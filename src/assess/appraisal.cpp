@@ -7,7 +7,9 @@
 #include <set>
 
 #include "assess/noise_assembly.hpp"
+#include "assess/noise_validity.hpp"
 #include "assess/optical_view.hpp"
+#include "stillcoat/core/constants.hpp"
 #include "stillcoat/optics/standing_wave.hpp"
 
 namespace stillcoat::assess {
@@ -32,13 +34,15 @@ std::vector<FieldSample> field_profile(const stack::Mirror& mirror,
     return field;
 }
 
-FaceOptics face_optics(const stack::Mirror& mirror, const optics::Illumination& light) {
-    FaceOptics face{};
+Face face_optics(const stack::Mirror& mirror, const optics::Illumination& light) {
+    Face face{};
     face.polarisation = light.polarisation;
     const optics::OpticalStack stack = optical_stack(mirror);
     face.response = optics::response(stack, light);
-    if (face.response.reflectance > 0.0) {
-        face.phase = optics::phase_response(dispersive_stack(mirror), light);
+    const optics::PhaseResponse phase = optics::phase_response(dispersive_stack(mirror), light);
+    if (std::isfinite(phase.reflection_phase) && std::isfinite(phase.group_delay) &&
+        std::isfinite(phase.group_delay_dispersion)) {
+        face.phase = phase;
     }
     const optics::StandingWave wave = optics::standing_wave(stack, light);
     face.stored_energy = optics::stored_energy(wave);
@@ -106,6 +110,62 @@ void warn_of_weak_reflection(const Appraisal& appraisal, std::vector<std::string
         reflectance * 100.0));
 }
 
+/// Values that the file replaces for a material that this mirror does not hold.
+void warn_of_unused_overrides(const stack::Design& design,
+                              const std::vector<stack::Ledger::Use>& uses,
+                              std::vector<std::string>& warnings) {
+    for (const stack::Override& values : design.overrides) {
+        const bool used = std::any_of(uses.begin(), uses.end(), [&](const auto& use) {
+            return std::any_of(use.bases.begin(), use.bases.end(), [&](const auto& basis) {
+                return basis.material == values.material;
+            });
+        });
+        if (used) continue;
+        warnings.push_back(fmt::format("[material.\"{}\"] changes nothing: the mirror holds no {}",
+                                       values.material, values.material));
+    }
+}
+
+/// A value of the design file that states no range is taken as it is wherever the mirror works.
+void note_unlimited_values(const std::vector<stack::Ledger::Use>& uses,
+                           std::vector<std::string>& notes) {
+    std::vector<std::string> list;
+    for (const stack::Ledger::Use& use : uses) {
+        for (const materials::Basis& basis : use.bases) {
+            if (!basis.entry->from_design || basis.entry->temperature) continue;
+            const std::string what =
+                fmt::format("{} of {}", materials::info(basis.property).title, basis.material);
+            if (std::find(list.begin(), list.end(), what) == list.end()) list.push_back(what);
+        }
+    }
+    if (list.empty()) return;
+    notes.push_back(fmt::format(
+        "values of the design file that state no range are used at the operating temperature as "
+        "they stand: {}",
+        fmt::join(list, ", ")));
+}
+
+/// Data whose file calls them an analogy, also where their range holds.
+void add_analogous_data(const std::vector<stack::Ledger::Use>& uses,
+                        std::vector<std::string>& analogies) {
+    for (const stack::Ledger::Use& use : uses) {
+        for (const materials::Basis& basis : use.bases) {
+            const bool said = basis.part == materials::Part::rule ||
+                              materials::nature_of(basis) != "by analogy" ||
+                              std::holds_alternative<materials::SameAs>(basis.entry->curve);
+            if (said) continue;
+            const std::string text = fmt::format(
+                "{} of {}: {}", materials::info(basis.property).title, basis.material,
+                basis.entry->note.empty() ? "by analogy in its source" : basis.entry->note);
+            const bool known =
+                std::any_of(analogies.begin(), analogies.end(), [&](const std::string& other) {
+                    return other.rfind(text.substr(0, text.find(": ")), 0) == 0;
+                });
+            if (!known) analogies.push_back(text);
+        }
+    }
+}
+
 /// Near a zero of the substrate's expansion its thermo-elastic noise is known no better than that
 /// zero.
 void note_uncertain_expansion(const stack::Design& design, const materials::Library& library,
@@ -122,10 +182,25 @@ void note_uncertain_expansion(const stack::Design& design, const materials::Libr
                     design.mirror.substrate, *alpha.number, alpha.width.value));
 }
 
+std::optional<LightLoad> light_load(const stack::Design& design, const Appraisal& appraisal) {
+    if (!design.light.power) return std::nullopt;
+    const double w = design.beam_radius;
+    double peak = 0.0;
+    for (const Face& face : appraisal.faces) {
+        for (const double intensity : face.peak_intensity) peak = std::max(peak, intensity);
+    }
+    LightLoad load{};
+    load.power = *design.light.power;
+    load.absorbed = load.power * mean_over_faces(appraisal, &optics::Response::absorptance);
+    load.centre_intensity = 2.0 * load.power / (core::pi * w * w);
+    load.largest_intensity = load.centre_intensity * peak;
+    return load;
+}
+
 std::vector<std::string> without_uncertainty(const std::vector<stack::Ledger::Use>& uses) {
     std::vector<std::string> list;
     for (const stack::Ledger::Use& use : uses) {
-        if (use.entry->width.form != materials::Width::Form::not_stated) continue;
+        if (use.width.form != materials::Width::Form::not_stated) continue;
         list.push_back(fmt::format("{} of {}", materials::info(use.property).title, use.material));
     }
     return list;
@@ -134,11 +209,18 @@ std::vector<std::string> without_uncertainty(const std::vector<stack::Ledger::Us
 std::vector<std::string> extrapolated_losses(const std::vector<stack::Ledger::Use>& uses) {
     std::vector<std::string> list;
     for (const stack::Ledger::Use& use : uses) {
-        if (!use.frequency_extrapolated || !use.entry->frequency) continue;
-        list.push_back(fmt::format(
-            "{} of {} was measured from {:g} Hz to {:g} Hz; its power law is used outside too",
-            materials::info(use.property).title, use.material, use.entry->frequency->lower,
-            use.entry->frequency->upper));
+        if (!use.frequency_extrapolated) continue;
+        for (const materials::Basis& basis : use.bases) {
+            const auto measured = materials::frequencies_of(basis);
+            if (!measured) continue;
+            const std::string where =
+                measured->lower == measured->upper
+                    ? fmt::format("at {:g} Hz", measured->lower)
+                    : fmt::format("from {:g} Hz to {:g} Hz", measured->lower, measured->upper);
+            list.push_back(fmt::format("{} of {} was measured {}; it is used outside too",
+                                       materials::info(basis.property).title, basis.material,
+                                       where));
+        }
     }
     return list;
 }
@@ -147,7 +229,7 @@ std::vector<std::string> extrapolated_losses(const std::vector<stack::Ledger::Us
 
 double mean_over_faces(const Appraisal& appraisal, double optics::Response::*member) {
     double sum = 0.0;
-    for (const FaceOptics& face : appraisal.faces) sum += face.response.*member;
+    for (const Face& face : appraisal.faces) sum += face.response.*member;
     return sum / static_cast<double>(appraisal.faces.size());
 }
 
@@ -165,21 +247,30 @@ Appraisal appraise(const stack::Design& design, const materials::Library& librar
         result.faces.push_back(face_optics(
             result.mirror, {design.light.wavelength, design.light.angle, polarisation}));
     }
+    result.light_load = light_load(design, result);
     warn_of_unknown_absorption(result.mirror, design.light.wavelength, result.warnings);
     note_metals(result.mirror, result.notes);
     note_shift(design, result.mirror, result.notes);
+    warn_of_beam(design, result.warnings);
     if (design.light.angle == 0.0) {
         warn_of_weak_reflection(result, result.warnings);
         note_uncertain_expansion(design, library, result.notes);
-        result.noise = assemble_noise(design, library, result.mirror, ledger, result.warnings);
-    } else {
-        result.noise.missing =
-            "noise is computed for normal incidence only; the optics hold at this angle";
     }
+    for (Face& face : result.faces) {
+        if (design.light.angle == 0.0) {
+            face.noise = assemble_noise(design, library, result.mirror, ledger, result.warnings);
+        } else {
+            face.noise.missing =
+                "noise is computed for normal incidence only; the optics hold at this angle";
+        }
+    }
+    warn_of_unused_overrides(design, ledger.uses(), result.warnings);
+    note_unlimited_values(ledger.uses(), result.notes);
     for (const std::string& note : ledger.notes()) result.notes.push_back(note);
     for (std::string& note : extrapolated_losses(ledger.uses()))
         result.notes.push_back(std::move(note));
     result.analogies = ledger.analogies();
+    add_analogous_data(ledger.uses(), result.analogies);
     result.fixed = without_uncertainty(ledger.uses());
     result.uses = ledger.uses();
     return result;

@@ -4,6 +4,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <optional>
 
 #include "assess/noise_model.hpp"
 #include "assess/noise_validity.hpp"
@@ -16,16 +17,16 @@ void fill(NoiseModel& model, Noise& noise, const std::vector<double>& list,
           std::vector<double> NoiseTerm::*target, std::vector<double> Noise::*total) {
     for (const double frequency : list) {
         const std::map<std::string, double> spectra = model.spectra_at(frequency);
-        double sum = 0.0;
+        std::optional<double> sum;  // absent when no term of the total is known
         for (std::vector<NoiseTerm>* group : {&noise.terms, &noise.comparisons}) {
             for (NoiseTerm& term : *group) {
                 if (!term.missing.empty()) continue;
                 const double value = spectra.at(term.key);
                 (term.*target).push_back(value);
-                if (term.in_total) sum += value;
+                if (term.in_total) sum = sum.value_or(0.0) + value;
             }
         }
-        (noise.*total).push_back(sum);
+        if (sum) (noise.*total).push_back(*sum);
     }
 }
 

@@ -20,6 +20,12 @@ NoiseModel::NoiseModel(const stack::Design& design, const materials::Library& li
     prepare_substrate();
 }
 
+std::vector<double> NoiseModel::every_frequency() const {
+    std::vector<double> list = stack::frequencies(design_.band);
+    list.insert(list.end(), design_.band.spot.begin(), design_.band.spot.end());
+    return list;
+}
+
 void NoiseModel::read_weights() {
     const optics::StandingWave wave = optics::standing_wave(
         optical_stack(mirror_), {design_.light.wavelength, 0.0, optics::Polarisation::s});
@@ -28,7 +34,7 @@ void NoiseModel::read_weights() {
         p12.push_back(inputs_.photoelastic(layer.material, PropertyId::photoelastic_p12));
     }
     face_weights_ = optics::surface_readout(wave.stack);
-    if (std::norm(wave.reflection) > 0.0) {
+    if (std::abs(wave.reflection) >= optics::smallest_reflection) {
         weights_ = optics::readout_weights(wave, p12);
     } else {
         weights_missing_ = "the face reflects nothing, so no phase is read";
@@ -51,7 +57,10 @@ void NoiseModel::prepare_brownian() {
         noise::thin_film_energies(*substrate_elastic_.value, elastic_layers_, design_.beam_radius);
     face_energies_ =
         noise::thin_film_energies(*substrate_elastic_.value, at_face, design_.beam_radius);
-    layer_losses(design_.band.from);
+    // A law may leave the admissible losses somewhere in the band.
+    for (const double frequency : every_frequency()) {
+        if (layer_losses(frequency).empty()) return;
+    }
 }
 
 void NoiseModel::prepare_thermal() {
@@ -79,9 +88,11 @@ void NoiseModel::prepare_substrate() {
             noise::half_space_energy(*substrate_elastic_.value, design_.beam_radius);
     }
     substrate_energy_.missing = substrate_elastic_.missing;
-    const Wanted<noise::Loss> loss = inputs_.loss(name, design_.band.from);
-    substrate_brownian_missing_ =
-        !substrate_energy_.value ? substrate_energy_.missing : loss.missing;
+    substrate_brownian_missing_ = substrate_energy_.missing;
+    for (const double frequency : every_frequency()) {
+        if (!substrate_brownian_missing_.empty()) break;
+        substrate_brownian_missing_ = inputs_.loss(name, frequency).missing;
+    }
     if (design_.mirror.thickness) {
         mass_ = inputs_.property(name, PropertyId::density);
         const double radius = *design_.mirror.diameter / 2.0;

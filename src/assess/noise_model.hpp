@@ -33,6 +33,8 @@ class NoiseModel {
     void prepare_brownian();
     void prepare_thermal();
     void prepare_substrate();
+    /// Those of the band and the spots.
+    std::vector<double> every_frequency() const;
     /// Losses of all layers at a frequency; the reason in brownian_missing_ when one is unknown.
     std::vector<noise::Loss> layer_losses(double frequency);
     void add_coating_brownian(double frequency, std::map<std::string, double>& spectra);

@@ -46,12 +46,6 @@ void warn_of_small_beam(const stack::Design& design, const stack::Mirror& mirror
                         "other materials differ, soft films on a stiff substrate even in sign",
                         ratio, bulk_slope * ratio * 100.0, shear_slope * ratio * 100.0));
     }
-    const double divergence = design.light.wavelength / (core::pi * design.beam_radius);
-    constexpr double largest_divergence = 0.05;
-    if (divergence > largest_divergence) {
-        warnings.push_back(fmt::format(
-            "the beam diverges by {:.2g} rad: a plane wave no longer describes it", divergence));
-    }
 }
 
 void warn_of_finite_mirror(const stack::Design& design, const noise::Elastic& substrate,
@@ -86,11 +80,6 @@ void warn_of_finite_mirror(const stack::Design& design, const noise::Elastic& su
                             percent_change(estimate.coating_brownian)));
         }
     }
-    const double missed = std::exp(-2.0 * std::pow(radius / w, 2));
-    if (missed > 1e-6) {
-        warnings.push_back(
-            fmt::format("{:.2g} % of the light power misses the mirror's face", missed * 100.0));
-    }
 }
 
 /// Below this frequency heat crosses the whole mirror within a period, which a half-space does not
@@ -107,7 +96,38 @@ void warn_of_heat_in_mirror(const stack::Design& design, const noise::ThermalMat
         frequency));
 }
 
+/// Share of a Gaussian beam's power outside a circle of radius R that it meets at an angle: the
+/// footprint w/cosθ × w is averaged over the direction.
+double missed_power(double beam_radius, double angle, double mirror_radius) {
+    constexpr int directions = 180;
+    double sum = 0.0;
+    for (int i = 0; i < directions; ++i) {
+        const double phi = core::pi * (i + 0.5) / directions;
+        const double stretch = std::cos(angle) * std::cos(phi);
+        const double u = stretch * stretch + std::sin(phi) * std::sin(phi);
+        sum += std::cos(angle) / u * std::exp(-2.0 * u * std::pow(mirror_radius / beam_radius, 2));
+    }
+    return sum / directions;
+}
+
 }  // namespace
+
+void warn_of_beam(const stack::Design& design, std::vector<std::string>& warnings) {
+    const double divergence = design.light.wavelength / (core::pi * design.beam_radius);
+    constexpr double largest_divergence = 0.05;
+    if (divergence > largest_divergence) {
+        warnings.push_back(fmt::format(
+            "the beam diverges by {:.2g} rad: a plane wave no longer describes it", divergence));
+    }
+    if (!design.mirror.diameter) return;
+    const double missed =
+        missed_power(design.beam_radius, design.light.angle, *design.mirror.diameter / 2.0);
+    constexpr double worth_saying = 1e-6;
+    if (missed > worth_saying) {
+        warnings.push_back(
+            fmt::format("{:.2g} % of the light power misses the mirror's face", missed * 100.0));
+    }
+}
 
 void warn_of_validity(const stack::Design& design, const stack::Mirror& mirror,
                       const NoiseModel& model, std::vector<std::string>& warnings) {

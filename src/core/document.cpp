@@ -74,29 +74,48 @@ Node to_node(const toml::value& value) {
     return node;
 }
 
-/// Refuses nesting that the recursive parser could not survive. Looks at brackets and dots outside
-/// texts and comments; multi-line texts are skipped as the pairs of quotes that they are made of.
+/// Index of the last character of the text that begins at `begin`, as TOML 1.0 delimits it; the end
+/// of the document when it is not closed. A text of one line ends at the line's end at the latest.
+std::size_t end_of_text(const std::string& document, std::size_t begin) {
+    const char quote = document[begin];
+    const bool escapes = quote == '"';
+    const std::string triple(3, quote);
+    const bool many_lines = document.compare(begin, 3, triple) == 0;
+    std::size_t i = begin + (many_lines ? 3 : 1);
+    for (; i < document.size(); ++i) {
+        if (document[i] == '\\' && escapes) {
+            ++i;
+        } else if (!many_lines && (document[i] == quote || document[i] == '\n')) {
+            return i;
+        } else if (many_lines && document.compare(i, 3, triple) == 0) {
+            // Up to two quotes may stand directly before the closing three.
+            i += 2;
+            while (i + 1 < document.size() && document[i + 1] == quote) ++i;
+            return i;
+        }
+    }
+    return document.size();
+}
+
+/// Refuses nesting that the recursive parser could not survive: counts brackets and dots outside
+/// texts and comments.
 void check_nesting(const std::string& text, const std::string& name) {
     int depth = 0;
     int dots = 0;
     int line = 1;
-    char quote = 0;
     for (std::size_t i = 0; i < text.size(); ++i) {
         const char c = text[i];
-        if (c == '\n') ++line;
-        if (quote != 0) {
-            if (c == '\\' && quote == '"')
-                ++i;
-            else if (c == quote || (c == '\n' && depth == 0))
-                quote = 0;
+        if (c == '"' || c == '\'' || c == '#') {
+            const std::size_t end = c == '#' ? text.find('\n', i) : end_of_text(text, i);
+            if (end >= text.size()) return;
+            line += static_cast<int>(std::count(text.begin() + static_cast<std::ptrdiff_t>(i),
+                                                text.begin() + static_cast<std::ptrdiff_t>(end) + 1,
+                                                '\n'));
+            if (text[end] == '\n') dots = 0;
+            i = end;
             continue;
         }
-        if (c == '"' || c == '\'') quote = c;
-        if (c == '#') {
-            i = text.find('\n', i);
-            if (i == std::string::npos) break;
-            ++line;
-        }
+        if (c == '\n') ++line;
         if (c == '[' || c == '{') ++depth;
         if (c == ']' || c == '}') --depth;
         if (c == '.') ++dots;
@@ -176,7 +195,10 @@ std::string read_text_file(const std::string& path) {
     namespace fs = std::filesystem;
     std::error_code error;
     const fs::file_status status = fs::status(path, error);
-    if (!fs::exists(status)) throw InputError(path + ": no such file", "check the name and folder");
+    if (status.type() == fs::file_type::not_found) {
+        throw InputError(path + ": no such file", "check the name and folder");
+    }
+    if (error) throw InputError(path + ": " + error.message(), "check the name and folder");
     if (fs::is_directory(status)) throw InputError(path + ": is a directory", "give a file");
     if (fs::is_regular_file(status)) {
         const std::uintmax_t size = fs::file_size(path, error);

@@ -4,7 +4,9 @@
 
 #include <algorithm>
 #include <cmath>
+#include <map>
 #include <numeric>
+#include <tuple>
 
 namespace stillcoat::core {
 namespace {
@@ -36,25 +38,37 @@ std::string excerpt(const Place& place) {
            (static_cast<unsigned char>(shown.back()) & 0x80) != 0) {
         shown.pop_back();
     }
-    std::replace(shown.begin(), shown.end(), '\t', ' ');
     const int before = width_of(place.text.substr(first, mark - first));
     const int room = std::max(1, static_cast<int>(shown.size()) - (mark - first));
     const int marked = std::clamp(place.length, 1, room);
-    return fmt::format("\n {:>5} | {}\n       | {}{}", place.line, shown, std::string(before, ' '),
-                       std::string(marked, '^'));
+    return fmt::format("\n {:>5} | {}\n       | {}{}", place.line, printable(shown),
+                       std::string(before, ' '), std::string(marked, '^'));
 }
 
 }  // namespace
 
+std::string printable(const std::string& text) {
+    constexpr unsigned char escape_lead = 0xC2;  // U+0080 … U+009F are C2 80 … C2 9F in UTF-8
+    std::string shown = text;
+    for (std::size_t i = 0; i < shown.size(); ++i) {
+        const auto byte = static_cast<unsigned char>(shown[i]);
+        const bool second_set = byte == escape_lead && i + 1 < shown.size() &&
+                                static_cast<unsigned char>(shown[i + 1]) < 0xA0;
+        if (second_set) shown.replace(i, 2, "?");
+        if (byte < 0x20 || byte == 0x7F) shown[i] = byte == '\t' ? ' ' : '?';
+    }
+    return shown;
+}
+
 std::string describe(const Problem& problem) {
     std::string text;
-    if (!problem.place.file.empty()) text = where(problem.place) + ": ";
-    text += problem.message + excerpt(problem.place);
+    if (!problem.place.file.empty()) text = printable(where(problem.place)) + ": ";
+    text += printable(problem.message) + excerpt(problem.place);
     if (problem.other_place) {
-        text += fmt::format("\n       and here: {}", where(*problem.other_place));
+        text += fmt::format("\n       and here: {}", printable(where(*problem.other_place)));
         text += excerpt(*problem.other_place);
     }
-    if (!problem.hint.empty()) text += "\n       " + problem.hint;
+    if (!problem.hint.empty()) text += "\n       " + printable(problem.hint);
     return text;
 }
 
@@ -77,19 +91,36 @@ InputError::InputError(std::vector<Problem> problems)
 InputError::InputError(const std::string& message, const std::string& hint)
     : InputError(std::vector<Problem>{Problem{Place{}, message, hint, std::nullopt}}) {}
 
-void Problems::add(Problem problem) { list_.push_back(std::move(problem)); }
+void Problems::add(Problem problem) {
+    list_.push_back(std::move(problem));
+    if (list_.size() < enough_problems) return;
+    list_.push_back(Problem{Place{},
+                            fmt::format("reading stopped after {} problems", enough_problems),
+                            "mend these first", std::nullopt});
+    throw_if_any();
+}
 
 void Problems::add(const Place& place, std::string message, std::string hint) {
-    list_.push_back(Problem{place, std::move(message), std::move(hint), std::nullopt});
+    add(Problem{place, std::move(message), std::move(hint), std::nullopt});
 }
 
 void Problems::throw_if_any() const {
     if (list_.empty()) return;
+    // Files stay in the order in which they were read; within a file problems go by their place.
+    std::map<std::string, std::size_t> turn;
+    for (const Problem& problem : list_) turn.emplace(problem.place.file, turn.size());
     std::vector<Problem> sorted = list_;
-    std::stable_sort(sorted.begin(), sorted.end(), [](const Problem& a, const Problem& b) {
-        if (a.place.file != b.place.file) return false;
-        return std::pair(a.place.line, a.place.column) < std::pair(b.place.line, b.place.column);
+    std::stable_sort(sorted.begin(), sorted.end(), [&turn](const Problem& a, const Problem& b) {
+        return std::tuple(turn[a.place.file], a.place.line, a.place.column) <
+               std::tuple(turn[b.place.file], b.place.line, b.place.column);
     });
+    // The same value may be asked for on several ways.
+    const auto repeats =
+        std::unique(sorted.begin(), sorted.end(), [](const Problem& a, const Problem& b) {
+            return std::tie(a.place.file, a.place.line, a.place.column, a.message) ==
+                   std::tie(b.place.file, b.place.line, b.place.column, b.message);
+        });
+    sorted.erase(repeats, sorted.end());
     throw InputError(std::move(sorted));
 }
 

@@ -16,53 +16,46 @@
 namespace stillcoat::core {
 namespace {
 
-[[noreturn]] void fail(const std::string& path, const std::string& what, int error) {
-    throw InputError(fmt::format("{}: {}: {}", path, what, std::strerror(error)),
-                     "nothing was written");
+[[noreturn]] void fail(const std::string& path, const std::string& what, int error,
+                       const std::string& hint = "nothing was written") {
+    throw InputError(fmt::format("{}: {}: {}", path, what, std::strerror(error)), hint);
 }
 
-void write_all(int descriptor, const std::string& content, const std::string& path) {
+void write_all(int descriptor, const std::string& content, const std::string& path,
+               const std::string& hint) {
     std::size_t done = 0;
     while (done < content.size()) {
         const ssize_t count = ::write(descriptor, content.data() + done, content.size() - done);
         if (count < 0 && errno == EINTR) continue;
-        if (count < 0) fail(path, "cannot write", errno);
+        if (count < 0) fail(path, "cannot write", errno, hint);
         done += static_cast<std::size_t>(count);
     }
 }
 
-}  // namespace
+/// Writes into a stream that cannot be replaced by renaming: standard output, a pipe, a device.
+void write_stream(int descriptor, const std::string& content, const std::string& path) {
+    write_all(descriptor, content, path, "what it holds now is not complete");
+}
 
-void write_file(const std::string& path, const std::string& content, Existing existing) {
-    if (path == "-") {
-        write_all(STDOUT_FILENO, content, "standard output");
-        return;
-    }
-    namespace fs = std::filesystem;
-    std::error_code ignored;
-    const bool exists = fs::exists(path, ignored);
-    if (exists && fs::is_directory(path, ignored)) {
-        throw InputError(path + ": is a directory", "give a file name");
-    }
-    if (exists && existing == Existing::keep) {
-        throw InputError(path + ": exists already and was kept", "give --replace to overwrite it");
-    }
-    if (exists && !fs::is_regular_file(path, ignored)) {
-        // A device or pipe cannot be replaced by renaming; it takes the text as it is.
-        const int descriptor = ::open(path.c_str(), O_WRONLY | O_CLOEXEC);
-        if (descriptor < 0) fail(path, "cannot open", errno);
-        write_all(descriptor, content, path);
-        if (::close(descriptor) != 0) fail(path, "cannot close", errno);
-        return;
-    }
+/// The permissions of a new file: those of the one that it replaces, or the usual ones.
+mode_t permissions(const std::string& path) {
+    struct stat status {};
+    if (::stat(path.c_str(), &status) == 0) return status.st_mode & 07777;
+    const mode_t mask = ::umask(0);
+    ::umask(mask);
+    return 0666 & ~mask;
+}
+
+void write_beside_and_rename(const std::string& path, const std::string& content,
+                             Existing existing) {
     std::string temporary = path + ".XXXXXX";
     const int descriptor = ::mkstemp(temporary.data());
     if (descriptor < 0) fail(path, "cannot create", errno);
     try {
-        write_all(descriptor, content, path);
-        const mode_t mask = ::umask(0);
-        ::umask(mask);
-        if (::fchmod(descriptor, 0666 & ~mask) != 0) fail(path, "cannot set permissions", errno);
+        write_all(descriptor, content, path, "nothing was written");
+        if (::fchmod(descriptor, permissions(path)) != 0) {
+            fail(path, "cannot set permissions", errno);
+        }
         if (::fsync(descriptor) != 0) fail(path, "cannot write", errno);
         if (::close(descriptor) != 0) fail(path, "cannot close", errno);
         // link() fails where rename() would replace a file that appeared in the meantime.
@@ -76,6 +69,42 @@ void write_file(const std::string& path, const std::string& content, Existing ex
         ::unlink(temporary.c_str());
         throw;
     }
+}
+
+}  // namespace
+
+void write_file(const std::string& path, const std::string& content, Existing existing) {
+    if (path == "-") {
+        write_stream(STDOUT_FILENO, content, "standard output");
+        return;
+    }
+    namespace fs = std::filesystem;
+    std::error_code ignored;
+    const bool exists = fs::exists(path, ignored);
+    const bool link = fs::is_symlink(fs::symlink_status(path, ignored));
+    if (link && !exists) {
+        throw InputError(path + ": is a link to a file that is not there", "give a file name");
+    }
+    if (!exists) {
+        write_beside_and_rename(path, content, existing);
+        return;
+    }
+    if (fs::is_directory(path, ignored)) {
+        throw InputError(path + ": is a directory", "give a file name");
+    }
+    if (existing == Existing::keep) {
+        throw InputError(path + ": exists already and was kept", "give --replace to overwrite it");
+    }
+    if (::access(path.c_str(), W_OK) != 0) fail(path, "cannot replace", errno);
+    if (fs::is_regular_file(path, ignored)) {
+        // A link stays a link: what it points to is replaced.
+        write_beside_and_rename(fs::canonical(path).string(), content, existing);
+        return;
+    }
+    const int descriptor = ::open(path.c_str(), O_WRONLY | O_CLOEXEC);
+    if (descriptor < 0) fail(path, "cannot open", errno);
+    write_stream(descriptor, content, path);
+    if (::close(descriptor) != 0) fail(path, "cannot close", errno);
 }
 
 }  // namespace stillcoat::core

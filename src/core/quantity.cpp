@@ -3,9 +3,11 @@
 #include <fmt/format.h>
 #include <udunits2.h>
 
+#include <array>
 #include <charconv>
 #include <cmath>
 #include <memory>
+#include <string_view>
 
 namespace stillcoat::core {
 
@@ -22,7 +24,6 @@ const QuantityKind thermal_conductivity{"thermal conductivity", "W/(m K)", "1.38
 const QuantityKind specific_heat{"specific heat", "J/(kg K)", "740 J/(kg K)"};
 const QuantityKind per_kelvin{"change per kelvin", "1/K", "5.1e-7 1/K"};
 const QuantityKind per_length{"absorption per length", "1/m", "1e-4 1/m"};
-const QuantityKind thermal_resistance{"thermal boundary resistance", "m2 K/W", "2e-8 m2 K/W"};
 }  // namespace kind
 
 namespace {
@@ -79,8 +80,16 @@ bool looks_like_unit(const std::string& unit) {
            unit.find_first_of("@,;\n") == std::string::npos;
 }
 
-QuantityReading converted(double number, const std::string& unit_text, const QuantityKind& kind,
-                          bool difference) {
+/// Whether a unit is made of radians. UDUNITS-2 takes the radian for a pure number, so that "rpm"
+/// or "cycle/s" would be read as hertz times 2π and "5 %" as an angle.
+bool holds_radians(const ut_unit* unit) {
+    std::array<char, 256> words{};
+    const int length = ut_format(unit, words.data(), words.size(), UT_ASCII | UT_DEFINITION);
+    if (length < 0 || static_cast<std::size_t>(length) >= words.size()) return true;
+    return std::string_view(words.data()).find("rad") != std::string_view::npos;
+}
+
+QuantityReading converted(double number, const std::string& unit_text, const QuantityKind& kind) {
     if (!std::isfinite(number)) {
         return failed(fmt::format("{} is not a finite number", kind.name), example_of(kind));
     }
@@ -97,13 +106,11 @@ QuantityReading converted(double number, const std::string& unit_text, const Qua
                       example_of(kind) + "; `stillcoat units` lists the usual ones");
     const Unit to(ut_parse(unit_system(), kind.si_unit.c_str(), UT_UTF8));
     const Converter converter(ut_get_converter(from.get(), to.get()));
-    // UDUNITS-2 takes hertz and radian per second as one dimension; cycles are what is meant here.
-    if (!converter || (kind.si_unit == "Hz" && unit_text.find("rad") != std::string::npos)) {
+    if (!converter || holds_radians(from.get()) != holds_radians(to.get())) {
         return failed(fmt::format("\"{}\" is not a unit of {}", unit_text, kind.name),
                       example_of(kind));
     }
-    double value = cv_convert_double(converter.get(), number);
-    if (difference) value -= cv_convert_double(converter.get(), 0.0);
+    const double value = cv_convert_double(converter.get(), number);
     if (!std::isfinite(value)) {
         return failed(fmt::format("{} is not a finite number", kind.name), example_of(kind));
     }
@@ -119,11 +126,7 @@ std::string with_article(const std::string& noun) {
 }
 
 QuantityReading read_quantity(double number, const std::string& unit, const QuantityKind& kind) {
-    return converted(number, unit, kind, false);
-}
-
-QuantityReading read_difference(double number, const std::string& unit, const QuantityKind& kind) {
-    return converted(number, unit, kind, true);
+    return converted(number, unit, kind);
 }
 
 QuantityReading read_quantity(const std::string& text, const QuantityKind& kind) {
@@ -150,7 +153,7 @@ QuantityReading read_quantity(const std::string& text, const QuantityKind& kind)
         if (kind.si_unit == "1" && std::isfinite(number)) return {true, number, {}};
         return failed(fmt::format("\"{}\" has no unit", text), example_of(kind));
     }
-    return converted(number, unit, kind, false);
+    return converted(number, unit, kind);
 }
 
 const std::vector<UsualUnits>& usual_units() {

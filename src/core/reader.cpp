@@ -28,6 +28,12 @@ std::string in_quotes(const std::vector<std::string>& words) {
 
 }  // namespace
 
+bool Limits::admit(double value) const {
+    const bool above = value > lower || (lower_itself && value == lower);
+    const bool below = value < upper || (upper_itself && value == upper);
+    return std::isfinite(value) && above && below;
+}
+
 Limits any_value() {
     const double infinity = std::numeric_limits<double>::infinity();
     return {-infinity, infinity, false, false, "finite"};
@@ -36,6 +42,11 @@ Limits any_value() {
 Limits positive(const std::string& unit) {
     return {0.0, std::numeric_limits<double>::infinity(), false, false,
             unit.empty() ? "greater than 0" : "greater than 0 " + unit};
+}
+
+Limits between(double lower, double upper, const std::string& unit) {
+    return {lower, upper, true, true,
+            fmt::format("from {:g} {} to {:g} {}", lower, unit, upper, unit)};
 }
 
 TableReader::TableReader(const Node& table, std::string name, Problems& problems)
@@ -62,9 +73,7 @@ const Node* TableReader::find_of_type(const std::string& key, Node::Type type,
 
 void TableReader::check(double value, const Node& node, const std::string& key,
                         const Limits& limits, std::optional<double>& result) {
-    const bool above = value > limits.lower || (limits.lower_itself && value == limits.lower);
-    const bool below = value < limits.upper || (limits.upper_itself && value == limits.upper);
-    if (std::isfinite(value) && above && below) {
+    if (limits.admit(value)) {
         result = value;
         return;
     }

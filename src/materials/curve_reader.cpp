@@ -4,6 +4,10 @@
 
 #include <algorithm>
 #include <cmath>
+#include <limits>
+#include <optional>
+
+#include "materials/curve_csv.hpp"
 
 namespace stillcoat::materials {
 namespace {
@@ -69,28 +73,50 @@ std::pair<std::vector<double>, std::vector<double>> read_table(TableReader& read
     return {x, y};
 }
 
-/// A list of numbers, or a list of lists of numbers (polynomials in T).
-std::vector<std::vector<double>> read_polynomials(TableReader& reader, const std::string& key,
-                                                  bool& nested) {
+/// One coefficient list of a polynomial in T; empty with a problem at the list itself.
+std::vector<double> read_polynomial(TableReader& reader, const std::string& key, const Node& row,
+                                    std::size_t position) {
+    const std::string where = fmt::format("entry {} of {} in {}", position, key, reader.name());
+    if (row.type != Node::Type::array) {
+        reader.problems().add(
+            row.place(), fmt::format("{} is {}, others are lists", where, describe(row.type)),
+            "all must be numbers, or all lists of the coefficients of a polynomial in T/K");
+        return {};
+    }
+    if (row.items.empty()) {
+        reader.problems().add(row.place(), where + " is empty",
+                              "it must hold the coefficients of a polynomial in T/K");
+        return {};
+    }
+    std::vector<double> coefficients;
+    for (const Node& item : row.items) {
+        if (!item.is_number() || !std::isfinite(item.number)) {
+            reader.problems().add(item.place(), where + " must hold finite numbers only");
+            return {};
+        }
+        coefficients.push_back(item.number);
+    }
+    return coefficients;
+}
+
+/// A list of numbers, or a list of lists of numbers (polynomials in T); absent with a problem.
+std::optional<std::vector<std::vector<double>>> read_polynomials(TableReader& reader,
+                                                                 const std::string& key,
+                                                                 bool& nested) {
     std::vector<std::vector<double>> list;
     const Node* node = reader.find(key);
-    nested = node != nullptr && !node->items.empty() && node->items[0].type == Node::Type::array;
+    nested = node != nullptr &&
+             std::any_of(node->items.begin(), node->items.end(),
+                         [](const Node& item) { return item.type == Node::Type::array; });
     if (!nested) {
-        for (double number : reader.numbers(key).value_or(std::vector<double>{}))
-            list.push_back({number});
+        const auto numbers = reader.numbers(key);
+        if (node != nullptr && !numbers) return std::nullopt;
+        for (double number : numbers.value_or(std::vector<double>{})) list.push_back({number});
         return list;
     }
     for (const Node& row : node->items) {
-        std::vector<double> coefficients;
-        for (const Node& item : row.items) {
-            if (!item.is_number() || !std::isfinite(item.number)) {
-                reader.problem_at(key,
-                                  key + " in " + reader.name() + " must hold finite numbers only");
-                return {};
-            }
-            coefficients.push_back(item.number);
-        }
-        list.push_back(std::move(coefficients));
+        list.push_back(read_polynomial(reader, key, row, list.size() + 1));
+        if (list.back().empty()) return std::nullopt;
     }
     return list;
 }
@@ -99,10 +125,13 @@ Sellmeier read_sellmeier(TableReader& reader) {
     Sellmeier formula{};
     bool nested_strength = false;
     bool nested_resonance = false;
-    formula.strength = read_polynomials(reader, "sellmeier_strength", nested_strength);
-    formula.resonance = read_polynomials(reader, "sellmeier_resonance_um", nested_resonance);
+    const auto strength = read_polynomials(reader, "sellmeier_strength", nested_strength);
+    const auto resonance = read_polynomials(reader, "sellmeier_resonance_um", nested_resonance);
     formula.constant = reader.number("sellmeier_constant", core::any_value()).value_or(0.0);
     formula.depends_on_temperature = nested_strength || nested_resonance;
+    if (!strength || !resonance) return formula;
+    formula.strength = *strength;
+    formula.resonance = *resonance;
     if (formula.strength.empty() || formula.strength.size() != formula.resonance.size()) {
         reader.problem_at("sellmeier_strength",
                           fmt::format("{} has {} strengths and {} resonances", reader.name(),
@@ -140,15 +169,21 @@ Curve read_scalar(TableReader& reader, const EntryContext& context, double& scal
 void read_index_keys(TableReader& reader, const EntryContext& context, Entry& entry) {
     entry.offset = reader.number("offset", core::any_value()).value_or(0.0);
     const bool follows = std::holds_alternative<SameAs>(entry.curve);
-    if (!reader.has("medium") && !context.from_design && !follows)
-        reader.missing("medium", "\"vacuum\"");
-    const std::string medium =
-        reader.choice("medium", {"vacuum", "air", "unstated"}).value_or("vacuum");
+    // A measured curve means nothing without it, in a design file too.
+    const bool from_csv = reader.has("wavelength_csv");
+    const bool needed = !context.from_design || from_csv;
+    if (!reader.has("medium") && needed && !follows) reader.missing("medium", "\"vacuum\"");
+    const std::vector<std::string> media =
+        from_csv ? std::vector<std::string>{"vacuum", "air"}
+                 : std::vector<std::string>{"vacuum", "air", "unstated"};
+    const std::string medium = reader.choice("medium", media).value_or("vacuum");
     entry.medium = medium == "air"      ? Medium::air
                    : medium == "vacuum" ? Medium::vacuum
                                         : Medium::unstated;
     if (const Node* node = reader.table("rescaled_to"); node != nullptr) {
         TableReader point(*node, "rescaled_to of " + reader.name(), reader.problems());
+        if (!point.has("wavelength_nm")) point.missing("wavelength_nm", "1064");
+        if (!point.has("value")) point.missing("value", "2.05");
         const auto wavelength = point.number("wavelength_nm", core::positive("nm"));
         const auto value = point.number("value", core::positive(""));
         if (wavelength && value) entry.rescaled_to = {*wavelength * 1e-9, *value};
@@ -163,61 +198,93 @@ TemperatureTable read_temperature_table(TableReader& reader, PropertyId property
     return {std::move(temperature), std::move(value)};
 }
 
-double read_curve(TableReader& reader, const EntryContext& context, Entry& entry) {
-    const std::vector<std::string> forms{"value",         "temperature_K",      "wavelength_nm",
-                                         "value_at_1_Hz", "sellmeier_strength", "cauchy",
-                                         "same_as"};
+namespace {
+
+const std::vector<std::string> forms{"value",         "temperature_K",      "wavelength_nm",
+                                     "value_at_1_Hz", "sellmeier_strength", "cauchy",
+                                     "same_as",       "wavelength_csv"};
+
+/// The one form that the table has; absent with a problem.
+std::optional<std::string> form_of(TableReader& reader) {
     std::vector<std::string> given;
     std::copy_if(forms.begin(), forms.end(), std::back_inserter(given),
                  [&reader](const std::string& key) { return reader.has(key); });
     if (given.empty()) {
         reader.missing("value", fmt::format("... (or one of {})", fmt::join(forms, ", ")));
-        entry.curve = Scalar{1.0};
-        return 1.0;
+        return std::nullopt;
     }
     if (given.size() > 1) {
         reader.contradiction(given[0], given[1], "a property has one datum: keep one of the two");
         for (const std::string& key : forms) reader.find(key);
-        entry.curve = Scalar{1.0};
-        return 1.0;
+        return std::nullopt;
     }
+    return given[0];
+}
+
+PowerLaw read_power_law(TableReader& reader, PropertyId property) {
+    const double at_1_hz = reader.number("value_at_1_Hz", info(property).limits).value_or(0.0);
+    if (!reader.has("exponent")) reader.missing("exponent", "0.0");
+    const double exponent = reader.number("exponent", core::any_value()).value_or(0.0);
+    const double infinity = std::numeric_limits<double>::infinity();
+    return {at_1_hz, exponent,
+            reader.number("exponent_uncertainty", {0.0, infinity, true, false, "0 or greater"})};
+}
+
+Cauchy read_cauchy(TableReader& reader) {
+    const auto c = reader.numbers("cauchy");
+    if (c && c->size() == 3) return {(*c)[0], (*c)[1], (*c)[2]};
+    if (c) reader.problem_at("cauchy", "cauchy in " + reader.name() + " needs [A, B, C]");
+    return {1.0, 0.0, 0.0};
+}
+
+/// The datum in its form; `scale` becomes the factor from its unit to SI.
+Curve read_form(TableReader& reader, const EntryContext& context, const std::string& form,
+                double& scale) {
     const PropertyInfo& about = info(context.property);
-    const bool optical = context.property == PropertyId::refractive_index ||
-                         context.property == PropertyId::extinction_coefficient;
-    double scale = 1.0;
-    const std::string& form = given[0];
-    if (form == "value") {
-        entry.curve = read_scalar(reader, context, scale);
-    } else if (form == "temperature_K") {
+    const bool index = context.property == PropertyId::refractive_index;
+    const bool optical = index || context.property == PropertyId::extinction_coefficient;
+    if (form == "value") return read_scalar(reader, context, scale);
+    if (form == "temperature_K") {
         scale = unit_scale(reader, *about.kind, true);
-        entry.curve = read_temperature_table(reader, context.property, scale);
-    } else if (form == "wavelength_nm" && optical) {
+        return read_temperature_table(reader, context.property, scale);
+    }
+    if (form == "wavelength_nm" && optical) {
         auto [nanometres, value] = read_table(reader, form, context.property, 1.0);
         for (double& x : nanometres) x *= 1e-9;
-        entry.curve = WavelengthTable{std::move(nanometres), std::move(value)};
-    } else if (form == "value_at_1_Hz" && is_loss(context.property)) {
-        const double at_1_hz = reader.number(form, about.limits).value_or(0.0);
-        if (!reader.has("exponent")) reader.missing("exponent", "0.0");
-        entry.curve = PowerLaw{at_1_hz, reader.number("exponent", core::any_value()).value_or(0.0)};
-    } else if (form == "sellmeier_strength" && context.property == PropertyId::refractive_index) {
-        entry.curve = read_sellmeier(reader);
-    } else if (form == "cauchy" && context.property == PropertyId::refractive_index) {
-        const std::vector<double> c = reader.numbers(form).value_or(std::vector<double>{});
-        if (c.size() != 3)
-            reader.problem_at(form, "cauchy in " + reader.name() + " needs [A, B, C]");
-        entry.curve = c.size() == 3 ? Cauchy{c[0], c[1], c[2]} : Cauchy{1.0, 0.0, 0.0};
-    } else if (form == "same_as") {
-        entry.curve = SameAs{reader.required_text(form),
-                             reader.number("factor", core::positive("")).value_or(1.0)};
-    } else {
-        reader.find(form);
-        reader.problem_at(form, fmt::format("{} is no form of {}", form, about.key));
-        entry.curve = Scalar{1.0};
+        return WavelengthTable{std::move(nanometres), std::move(value)};
     }
+    if (form == "wavelength_csv" && optical) {
+        auto curve = read_curve_csv(reader, form, context.property);
+        return curve ? Curve{std::move(*curve)} : Curve{Scalar{1.0}};
+    }
+    if (form == "value_at_1_Hz" && is_loss(context.property))
+        return read_power_law(reader, context.property);
+    if (form == "sellmeier_strength" && index) return read_sellmeier(reader);
+    if (form == "cauchy" && index) return read_cauchy(reader);
+    if (form == "same_as") {
+        return SameAs{reader.required_text(form),
+                      reader.number("factor", core::positive("")).value_or(1.0)};
+    }
+    reader.find(form);
+    reader.problem_at(form, fmt::format("{} is no form of {}", form, about.key));
+    return Scalar{1.0};
+}
+
+}  // namespace
+
+double read_curve(TableReader& reader, const EntryContext& context, Entry& entry) {
+    entry.curve = Scalar{1.0};
+    const std::optional<std::string> form = form_of(reader);
+    if (!form) return 1.0;
+    double scale = 1.0;
+    entry.curve = read_form(reader, context, *form, scale);
     if (context.property == PropertyId::refractive_index) read_index_keys(reader, context, entry);
     entry.at_temperature = reader.number("at_temperature_K", core::positive("K"));
     reader.number("at_wavelength_nm", core::positive("nm"));
-    reader.number("at_frequency_Hz", core::positive("Hz"));
+    if (const auto frequency = reader.number("at_frequency_Hz", core::positive("Hz"));
+        frequency && is_loss(context.property)) {
+        entry.frequency = Interval{*frequency, *frequency};
+    }
     return scale;
 }
 

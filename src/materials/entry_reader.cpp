@@ -3,10 +3,12 @@
 #include <fmt/format.h>
 
 #include <algorithm>
-#include <cmath>
-#include <limits>
+#include <set>
 
 #include "materials/curve_reader.hpp"
+#include "materials/range_reader.hpp"
+#include "materials/width_reader.hpp"
+#include "stillcoat/materials/debye.hpp"
 
 namespace stillcoat::materials {
 namespace {
@@ -14,80 +16,26 @@ namespace {
 using core::Node;
 using core::TableReader;
 
-const double infinity = std::numeric_limits<double>::infinity();
-
-std::optional<Interval> read_interval(TableReader& reader, const std::string& key, double scale) {
-    const auto pair = reader.numbers(key);
-    if (!pair) return std::nullopt;
-    if (pair->size() != 2 || (*pair)[0] > (*pair)[1] || (*pair)[0] < 0.0) {
-        reader.problem_at(key, key + " in " + reader.name() + " must be [lower, upper]",
-                          "two numbers, the smaller first, not negative");
-        return std::nullopt;
+/// Every source must be in references.toml; the first few that are not are named.
+void check_sources(TableReader& reader, const std::vector<std::string>& sources,
+                   const Library& library) {
+    constexpr int most_named = 5;
+    int unknown = 0;
+    for (const std::string& key : sources) {
+        if (library.references.count(key) != 0) continue;
+        if (++unknown > most_named) continue;
+        std::vector<std::string> keys;
+        for (const auto& [known, reference] : library.references) keys.push_back(known);
+        const auto near = core::nearest_spelling(key, keys);
+        reader.problem_at(
+            "source",
+            fmt::format("source \"{}\" in {} is not in references.toml", key, reader.name()),
+            near ? fmt::format("did you mean \"{}\"?", *near) : "add it there");
     }
-    return Interval{(*pair)[0] * scale, (*pair)[1] * scale};
-}
-
-/// Reads the width keys; absent when the table has none.
-std::optional<Width> read_width(TableReader& reader, double unit_scale) {
-    std::optional<Width> width;
-    int stated = 0;
-    if (const Node* node = reader.find("uncertainty"); node != nullptr) {
-        ++stated;
-        if (node->type == Node::Type::text && node->text == "not stated") {
-            width = Width{};
-        } else if (node->is_number() && std::isfinite(node->number) && node->number >= 0.0) {
-            width = Width{Width::Form::absolute, node->number * unit_scale, 0.0, 0.0};
-        } else {
-            reader.problem_at("uncertainty", "uncertainty in " + reader.name() + " cannot be used",
-                              "a number in the unit of the value, 0 or greater, or \"not stated\"");
-        }
+    if (unknown > most_named) {
+        reader.problem_at("source", fmt::format("{} more sources in {} are not in references.toml",
+                                                unknown - most_named, reader.name()));
     }
-    const core::Limits not_negative{0.0, infinity, true, false, "0 or greater"};
-    if (const auto relative = reader.number("relative_uncertainty", not_negative)) {
-        ++stated;
-        width = Width{Width::Form::relative, *relative, 0.0, 0.0};
-    }
-    const core::Limits at_least_one{1.0, infinity, true, false, "1 or greater"};
-    if (const auto geometric = reader.number("geometric_sd", at_least_one)) {
-        ++stated;
-        width = Width{Width::Form::geometric, *geometric, 0.0, 0.0};
-    }
-    if (const auto ends = reader.numbers("uniform")) {
-        ++stated;
-        if (ends->size() == 2 && (*ends)[0] < (*ends)[1]) {
-            width =
-                Width{Width::Form::uniform, 0.0, (*ends)[0] * unit_scale, (*ends)[1] * unit_scale};
-        } else {
-            reader.problem_at("uniform", "uniform in " + reader.name() + " must be [lower, upper]");
-        }
-    }
-    if (stated > 1) {
-        reader.problem_at("uncertainty", reader.name() + " states its width more than once",
-                          "keep one of uncertainty, relative_uncertainty, geometric_sd, uniform");
-    }
-    return width;
-}
-
-std::vector<WidthSpan> read_width_spans(TableReader& reader, double unit_scale) {
-    std::vector<WidthSpan> spans;
-    for (const Node* node : reader.tables("uncertainty_below")) {
-        TableReader span(*node, "uncertainty_below of " + reader.name(), reader.problems());
-        const auto limit = span.number("temperature_K", core::positive("K"));
-        if (!limit) span.missing("temperature_K", "20");
-        if (const auto width = read_width(span, unit_scale); width && limit) {
-            spans.push_back({0.0, *limit, *width});
-        }
-        span.finish();
-    }
-    for (const Node* node : reader.tables("uncertainty_between")) {
-        TableReader span(*node, "uncertainty_between of " + reader.name(), reader.problems());
-        const auto limits = read_interval(span, "temperature_K", 1.0);
-        if (const auto width = read_width(span, unit_scale); width && limits) {
-            spans.push_back({limits->lower, limits->upper, *width});
-        }
-        span.finish();
-    }
-    return spans;
 }
 
 std::vector<std::string> read_sources(TableReader& reader, const EntryContext& context) {
@@ -100,16 +48,7 @@ std::vector<std::string> read_sources(TableReader& reader, const EntryContext& c
         return {};
     }
     std::vector<std::string> sources = reader.texts("source").value_or(std::vector<std::string>{});
-    std::vector<std::string> keys;
-    for (const auto& [key, reference] : context.library->references) keys.push_back(key);
-    for (const std::string& key : sources) {
-        if (context.library->references.count(key) != 0) continue;
-        const auto near = core::nearest_spelling(key, keys);
-        reader.problem_at(
-            "source",
-            fmt::format("source \"{}\" in {} is not in references.toml", key, reader.name()),
-            near ? fmt::format("did you mean \"{}\"?", *near) : "add it there");
-    }
+    check_sources(reader, sources, *context.library);
     if (sources.empty() && reader.has("source")) {
         reader.problem_at("source", "source in " + reader.name() + " is empty",
                           "name at least one key of references.toml");
@@ -128,8 +67,12 @@ Beyond read_beyond(const Node& node, const std::string& name, const EntryContext
     beyond.rule = static_cast<Beyond::Rule>(at);
     if (beyond.rule == Beyond::Rule::debye) {
         if (!reader.has("debye_temperature_K")) reader.missing("debye_temperature_K", "470");
+        const core::Limits solids{lowest_debye_temperature, highest_debye_temperature, true, true,
+                                  fmt::format("from {:g} K to {:g} K: caesium has 38 K, diamond "
+                                              "2230 K",
+                                              lowest_debye_temperature, highest_debye_temperature)};
         beyond.debye_temperature =
-            reader.number("debye_temperature_K", core::positive("K")).value_or(1.0);
+            reader.number("debye_temperature_K", solids).value_or(lowest_debye_temperature);
     }
     if (beyond.rule == Beyond::Rule::heat_capacity &&
         context.property == PropertyId::specific_heat) {
@@ -156,7 +99,7 @@ const std::vector<std::string> natures{"measured", "fit", "estimate", "derived",
 const std::vector<std::string> statuses{"seen", "from memory", "derived"};
 
 ColdTable read_cold(const Node& node, const std::string& name, const EntryContext& context,
-                    core::Problems& problems) {
+                    const Entry& entry, core::Problems& problems) {
     TableReader reader(node, name, problems);
     ColdTable cold;
     cold.table = read_temperature_table(reader, context.property, 1.0);
@@ -177,60 +120,9 @@ ColdTable read_cold(const Node& node, const std::string& name, const EntryContex
     cold.status = reader.choice("status", statuses).value_or("");
     cold.note = reader.text("note").value_or("");
     reader.text("measured_at");
-    reader.number("at_frequency_Hz", core::positive("Hz"));
-    if (const Node* range = reader.table("range"); range != nullptr) {
-        TableReader axes(*range, "range of " + name, problems);
-        read_interval(axes, "temperature_K", 1.0);
-        read_interval(axes, "frequency_Hz", 1.0);
-        axes.finish();
-    }
-    if (!cold.table.temperature.empty() && cold.join.lower > cold.table.temperature.back()) {
-        reader.problem_at("joins_K", "joins_K of " + name + " begins above the last temperature");
-    }
+    read_cold_ranges(reader, cold, entry);
     reader.finish();
     return cold;
-}
-
-void read_ranges(TableReader& reader, Entry& entry, const EntryContext& context) {
-    if (!reader.has("range")) {
-        if (!context.from_design) reader.missing("range", "{ temperature_K = [283, 313] }");
-        return;
-    }
-    const Node* node = reader.table("range");
-    if (node == nullptr) return;
-    TableReader axes(*node, "range of " + reader.name(), reader.problems());
-    if (!axes.has("temperature_K") && !context.from_design)
-        axes.missing("temperature_K", "[283, 313]");
-    entry.temperature = read_interval(axes, "temperature_K", 1.0);
-    if (const auto nanometres = read_interval(axes, "wavelength_nm", 1e-9))
-        entry.wavelength = nanometres;
-    if (const auto micrometres = read_interval(axes, "wavelength_um", 1e-6))
-        entry.wavelength = micrometres;
-    entry.frequency = read_interval(axes, "frequency_Hz", 1.0);
-    axes.finish();
-}
-
-/// Uncertainty in a design file: "4 GPa", "5 %", or a pure number for a pure number.
-Width read_design_width(TableReader& reader, const core::QuantityKind& kind, double value) {
-    const Node* node = reader.find("uncertainty");
-    if (node == nullptr) return {};
-    if (node->type == Node::Type::text && node->text == "not stated") return {};
-    double width = std::numeric_limits<double>::quiet_NaN();
-    if (node->is_number() && kind.si_unit == "1") width = node->number;
-    if (node->type == Node::Type::text) {
-        if (const auto fraction = core::read_quantity(node->text, core::kind::number);
-            fraction.ok && kind.si_unit != "1") {
-            width = fraction.value * std::abs(value);
-        } else if (const auto absolute = core::read_quantity(node->text, kind); absolute.ok) {
-            const bool percent = kind.si_unit == "1" && node->text.find('%') != std::string::npos;
-            width = percent ? absolute.value * std::abs(value) : absolute.value;
-        }
-    }
-    if (std::isfinite(width) && width >= 0.0) return {Width::Form::absolute, width, 0.0, 0.0};
-    reader.problem_at(
-        "uncertainty", "uncertainty in " + reader.name() + " cannot be used",
-        fmt::format("for example \"5 %\", or a {} as in \"{}\"", kind.name, kind.example));
-    return {};
 }
 
 }  // namespace
@@ -248,7 +140,6 @@ Entry read_entry(TableReader& reader, const EntryContext& context) {
         if (!width) reader.missing("uncertainty", "\"not stated\"");
         entry.width = width.value_or(Width{});
         entry.width_spans = read_width_spans(reader, scale);
-        reader.number("exponent_uncertainty", {0.0, infinity, true, false, "0 or greater"});
         if (const auto ends = reader.numbers("between_laboratories"); ends && ends->size() == 2) {
             entry.between_laboratories = Interval{(*ends)[0] * scale, (*ends)[1] * scale};
         }
@@ -274,7 +165,8 @@ Entry read_entry(TableReader& reader, const EntryContext& context) {
     }
     if (is_loss(context.property)) {
         if (const Node* node = reader.table("cold"); node != nullptr) {
-            entry.cold = read_cold(*node, "cold of " + reader.name(), context, reader.problems());
+            entry.cold =
+                read_cold(*node, "cold of " + reader.name(), context, entry, reader.problems());
         }
     }
     return entry;
@@ -285,6 +177,7 @@ Property read_property(const Node& table, const std::string& name, const EntryCo
     TableReader reader(table, name, problems);
     Property property;
     property.entry = read_entry(reader, context);
+    std::set<std::string> names;
     for (const Node* node : reader.tables("alternative")) {
         TableReader other(*node, "alternative of " + name, problems);
         Alternative alternative;
@@ -292,9 +185,7 @@ Property read_property(const Node& table, const std::string& name, const EntryCo
         alternative.reason = other.required_text("reason");
         alternative.entry = read_entry(other, context);
         other.finish();
-        const bool twice = std::any_of(
-            property.alternatives.begin(), property.alternatives.end(),
-            [&alternative](const Alternative& a) { return a.name == alternative.name; });
+        const bool twice = !names.insert(alternative.name).second;
         if (twice)
             other.problem_at("name",
                              "alternative " + alternative.name + " of " + name + " stands twice");

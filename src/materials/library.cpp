@@ -7,6 +7,7 @@
 #include <stdexcept>
 
 #include "materials/entry_reader.hpp"
+#include "materials/links.hpp"
 
 namespace stillcoat::materials {
 namespace {
@@ -62,27 +63,106 @@ void check_loss_forms(TableReader& reader) {
     }
 }
 
-/// The material that a rule or same_as of an entry points to.
-std::vector<std::string> links_of(const Entry& entry) {
-    std::vector<std::string> links;
-    if (const auto* same = std::get_if<SameAs>(&entry.curve)) links.push_back(same->material);
-    if (entry.beyond && entry.beyond->rule == Beyond::Rule::follows)
-        links.push_back(entry.beyond->material);
-    return links;
+/// Suggestions cost a comparison with every name: only so many are made.
+constexpr int most_suggestions = 20;
+
+/// Adds nothing for a material that exists.
+template <typename Report>
+void check_targets(const Library& library, const std::vector<Link>& links, int& suggestions,
+                   Report&& report) {
+    for (const auto& [target, property] : links) {
+        if (library.materials.count(target) != 0) continue;
+        std::optional<std::string> near;
+        if (suggestions++ < most_suggestions)
+            near = core::nearest_spelling(target, library.names());
+        report(target, near ? fmt::format("did you mean \"{}\"?", *near) : "");
+    }
 }
 
-constexpr int longest_chain = 4;
-
-bool runs_in_circle(const Library& library, const std::string& name, PropertyId id, int depth) {
-    if (depth > longest_chain) return true;
-    const auto material = library.materials.find(name);
-    if (material == library.materials.end()) return false;
-    const auto property = material->second.properties.find(id);
-    if (property == material->second.properties.end()) return false;
-    for (const std::string& link : links_of(property->second.entry)) {
-        if (runs_in_circle(library, link, id, depth + 1)) return true;
+/// The properties that cannot stand together in one table.
+void check_exclusive_forms(TableReader& reader) {
+    check_loss_forms(reader);
+    if (reader.has("extinction_coefficient") && reader.has("absorption_coefficient")) {
+        reader.contradiction("extinction_coefficient", "absorption_coefficient",
+                             "each follows from the other: keep one of the two");
     }
-    return false;
+}
+
+/// Takes the named alternative of a property as its entry.
+void choose_alternative(Material& material, PropertyId id, const Node& table,
+                        const std::string& title, core::Problems& problems) {
+    TableReader choice(table, title, problems);
+    const std::string wanted = choice.text("alternative").value_or("");
+    choice.finish();
+    const auto known = material.properties.find(id);
+    std::vector<std::string> names;
+    if (known != material.properties.end()) {
+        for (const Alternative& alternative : known->second.alternatives) {
+            names.push_back(alternative.name);
+            if (alternative.name != wanted) continue;
+            Entry entry = alternative.entry;
+            known->second.entry = std::move(entry);
+            return;
+        }
+    }
+    if (wanted.empty()) return;
+    choice.problem_at(
+        "alternative", fmt::format("{} has no alternative \"{}\"", title, wanted),
+        names.empty() ? "it has none" : fmt::format("known: {}", fmt::join(names, ", ")));
+}
+
+/// Two forms of one thing exclude each other: the design's replaces the library's.
+void drop_other_forms(Material& material, PropertyId id) {
+    if (id == PropertyId::loss_angle) {
+        material.properties.erase(PropertyId::loss_angle_bulk);
+        material.properties.erase(PropertyId::loss_angle_shear);
+    } else if (is_loss(id)) {
+        material.properties.erase(PropertyId::loss_angle);
+    }
+    if (id == PropertyId::extinction_coefficient) {
+        material.properties.erase(PropertyId::absorption_coefficient);
+    } else if (id == PropertyId::absorption_coefficient) {
+        material.properties.erase(PropertyId::extinction_coefficient);
+    }
+}
+
+/// What a replaced property now refers to must exist and must not lead back to it.
+void check_override_links(const Library& library, const std::string& name, PropertyId id,
+                          const std::string& title, TableReader& reader) {
+    const auto& properties = library.materials.at(name).properties;
+    const auto changed = properties.find(id);
+    if (changed == properties.end()) return;
+    const std::string& key = info(id).key;
+    int suggestions = 0;
+    check_targets(
+        library, links_of(name, id, changed->second.entry), suggestions,
+        [&](const std::string& target, const std::string& hint) {
+            reader.problem_at(
+                key, fmt::format("{} refers to the unknown material \"{}\"", title, target), hint);
+        });
+    const std::string fault = LinkCheck(library).fault(name, id);
+    if (!fault.empty()) reader.problem_at(key, title + " " + fault);
+}
+
+std::vector<fs::path> toml_files(const std::string& folder) {
+    std::error_code error;
+    if (!fs::is_directory(folder, error)) {
+        throw core::InputError(folder + ": no such folder of materials",
+                               "it must hold one TOML file per material");
+    }
+    std::vector<fs::path> files;
+    fs::directory_iterator item(folder, error);
+    while (!error && item != fs::directory_iterator()) {
+        if (item->path().extension() == ".toml") files.push_back(item->path());
+        item.increment(error);
+    }
+    if (error) {
+        throw core::InputError(
+            fmt::format("{}: this folder of materials cannot be read: {}", folder, error.message()),
+            "it must hold one TOML file per material");
+    }
+    std::sort(files.begin(), files.end());
+    return files;
 }
 
 }  // namespace
@@ -119,7 +199,7 @@ std::optional<Material> read_material(const core::Document& document, const Libr
         }
         unknown.finish();
     }
-    check_loss_forms(reader);
+    check_exclusive_forms(reader);
     for (const PropertyInfo& about : property_table()) {
         const Node* node = reader.table(about.key);
         if (node == nullptr) continue;
@@ -149,16 +229,7 @@ void add_references(Library& library, const std::string& folder, core::Problems&
 }
 
 void add_folder(Library& library, const std::string& folder, core::Problems& problems) {
-    std::error_code error;
-    if (!fs::is_directory(folder, error)) {
-        throw core::InputError(folder + ": no such folder of materials",
-                               "it must hold one TOML file per material");
-    }
-    std::vector<fs::path> files;
-    for (const fs::directory_entry& item : fs::directory_iterator(folder)) {
-        if (item.path().extension() == ".toml") files.push_back(item.path());
-    }
-    std::sort(files.begin(), files.end());
+    const std::vector<fs::path> files = toml_files(folder);
     add_references(library, folder, problems);
     for (const fs::path& file : files) {
         if (file.filename() == "references.toml") continue;
@@ -171,25 +242,22 @@ void add_folder(Library& library, const std::string& folder, core::Problems& pro
 }
 
 void check_links(const Library& library, core::Problems& problems) {
+    LinkCheck check(library);
+    int suggestions = 0;
     for (const auto& [name, material] : library.materials) {
         for (const auto& [id, property] : material.properties) {
             const core::Place place{material.file, 0, 0, 1, ""};
-            std::vector<std::string> links = links_of(property.entry);
-            for (const Alternative& other : property.alternatives) {
-                for (std::string& link : links_of(other.entry)) links.push_back(std::move(link));
-            }
-            for (const std::string& link : links) {
-                if (library.materials.count(link) != 0) continue;
-                const auto near = core::nearest_spelling(link, library.names());
-                problems.add(
-                    place,
-                    fmt::format("{} refers to the unknown material \"{}\"", info(id).key, link),
-                    near ? fmt::format("did you mean \"{}\"?", *near) : "");
-            }
-            if (runs_in_circle(library, name, id, 0)) {
+            const std::string& key = info(id).key;
+            const auto report = [&](const std::string& target, const std::string& hint) {
                 problems.add(place,
-                             fmt::format("{} refers to other materials in a circle", info(id).key));
-            }
+                             fmt::format("{} refers to the unknown material \"{}\"", key, target),
+                             hint);
+            };
+            check_targets(library, links_of(name, id, property.entry), suggestions, report);
+            for (const Alternative& other : property.alternatives)
+                check_targets(library, links_of(name, id, other.entry), suggestions, report);
+            const std::string fault = check.fault(name, id);
+            if (!fault.empty()) problems.add(place, key + " " + fault);
         }
     }
 }
@@ -198,7 +266,7 @@ void override_properties(Library& library, const std::string& name, const Node& 
                          core::Problems& problems) {
     TableReader reader(table, fmt::format("[material.\"{}\"]", name), problems);
     Material& material = library.materials.at(name);
-    check_loss_forms(reader);
+    check_exclusive_forms(reader);
     for (const PropertyInfo& about : property_table()) {
         const Node* node = reader.find(about.key);
         if (node == nullptr) continue;
@@ -217,56 +285,26 @@ void override_properties(Library& library, const std::string& name, const Node& 
             material.properties[about.id] =
                 read_property(*node, title, {&library, about.id, true}, problems);
         } else {
-            TableReader choice(*node, title, problems);
-            const std::string wanted = choice.text("alternative").value_or("");
-            choice.finish();
-            const auto known = material.properties.find(about.id);
-            const Alternative* found = nullptr;
-            std::vector<std::string> names;
-            if (known != material.properties.end()) {
-                for (const Alternative& alternative : known->second.alternatives) {
-                    names.push_back(alternative.name);
-                    if (alternative.name == wanted) found = &alternative;
-                }
-            }
-            if (found != nullptr) {
-                Entry entry = found->entry;
-                known->second.entry = std::move(entry);
-            } else if (!wanted.empty()) {
-                choice.problem_at("alternative",
-                                  fmt::format("{} has no alternative \"{}\"", title, wanted),
-                                  names.empty() ? "it has none"
-                                                : fmt::format("known: {}", fmt::join(names, ", ")));
-            }
+            choose_alternative(material, about.id, *node, title, problems);
         }
-        const auto changed = material.properties.find(about.id);
-        if (changed != material.properties.end()) {
-            for (const std::string& link : links_of(changed->second.entry)) {
-                if (library.materials.count(link) != 0) continue;
-                const auto near = core::nearest_spelling(link, library.names());
-                reader.problem_at(
-                    about.key, fmt::format("{} refers to the unknown material \"{}\"", title, link),
-                    near ? fmt::format("did you mean \"{}\"?", *near) : "");
-            }
-            if (runs_in_circle(library, name, about.id, 0)) {
-                reader.problem_at(about.key, title + " refers to other materials in a circle");
-            }
-        }
+        check_override_links(library, name, about.id, title, reader);
         material.unknown.erase(about.id);
-        // The two forms of the loss exclude each other: the design's replaces the library's.
-        if (about.id == PropertyId::loss_angle) {
-            material.properties.erase(PropertyId::loss_angle_bulk);
-            material.properties.erase(PropertyId::loss_angle_shear);
-        } else if (is_loss(about.id)) {
-            material.properties.erase(PropertyId::loss_angle);
-        }
-        if (about.id == PropertyId::extinction_coefficient) {
-            material.properties.erase(PropertyId::absorption_coefficient);
-        } else if (about.id == PropertyId::absorption_coefficient) {
-            material.properties.erase(PropertyId::extinction_coefficient);
-        }
+        drop_other_forms(material, about.id);
     }
     reader.finish();
+}
+
+void replace_value(Library& library, const std::string& name, PropertyId property, double value,
+                   const std::string& source) {
+    Material& material = library.materials.at(name);
+    Entry entry;
+    entry.curve = Scalar{value};
+    entry.sources = {source};
+    entry.nature = entry.status = "stated in the design file";
+    entry.from_design = true;
+    material.properties[property] = Property{std::move(entry), {}};
+    material.unknown.erase(property);
+    drop_other_forms(material, property);
 }
 
 }  // namespace stillcoat::materials

@@ -3,6 +3,7 @@
 #include <cmath>
 #include <limits>
 
+#include "noise/footprint_averages.hpp"
 #include "noise/heat_layer.hpp"
 #include "noise/limits.hpp"
 #include "noise/wavenumber_rule.hpp"
@@ -91,9 +92,10 @@ Film film(const ThermalMaterial& substrate, const std::vector<ThermalLayer>& lay
 }  // namespace
 
 ClassicThermoOptic classic_thermo_optic(const ThermalMaterial& substrate,
-                                        const std::vector<ThermalLayer>& layers, double beam_radius,
-                                        double temperature, double frequency, LayerStrain strain) {
-    require_conditions(beam_radius, temperature, frequency, evans);
+                                        const std::vector<ThermalLayer>& layers,
+                                        const Footprint& spot, double temperature, double frequency,
+                                        LayerStrain strain) {
+    require_conditions(spot, temperature, frequency, evans);
     validate(substrate);
     for (const ThermalLayer& layer : layers) validate(layer);
     const Film coating = film(substrate, layers, strain);
@@ -112,7 +114,7 @@ ClassicThermoOptic classic_thermo_optic(const ThermalMaterial& substrate,
                           weights.refractive_squared * refractive * refractive;
     ClassicThermoOptic result{};
     result.temperature_psd = face_temperature_psd(substrate.conductivity, substrate.heat_capacity,
-                                                  beam_radius, temperature, frequency);
+                                                  spot, temperature, frequency);
     result.thermo_elastic_length = coating.elastic_length;
     result.thermo_refractive_length = coating.refractive_length;
     const double sum = elastic + refractive;
@@ -126,14 +128,14 @@ ClassicThermoOptic classic_thermo_optic(const ThermalMaterial& substrate,
     return result;
 }
 
-double face_temperature_psd(double conductivity, double heat_capacity, double beam_radius,
+double face_temperature_psd(double conductivity, double heat_capacity, const Footprint& spot,
                             double temperature, double frequency) {
     require_positive(conductivity, "thermal conductivity", "W/(m K)", face);
     require_positive(heat_capacity, "heat capacity per volume", "J/(m^3 K)", face);
-    require_conditions(beam_radius, temperature, frequency, face);
+    require_conditions(spot, temperature, frequency, face);
     const double omega = 2.0 * core::pi * frequency;
     const WavenumberRule rule =
-        wavenumber_rule(beam_radius, std::sqrt(omega * heat_capacity / conductivity));
+        wavenumber_rule(spot, std::sqrt(omega * heat_capacity / conductivity));
     double sum = 0.0;
     for (std::size_t i = 0; i < rule.wavenumber.size(); ++i) {
         const Complex gamma =
@@ -146,16 +148,15 @@ double face_temperature_psd(double conductivity, double heat_capacity, double be
 }
 
 double face_temperature_psd_one_dimensional(double conductivity, double heat_capacity,
-                                            double beam_radius, double temperature,
+                                            const Footprint& spot, double temperature,
                                             double frequency) {
     require_positive(conductivity, "thermal conductivity", "W/(m K)", face);
     require_positive(heat_capacity, "heat capacity per volume", "J/(m^3 K)", face);
-    require_conditions(beam_radius, temperature, frequency, face);
+    require_conditions(spot, temperature, frequency, face);
     // S = 2√2 k_BT²/(π w² √(κCω))
     const double omega = 2.0 * core::pi * frequency;
-    return finite_psd(2.0 * std::sqrt(2.0) * core::boltzmann_constant * temperature * temperature /
-                          (core::pi * beam_radius * beam_radius *
-                           std::sqrt(conductivity * heat_capacity * omega)),
+    return finite_psd(2.0 * std::sqrt(2.0) * core::boltzmann_constant * temperature * temperature *
+                          squared_pressure(spot) / std::sqrt(conductivity * heat_capacity * omega),
                       "temperature spectrum", face);
 }
 

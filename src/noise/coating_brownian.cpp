@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 
+#include "noise/footprint_averages.hpp"
 #include "noise/limits.hpp"
 #include "stillcoat/core/constants.hpp"
 #include "stillcoat/core/errors.hpp"
@@ -39,12 +40,11 @@ StrainEnergy energy_per_area(double face_strain, const ElasticLayer& layer) {
 
 std::vector<StrainEnergy> thin_film_energies(const Elastic& substrate,
                                              const std::vector<ElasticLayer>& layers,
-                                             double beam_radius) {
+                                             const Footprint& spot) {
     validate(substrate);
-    require_positive(beam_radius, "beam radius", "m", hong);
+    require_spot(spot, hong);
     const double eta = face_dilatation(substrate);
-    // ∫p² dA/F0² of a Gaussian beam.
-    const double inverse_area = 1.0 / (core::pi * beam_radius * beam_radius);
+    const double inverse_area = squared_pressure(spot);
     std::vector<StrainEnergy> energies;
     energies.reserve(layers.size());
     for (const ElasticLayer& layer : layers) {
@@ -78,14 +78,14 @@ double brownian_psd(const StrainEnergy& energy, const Loss& loss, double tempera
 
 double parallel_perpendicular_psd(const Elastic& substrate, const Elastic& film, double thickness,
                                   double loss_parallel, double loss_perpendicular,
-                                  double beam_radius, double temperature, double frequency) {
+                                  const Footprint& spot, double temperature, double frequency) {
     validate(substrate);
     validate(film);
-    require_conditions(beam_radius, temperature, frequency, harry);
+    require_conditions(spot, temperature, frequency, harry);
     require_not_negative(thickness, "thickness of the film", "m", harry);
     require_not_negative(loss_parallel, "loss angle in the plane", "rad", harry);
     require_not_negative(loss_perpendicular, "loss angle across the plane", "rad", harry);
-    // Notation: primed quantities belong to the film. Prefactor 2k_BT/(π²w²f)·d, the bracket as
+    // Notation: primed quantities belong to the film. Prefactor 2k_BT/(π²wxwyf)·d, the bracket as
     // energies of stress in the plane (φ∥) and across it (φ⊥).
     const double young = film.youngs_modulus, nu = film.poisson_ratio;
     const double eta = face_dilatation(substrate);
@@ -94,23 +94,21 @@ double parallel_perpendicular_psd(const Elastic& substrate, const Elastic& film,
     const double mixed = nu * eta / (1.0 - nu);
     const double lost = along * loss_parallel + mixed * (loss_parallel - loss_perpendicular) +
                         across * loss_perpendicular;
-    const double pi_w = core::pi * beam_radius;
-    return finite_psd(
-        2.0 * core::boltzmann_constant * temperature * thickness / (pi_w * pi_w * frequency) * lost,
-        "Brownian spectrum", harry);
+    return finite_psd(2.0 * core::boltzmann_constant * temperature * thickness /
+                          (core::pi * frequency) * squared_pressure(spot) * lost,
+                      "Brownian spectrum", harry);
 }
 
-double equal_elastic_psd(const Elastic& material, double thickness, double loss, double beam_radius,
-                         double temperature, double frequency) {
+double equal_elastic_psd(const Elastic& material, double thickness, double loss,
+                         const Footprint& spot, double temperature, double frequency) {
     validate(material);
-    require_conditions(beam_radius, temperature, frequency, nakagawa);
+    require_conditions(spot, temperature, frequency, nakagawa);
     require_not_negative(thickness, "thickness of the film", "m", nakagawa);
     require_not_negative(loss, "loss angle of the film", "rad", nakagawa);
     const double nu = material.poisson_ratio;
-    const double pi_w = core::pi * beam_radius;
     return finite_psd(4.0 * core::boltzmann_constant * temperature * thickness * loss /
-                          (pi_w * pi_w * frequency) * (1.0 + nu) * (1.0 - 2.0 * nu) /
-                          material.youngs_modulus,
+                          (core::pi * frequency) * squared_pressure(spot) * (1.0 + nu) *
+                          (1.0 - 2.0 * nu) / material.youngs_modulus,
                       "Brownian spectrum", nakagawa);
 }
 

@@ -2,28 +2,21 @@
 
 #include <cmath>
 
+#include "stillcoat/numerics/complex_exponential.hpp"
+
 namespace stillcoat::noise {
 namespace {
 
-constexpr Complex i(0.0, 1.0);
-
-/// e^x − 1 without cancellation.
-Complex expm1(Complex x) {
-    const double half_sine = std::sin(0.5 * x.imag());
-    const double half_cosine = std::cos(0.5 * x.imag());
-    const double growth = std::expm1(x.real());
-    return {growth - 2.0 * (1.0 + growth) * half_sine * half_sine,
-            2.0 * (1.0 + growth) * half_sine * half_cosine};
-}
+using numerics::complex_expm1;
+using numerics::relative_complex_expm1;
 
 Complex reciprocal(Complex z) { return std::conj(z) / std::norm(z); }
 
 /// ∫ of the product of two exponentials over the layer, from the end where it is larger.
 Complex product_integral(const SourceTerm& a, const SourceTerm& b, double h) {
     const Complex x = (a.rate + b.rate) * h;
-    if (x == 0.0) return a.top * b.top * h;
-    return x.real() <= 0.0 ? a.top * b.top * h * expm1(x) / x
-                           : a.bottom * b.bottom * h * expm1(-x) / -x;
+    return x.real() <= 0.0 ? a.top * b.top * h * relative_complex_expm1(x)
+                           : a.bottom * b.bottom * h * relative_complex_expm1(-x);
 }
 
 /// @param x rate·h; of `top` and `bottom` the larger is exact
@@ -32,7 +25,7 @@ SourceTerm source_term(Complex rate, Complex top, Complex bottom, Complex x) {
     term.rate = rate;
     term.top = top;
     term.bottom = bottom;
-    term.rise = x.real() <= 0.0 ? top * expm1(x) : -bottom * expm1(-x);
+    term.rise = x.real() <= 0.0 ? top * complex_expm1(x) : -bottom * complex_expm1(-x);
     term.rate_squared = rate * rate;
     term.top_slope = rate * top;
     term.bottom_slope = rate * bottom;
@@ -41,30 +34,21 @@ SourceTerm source_term(Complex rate, Complex top, Complex bottom, Complex x) {
     return term;
 }
 
-/// Adds Re{coefficient·E²(z)}, E² = A²e^{2iqz} + 2AB e^{iqh} + B²e^{2iq(h−z)}, to the refraction of
-/// a layer: the real part as half of a term and its conjugate.
-void add_square_of_field(Complex coefficient, const optics::ReadoutLayer& readout,
-                         HeatLayer& layer) {
-    const Complex a = readout.forward, b = readout.backward, q = readout.wavenumber;
-    const double h = readout.thickness;
-    if (q == 0.0) {
-        layer.refraction_constant += std::real(coefficient * (a + b) * (a + b));
-        return;
-    }
-    const Complex crossing = std::exp(i * q * h);
-    layer.refraction_constant += std::real(coefficient * 2.0 * a * b * crossing);
-    const Complex once = crossing * crossing, rate = 2.0 * i * q;
+/// Adds what varies with depth in own·g + slope·h to the refraction of a layer: the real part of
+/// each exponential as half of it and half of its conjugate.
+void add_exponentials(const ThermalLayer& matter, double own, HeatLayer& layer) {
+    const double h = matter.readout.thickness;
     std::vector<SourceTerm>& terms = layer.refraction;
-    if (q.imag() == 0.0) {
-        // Forward and backward exponentials are then each other's conjugates: two terms do for
-        // four.
-        const Complex top = 0.5 * (coefficient * a * a + std::conj(coefficient * b * b * once));
-        terms.push_back(source_term(rate, top, top * once, rate * h));
-    } else {
-        const Complex top = 0.5 * coefficient * a * a;
-        const Complex bottom = 0.5 * coefficient * b * b;
-        terms.push_back(source_term(rate, top, top * once, rate * h));
-        terms.push_back(source_term(-rate, bottom * once, bottom, -rate * h));
+    for (const optics::ReadoutTerm& wave : matter.readout.terms) {
+        const Complex amplitude = 0.5 * (matter.index_slope * wave.index + own * wave.strain);
+        if (amplitude == 0.0) continue;
+        if (wave.rate == 0.0) {
+            layer.refraction_constant += 2.0 * amplitude.real();
+            continue;
+        }
+        const Complex x = wave.rate * h, far_end = amplitude * std::exp(x);
+        terms.push_back(wave.upwards ? source_term(-wave.rate, far_end, amplitude, -x)
+                                     : source_term(wave.rate, amplitude, far_end, x));
     }
     for (std::size_t j = 0, count = terms.size(); j < count; ++j) {
         terms.push_back(source_term(std::conj(terms[j].rate), std::conj(terms[j].top),
@@ -130,13 +114,10 @@ HeatLayer heat_layer(const Elastic& substrate, const ThermalLayer& layer) {
                      material.conductivity,
                      material.heat_capacity,
                      own + bending,
-                     (layer.readout.strain_constant - 1.0) * own,
+                     (layer.readout.strain_constant - 1.0) * own +
+                         layer.index_slope * layer.readout.index_constant,
                      {}};
-    const Complex coefficient =
-        layer.index_slope * layer.readout.index_square + own * layer.readout.strain_square;
-    if (coefficient != 0.0 && layer.readout.thickness > 0.0) {
-        add_square_of_field(coefficient, layer.readout, result);
-    }
+    if (layer.readout.thickness > 0.0) add_exponentials(layer, own, result);
     return result;
 }
 
@@ -156,7 +137,7 @@ LayerMoments layer_moments(const HeatLayer& layer, double wavenumber, double ang
         thermal_wavenumber(wavenumber, angular_frequency, layer.heat_capacity, layer.conductivity);
     const double h = layer.thickness;
     const Complex x = gamma * h;
-    const Complex decay = expm1(-x);  // e^{−x} − 1
+    const Complex decay = complex_expm1(-x);  // e^{−x} − 1
     const Complex inverse = reciprocal(1.0 + (1.0 + decay) * (1.0 + decay));
     const Complex tanh = -decay * (2.0 + decay) * inverse;
     const Complex sech = 2.0 * (1.0 + decay) * inverse;

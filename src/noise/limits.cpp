@@ -23,9 +23,14 @@ void require_not_negative(double value, const char* quantity, const char* unit,
     }
 }
 
-void require_conditions(double beam_radius, double temperature, double frequency,
+void require_spot(const Footprint& spot, const char* source) {
+    require_positive(spot.radius_x, "beam radius", "m", source);
+    require_positive(spot.radius_y, "beam radius", "m", source);
+}
+
+void require_conditions(const Footprint& spot, double temperature, double frequency,
                         const char* source) {
-    require_positive(beam_radius, "beam radius", "m", source);
+    require_spot(spot, source);
     require_positive(temperature, "temperature", "K", source);
     require_positive(frequency, "frequency", "Hz", source);
 }

@@ -2,6 +2,7 @@
 
 #include <cmath>
 
+#include "noise/footprint_averages.hpp"
 #include "noise/limits.hpp"
 #include "noise/wavenumber_rule.hpp"
 #include "stillcoat/core/constants.hpp"
@@ -28,25 +29,25 @@ double path_strength(const TransmittedPath& path, double temperature) {
 
 }  // namespace
 
-StrainEnergy half_space_energy(const Elastic& substrate, double beam_radius) {
+StrainEnergy half_space_energy(const Elastic& substrate, const Footprint& spot) {
     validate(substrate);
-    require_positive(beam_radius, "beam radius", "m", bondu);
+    require_spot(spot, bondu);
     const double nu = substrate.poisson_ratio;
-    const double total =
-        (1.0 - nu * nu) / (2.0 * std::sqrt(core::pi) * substrate.youngs_modulus * beam_radius);
+    const double total = (1.0 - nu * nu) / (2.0 * std::sqrt(core::pi) * substrate.youngs_modulus) *
+                         mean_inverse_radius(spot);
     const double bulk_share = (1.0 + nu) * (1.0 - 2.0 * nu) / (3.0 * (1.0 - nu));
     return {total * bulk_share, total * (1.0 - bulk_share)};
 }
 
 double thermo_refractive_psd(const ThermalMaterial& substrate, const TransmittedPath& path,
-                             double beam_radius, double temperature, double frequency) {
+                             const Footprint& spot, double temperature, double frequency) {
     validate(substrate);
     validate(path, vyatchanin);
-    require_conditions(beam_radius, temperature, frequency, vyatchanin);
-    // Notation: S = (2k_BT²β²l/π) ∫k dk e^{−k²w²/4} k²/(κ(k⁴ + k_T⁴)), k_T² = ωC/κ.
+    require_conditions(spot, temperature, frequency, vyatchanin);
+    // Notation: S = (2k_BT²β²l/π) ∫k dk ⟨|p|²⟩ k²/(κ(k⁴ + k_T⁴)), k_T² = ωC/κ.
     const double omega = 2.0 * core::pi * frequency;
     const double k_t = std::sqrt(omega * substrate.heat_capacity / substrate.conductivity);
-    const WavenumberRule rule = wavenumber_rule(beam_radius, k_t);
+    const WavenumberRule rule = wavenumber_rule(spot, k_t);
     double sum = 0.0;
     for (std::size_t i = 0; i < rule.wavenumber.size(); ++i) {
         const double ratio = rule.wavenumber[i] / k_t;
@@ -59,19 +60,19 @@ double thermo_refractive_psd(const ThermalMaterial& substrate, const Transmitted
 }
 
 double standing_wave_thermo_refractive_psd(const ThermalMaterial& substrate,
-                                           const TransmittedPath& path, double beam_radius,
+                                           const TransmittedPath& path, const Footprint& spot,
                                            double temperature, double frequency) {
     validate(substrate);
     validate(path, benthem);
-    require_conditions(beam_radius, temperature, frequency, benthem);
-    // Notation: (k_BT²β²l/π)(2/w²) κk_L²/(ω²C² + κ²k_L⁴), k_L = 2nk0.
+    require_conditions(spot, temperature, frequency, benthem);
+    // Notation: (k_BT²β²l/π)(2/(wx wy)) κk_L²/(ω²C² + κ²k_L⁴), k_L = 2nk0.
     const double omega = 2.0 * core::pi * frequency;
     const double k_l = 4.0 * core::pi * path.index / path.wavelength;
     const double conducted = substrate.conductivity * k_l * k_l;
     const double stored = omega * substrate.heat_capacity;
     const double relaxation = conducted / (stored * stored + conducted * conducted);
     return finite_psd(
-        2.0 * path_strength(path, temperature) / (beam_radius * beam_radius) * relaxation,
+        2.0 * path_strength(path, temperature) / (spot.radius_x * spot.radius_y) * relaxation,
         "thermo-refractive spectrum", benthem);
 }
 

@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 
+#include "noise/footprint_averages.hpp"
 #include "noise/layered_heat.hpp"
 #include "noise/limits.hpp"
 #include "noise/wavenumber_rule.hpp"
@@ -17,17 +18,22 @@ constexpr char braginsky[] = "Braginsky et al., Phys. Lett. A 264, 1 (1999)";
 constexpr char spectrum[] = "thermal spectrum";
 
 void validate_readout(const optics::ReadoutLayer& readout) {
+    constexpr char quantity[] = "weight of a layer's readout";
     require_not_negative(readout.thickness, "thickness of a layer", "m", evans);
-    require_not_negative(readout.wavenumber.imag(), "decay of the light in a layer", "1/m", evans);
-    for (const Complex value : {readout.wavenumber, readout.forward, readout.backward,
-                                readout.strain_square, readout.index_square}) {
-        require_finite(value.real(), "weight of a layer's readout", "1", evans);
-        require_finite(value.imag(), "weight of a layer's readout", "1", evans);
+    for (const optics::ReadoutTerm& term : readout.terms) {
+        require_not_negative(-term.rate.real(), "decay of the light in a layer", "1/m", evans);
+        for (const Complex value : {term.rate, term.strain, term.in_plane, term.index}) {
+            require_finite(value.real(), quantity, "1", evans);
+            require_finite(value.imag(), quantity, "1", evans);
+        }
     }
-    require_finite(readout.strain_constant, "weight of a layer's readout", "1", evans);
+    for (const double constant :
+         {readout.strain_constant, readout.in_plane_constant, readout.index_constant}) {
+        require_finite(constant, quantity, "1", evans);
+    }
 }
 
-/// S = (2k_BT²/π) ∫ k dk e^{−k²w²/4} Re ∫ q ϑ dz.
+/// S = (2k_BT²/π) ∫ k dk ⟨|p(k)|²⟩ Re ∫ q ϑ dz.
 double prefactor(double temperature) {
     return 2.0 * core::boltzmann_constant * temperature * temperature / core::pi;
 }
@@ -53,14 +59,14 @@ double free_index_slope(double index, double index_slope, double p11, double p12
 }
 
 ThermalNoise thermal_noise(const ThermalMaterial& substrate,
-                           const std::vector<ThermalLayer>& layers, double beam_radius,
+                           const std::vector<ThermalLayer>& layers, const Footprint& spot,
                            double temperature, double frequency) {
-    require_conditions(beam_radius, temperature, frequency, evans);
+    require_conditions(spot, temperature, frequency, evans);
     validate(substrate);
     for (const ThermalLayer& layer : layers) validate(layer);
     const double omega = 2.0 * core::pi * frequency;
     const LayeredHeat stack = layered_heat(substrate, layers);
-    const WavenumberRule rule = wavenumber_rule(beam_radius, diffusion_wavenumber(stack, omega));
+    const WavenumberRule rule = wavenumber_rule(spot, diffusion_wavenumber(stack, omega));
     SourceProducts sum;
     for (std::size_t i = 0; i < rule.wavenumber.size(); ++i) {
         const SourceProducts p = source_products(stack, rule.wavenumber[i], omega);
@@ -88,13 +94,12 @@ ThermalNoise thermal_noise(const ThermalMaterial& substrate,
             psd(sum.bare)};
 }
 
-double substrate_thermo_elastic_psd(const ThermalMaterial& substrate, double beam_radius,
+double substrate_thermo_elastic_psd(const ThermalMaterial& substrate, const Footprint& spot,
                                     double temperature, double frequency) {
-    require_conditions(beam_radius, temperature, frequency, cerdonio);
+    require_conditions(spot, temperature, frequency, cerdonio);
     validate(substrate);
     const double omega = 2.0 * core::pi * frequency;
-    const WavenumberRule rule =
-        wavenumber_rule(beam_radius, diffusion_wavenumber({{}, substrate}, omega));
+    const WavenumberRule rule = wavenumber_rule(spot, diffusion_wavenumber({{}, substrate}, omega));
     double sum = 0.0;
     for (std::size_t i = 0; i < rule.wavenumber.size(); ++i) {
         sum += rule.weight[i] * bare_substrate_product(substrate, rule.wavenumber[i], omega);
@@ -102,17 +107,17 @@ double substrate_thermo_elastic_psd(const ThermalMaterial& substrate, double bea
     return finite_psd(prefactor(temperature) * sum, spectrum, cerdonio);
 }
 
-double adiabatic_thermo_elastic_psd(const ThermalMaterial& substrate, double beam_radius,
+double adiabatic_thermo_elastic_psd(const ThermalMaterial& substrate, const Footprint& spot,
                                     double temperature, double frequency) {
-    require_conditions(beam_radius, temperature, frequency, braginsky);
+    require_conditions(spot, temperature, frequency, braginsky);
     validate(substrate);
-    // Notation: S = 8(1+ν)²α²κk_BT²/(√(2π) C² r0³ ω²), r0 = w/√2.
+    // Notation: S = 8(1+ν)²α²κk_BT²/(√(2π) C² r0³ ω²), r0 = w/√2; for an ellipse ⟨1/w³⟩.
     const double expansion = (1.0 + substrate.elastic.poisson_ratio) * substrate.expansion;
     const double thermal = temperature * expansion / substrate.heat_capacity;
-    const double r0 = beam_radius / std::sqrt(2.0);
+    const double inverse_cube = 2.0 * std::sqrt(2.0) * mean_inverse_cube(spot);
     const double omega = 2.0 * core::pi * frequency;
-    return finite_psd(8.0 * core::boltzmann_constant * substrate.conductivity * thermal * thermal /
-                          (std::sqrt(2.0 * core::pi) * r0 * r0 * r0 * omega * omega),
+    return finite_psd(8.0 * core::boltzmann_constant * substrate.conductivity * thermal * thermal *
+                          inverse_cube / (std::sqrt(2.0 * core::pi) * omega * omega),
                       spectrum, braginsky);
 }
 

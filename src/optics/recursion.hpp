@@ -16,9 +16,6 @@ namespace stillcoat::optics {
 
 using ComplexJet = numerics::Jet<Complex>;
 
-/// Reflection amplitudes below this are rounding noise: their phase means nothing.
-inline constexpr double smallest_reflection = 1e-13;
-
 /// What a medium does to tangential fields at a given transverse wavenumber k0 β.
 template <typename Scalar>
 struct Medium {

@@ -1,7 +1,5 @@
 #include "present/appraisal_json.hpp"
 
-#include <fmt/format.h>
-
 #include <algorithm>
 #include <cmath>
 #include <nlohmann/json.hpp>
@@ -29,6 +27,11 @@ Json numbers(const std::vector<double>& list) {
     Json array = Json::array();
     for (const double value : list) array.push_back(number(value));
     return array;
+}
+
+/// An empty list is one that could not be computed.
+Json list_or_null(const std::vector<double>& list) {
+    return list.empty() ? Json(nullptr) : numbers(list);
 }
 
 Json operating_point(const stack::Design& design, const Appraisal& appraisal) {
@@ -68,7 +71,51 @@ Json coating(const stack::Design& design, const Appraisal& appraisal) {
             {"layers", std::move(layers)}};
 }
 
-Json face(const assess::FaceOptics& optics, const stack::Mirror& mirror) {
+Json term(const assess::NoiseTerm& noise_term) {
+    const bool computed = noise_term.missing.empty();
+    return {{"key", noise_term.key},
+            {"title", noise_term.title},
+            {"in_total", noise_term.in_total},
+            {"psd_m2_per_Hz", computed ? numbers(noise_term.psd) : Json(nullptr)},
+            {"spot_psd_m2_per_Hz", computed ? numbers(noise_term.spot_psd) : Json(nullptr)},
+            {"not_computed_because", computed ? Json(nullptr) : Json(noise_term.missing)},
+            {"source", noise_term.source}};
+}
+
+Json noise(const assess::Noise& result) {
+    if (!result.computed) return {{"computed", false}, {"not_computed_because", result.missing}};
+    Json terms = Json::array();
+    for (const assess::NoiseTerm& item : result.terms) terms.push_back(term(item));
+    Json comparisons = Json::array();
+    for (const assess::NoiseTerm& item : result.comparisons) comparisons.push_back(term(item));
+    Json layers = Json::array();
+    for (std::size_t j = 0; j < result.layers.size(); ++j) {
+        layers.push_back({{"number", j + 1},
+                          {"bulk_energy_J_per_N2", number(result.layers[j].bulk_energy)},
+                          {"shear_energy_J_per_N2", number(result.layers[j].shear_energy)},
+                          {"psd_m2_per_Hz", number(result.layers[j].psd)}});
+    }
+    Json dominance = Json::array();
+    for (const assess::Dominance& stretch : result.dominance) {
+        dominance.push_back({{"from_Hz", number(stretch.from)},
+                             {"to_Hz", number(stretch.to)},
+                             {"title", stretch.title}});
+    }
+    return {{"computed", true},
+            {"not_computed_because", nullptr},
+            {"complete", result.complete},
+            {"frequencies_Hz", numbers(result.frequencies)},
+            {"spot_frequencies_Hz", numbers(result.spot)},
+            {"terms", std::move(terms)},
+            {"total_psd_m2_per_Hz", list_or_null(result.total)},
+            {"spot_total_psd_m2_per_Hz", list_or_null(result.spot_total)},
+            {"comparisons", std::move(comparisons)},
+            {"coating_brownian_layer_frequency_Hz", number(result.layer_frequency)},
+            {"coating_brownian_layers", std::move(layers)},
+            {"largest_term", std::move(dominance)}};
+}
+
+Json face(const assess::Face& optics, const stack::Mirror& mirror) {
     const optics::Response& r = optics.response;
     Json layers = Json::array();
     for (std::size_t j = 0; j < optics.stored_energy.size(); ++j) {
@@ -107,121 +154,37 @@ Json face(const assess::FaceOptics& optics, const stack::Mirror& mirror) {
     document["energy_penetration_depth_m"] = number(optics.energy_penetration_depth);
     document["face_intensity_ratio"] = number(optics.face_intensity);
     document["layers"] = std::move(layers);
+    document["noise"] = noise(optics.noise);
     return document;
 }
 
-Json term(const assess::NoiseTerm& noise_term) {
-    const bool computed = noise_term.missing.empty();
-    return {{"key", noise_term.key},
-            {"title", noise_term.title},
-            {"in_total", noise_term.in_total},
-            {"psd_m2_per_Hz", computed ? numbers(noise_term.psd) : Json(nullptr)},
-            {"spot_psd_m2_per_Hz", computed ? numbers(noise_term.spot_psd) : Json(nullptr)},
-            {"not_computed_because", computed ? Json(nullptr) : Json(noise_term.missing)},
-            {"source", noise_term.source}};
+Json values_from_the_design(const stack::Design& design) {
+    Json list = Json::array();
+    for (const stack::Override& values : design.overrides) {
+        for (const std::string& key : values.keys) {
+            list.push_back({{"material", values.material}, {"property", key}});
+        }
+    }
+    return list;
 }
 
-Json noise(const assess::Noise& result) {
-    if (!result.computed) return {{"computed", false}, {"not_computed_because", result.missing}};
-    Json terms = Json::array();
-    for (const assess::NoiseTerm& item : result.terms) terms.push_back(term(item));
-    Json comparisons = Json::array();
-    for (const assess::NoiseTerm& item : result.comparisons) comparisons.push_back(term(item));
-    Json layers = Json::array();
-    for (std::size_t j = 0; j < result.layers.size(); ++j) {
-        layers.push_back({{"number", j + 1},
-                          {"bulk_energy_J_per_N2", number(result.layers[j].bulk_energy)},
-                          {"shear_energy_J_per_N2", number(result.layers[j].shear_energy)},
-                          {"psd_m2_per_Hz", number(result.layers[j].psd)}});
-    }
-    Json dominance = Json::array();
-    for (const assess::Dominance& stretch : result.dominance) {
-        dominance.push_back({{"from_Hz", number(stretch.from)},
-                             {"to_Hz", number(stretch.to)},
-                             {"title", stretch.title}});
-    }
-    return {{"computed", true},
-            {"complete", result.complete},
-            {"frequencies_Hz", numbers(result.frequencies)},
-            {"spot_frequencies_Hz", numbers(result.spot)},
-            {"terms", std::move(terms)},
-            {"total_psd_m2_per_Hz", numbers(result.total)},
-            {"spot_total_psd_m2_per_Hz", numbers(result.spot_total)},
-            {"comparisons", std::move(comparisons)},
-            {"coating_brownian_layer_frequency_Hz", number(result.layer_frequency)},
-            {"coating_brownian_layers", std::move(layers)},
-            {"largest_term", std::move(dominance)}};
+/// Null when the design states no power.
+Json light_load(const Appraisal& appraisal) {
+    if (!appraisal.light_load) return nullptr;
+    const assess::LightLoad& load = *appraisal.light_load;
+    return {{"incident_power_W", number(load.power)},
+            {"absorbed_in_coating_W", number(load.absorbed)},
+            {"centre_intensity_W_per_m2", number(load.centre_intensity)},
+            {"largest_intensity_in_coating_W_per_m2", number(load.largest_intensity)}};
 }
 
-Json sources(const materials::Library& library, const Appraisal& appraisal, double temperature) {
+Json sources(const materials::Library& library, const Appraisal& appraisal) {
     Json data = Json::array();
-    for (const SourceUse& source : data_sources(library, appraisal, temperature)) {
+    for (const SourceUse& source : data_sources(library, appraisal)) {
         data.push_back(
             {{"key", source.key}, {"citation", source.citation}, {"used_for", source.used_for}});
     }
     return {{"formulas", formula_sources(appraisal)}, {"data", std::move(data)}};
-}
-
-std::string layers_csv(const Appraisal& appraisal) {
-    std::string text =
-        "polarisation,number,material,reference_thickness_m,thickness_m,quarter_waves,refractive_"
-        "index,"
-        "extinction_coefficient,absorptance,stored_energy_J_per_W,peak_intensity_ratio,"
-        "brownian_psd_m2_per_Hz\n";
-    for (const assess::FaceOptics& face : appraisal.faces) {
-        for (std::size_t j = 0; j < appraisal.mirror.layers.size(); ++j) {
-            const stack::MirrorLayer& layer = appraisal.mirror.layers[j];
-            const bool known = layer.optical.extinction_known;
-            text += fmt::format(
-                "{},{},{},{},{},{},{},{},{},{},{},{}\n", polarisation_text(face.polarisation),
-                j + 1, layer.material, layer.reference_thickness, layer.thickness,
-                layer.quarter_waves, layer.optical.index.value,
-                known ? fmt::format("{}", layer.optical.extinction.value) : "",
-                known ? fmt::format("{}", face.response.layer_absorptance[j]) : "",
-                face.stored_energy[j], face.peak_intensity[j],
-                appraisal.noise.layers.empty() ? ""
-                                               : fmt::format("{}", appraisal.noise.layers[j].psd));
-        }
-    }
-    return text;
-}
-
-std::string field_csv(const Appraisal& appraisal) {
-    std::string text = "polarisation,depth_m,layer,material,refractive_index,intensity_ratio\n";
-    for (const assess::FaceOptics& face : appraisal.faces) {
-        for (const assess::FieldSample& sample : face.field) {
-            text += fmt::format("{},{},{},{},{},{}\n", polarisation_text(face.polarisation),
-                                sample.depth, sample.layer + 1,
-                                appraisal.mirror.layers[sample.layer].material, sample.index,
-                                sample.intensity);
-        }
-    }
-    return text;
-}
-
-std::string noise_csv(const assess::Noise& result) {
-    if (!result.computed) throw core::InputError("there is no noise table: " + result.missing, "");
-    // A term that could not be computed keeps its column, empty; a total that lacks it says so in
-    // its name.
-    std::string text = result.complete ? "frequency_Hz,total_psd_m2_per_Hz"
-                                       : "frequency_Hz,total_of_terms_computed_psd_m2_per_Hz";
-    std::vector<const assess::NoiseTerm*> columns;
-    for (const auto* group : {&result.terms, &result.comparisons}) {
-        for (const assess::NoiseTerm& item : *group) {
-            columns.push_back(&item);
-            text += "," + item.key + "_psd_m2_per_Hz";
-        }
-    }
-    text += "\n";
-    for (std::size_t i = 0; i < result.frequencies.size(); ++i) {
-        text += fmt::format("{},{}", result.frequencies[i], result.total[i]);
-        for (const assess::NoiseTerm* item : columns) {
-            text += ",";
-            if (!item->psd.empty()) text += fmt::format("{}", item->psd[i]);
-        }
-        text += "\n";
-    }
-    return text;
 }
 
 }  // namespace
@@ -229,8 +192,7 @@ std::string noise_csv(const assess::Noise& result) {
 std::string appraisal_json(const stack::Design& design, const materials::Library& library,
                            const Appraisal& appraisal) {
     Json faces = Json::array();
-    for (const assess::FaceOptics& item : appraisal.faces)
-        faces.push_back(face(item, appraisal.mirror));
+    for (const assess::Face& item : appraisal.faces) faces.push_back(face(item, appraisal.mirror));
     const Json document{
         {"document", "appraisal"},
         {"program", "stillcoat"},
@@ -244,28 +206,20 @@ std::string appraisal_json(const stack::Design& design, const materials::Library
           {"diameter_m", number_or_null(design.mirror.diameter)},
           {"thickness_m", number_or_null(design.mirror.thickness)}}},
         {"coating", coating(design, appraisal)},
+        {"values_from_the_design", values_from_the_design(design)},
+        {"reflectance", number(mean_over_faces(appraisal, &optics::Response::reflectance))},
+        {"transmittance", number(mean_over_faces(appraisal, &optics::Response::transmittance))},
+        {"absorptance", number(mean_over_faces(appraisal, &optics::Response::absorptance))},
+        {"light_load", light_load(appraisal)},
         {"faces", std::move(faces)},
-        {"noise", noise(appraisal.noise)},
         {"warnings", appraisal.warnings},
         {"assumed_or_left_out", appraisal.notes},
         {"values_by_analogy", appraisal.analogies},
         {"uncertainty", {{"propagated", false}, {"inputs_without_uncertainty", appraisal.fixed}}},
-        {"sources", sources(library, appraisal, design.temperature)},
+        {"sources", sources(library, appraisal)},
     };
     // A file name need not be UTF-8, a JSON document must be.
     return document.dump(2, ' ', false, Json::error_handler_t::replace) + "\n";
-}
-
-std::string appraisal_csv(const Appraisal& appraisal, CsvTable table) {
-    switch (table) {
-        case CsvTable::noise:
-            return noise_csv(appraisal.noise);
-        case CsvTable::layers:
-            return layers_csv(appraisal);
-        case CsvTable::field:
-            return field_csv(appraisal);
-    }
-    throw std::logic_error("no such table");
 }
 
 }  // namespace stillcoat::present

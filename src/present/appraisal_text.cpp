@@ -7,6 +7,7 @@
 #include <map>
 #include <numeric>
 
+#include "present/noise_text.hpp"
 #include "present/sources.hpp"
 #include "present/wording.hpp"
 #include "stillcoat/core/constants.hpp"
@@ -15,8 +16,7 @@ namespace stillcoat::present {
 namespace {
 
 using assess::Appraisal;
-using assess::FaceOptics;
-using assess::NoiseTerm;
+using assess::Face;
 
 /// Above this number of layers the page shows the outermost and the innermost ones only.
 constexpr std::size_t layers_on_page = 24;
@@ -79,32 +79,30 @@ void mirror_section(Page& page, const stack::Design& design, const Appraisal& ap
                  "{}, {}; thicknesses hold at {:g} K, quarter waves counted at {:g} nm",
                  count_text(mirror.layers.size(), "layer"), length_text(mirror.coating_thickness),
                  design.coating.reference_temperature, design.coating.design_wavelength * 1e9));
-    if (!design.overridden.empty()) {
-        page.row("values from the design", fmt::format("{}", fmt::join(design.overridden, "; ")));
+    std::vector<std::string> replaced;
+    for (const stack::Override& values : design.overrides) {
+        replaced.push_back(fmt::format("{} of {}", fmt::join(values.keys, ", "), values.material));
+    }
+    if (!replaced.empty()) {
+        page.row("values from the design", fmt::format("{}", fmt::join(replaced, "; ")));
     }
 }
 
-void power_rows(Page& page, const stack::Design& design, const Appraisal& appraisal) {
-    if (!design.light.power) return;
-    const double power = *design.light.power;
-    const double absorptance = mean_over_faces(appraisal, &optics::Response::absorptance);
-    const double w = design.beam_radius;
-    page.row("incident power", power_text(power));
-    page.row("absorbed in the coating", power_text(power * absorptance));
-    double peak = 0.0;
-    for (const FaceOptics& face : appraisal.faces) {
-        peak = std::max(peak,
-                        *std::max_element(face.peak_intensity.begin(), face.peak_intensity.end()));
-    }
-    const double centre = 2.0 * power / (core::pi * w * w) * 1e-4;
+void power_rows(Page& page, const Appraisal& appraisal) {
+    if (!appraisal.light_load) return;
+    constexpr double square_centimetre = 1e-4;
+    const assess::LightLoad& load = *appraisal.light_load;
+    page.row("incident power", power_text(load.power));
+    page.row("absorbed in the coating", power_text(load.absorbed));
     page.row(
         "intensity at the centre",
         fmt::format("{:.4g} W/cm² incident; {:.4g} W/cm² at the field's maximum in the coating{}",
-                    centre, centre * peak,
+                    load.centre_intensity * square_centimetre,
+                    load.largest_intensity * square_centimetre,
                     appraisal.faces.size() > 1 ? " (of s and p the larger)" : ""));
 }
 
-void face_section(Page& page, const FaceOptics& face, bool label, bool lower_limit) {
+void face_section(Page& page, const Face& face, bool label, bool lower_limit) {
     const optics::Response& r = face.response;
     page.heading(label ? "Light, " + polarisation_text(face.polarisation) + " polarisation"
                        : "Light");
@@ -112,7 +110,11 @@ void face_section(Page& page, const FaceOptics& face, bool label, bool lower_lim
     page.row("transmittance", transmittance_text(r) + " (into the substrate)");
     page.row("absorptance", (lower_limit ? "at least " : "") + fraction_text(r.absorptance));
     page.row("scatter", "not stated");
-    if (face.phase) {
+    if (!face.phase) {
+        page.row("reflection phase",
+                 "not defined: too little is reflected, or the light only just "
+                 "enters the substrate (critical angle)");
+    } else {
         // −π and π are one phase; rounding must not choose the sign.
         const double phase = face.phase->reflection_phase;
         const bool at_end = std::abs(phase) > core::pi - 5e-5;
@@ -140,8 +142,8 @@ void material_section(Page& page, const Appraisal& appraisal) {
         double thickness = 0.0, absorptance = 0.0, energy = 0.0, peak = 0.0, noise = 0.0;
         bool absorption_known = true;
     };
-    const FaceOptics& face = appraisal.faces.front();
-    const std::vector<double> shares = brownian_shares(appraisal.noise);
+    const Face& face = appraisal.faces.front();
+    const std::vector<double> shares = brownian_shares(face.noise);
     std::map<std::string, Sum> sums;
     std::vector<std::string> order;
     for (std::size_t j = 0; j < appraisal.mirror.layers.size(); ++j) {
@@ -173,8 +175,8 @@ void material_section(Page& page, const Appraisal& appraisal) {
 }
 
 void layer_section(Page& page, const Appraisal& appraisal, const PageOptions& options) {
-    const FaceOptics& face = appraisal.faces.front();
-    const std::vector<double> shares = brownian_shares(appraisal.noise);
+    const Face& face = appraisal.faces.front();
+    const std::vector<double> shares = brownian_shares(face.noise);
     const std::size_t count = appraisal.mirror.layers.size();
     const bool all = options.all_layers || count <= layers_on_page;
     const double energy = sum(face.stored_energy);
@@ -205,19 +207,10 @@ void layer_section(Page& page, const Appraisal& appraisal, const PageOptions& op
     }
 }
 
-/// Which material carries most of the coating's Brownian noise: where a change pays first.
-std::string loudest_material(const Appraisal& appraisal) {
-    const std::vector<double> shares = brownian_shares(appraisal.noise);
-    std::map<std::string, double> by_material;
-    for (std::size_t j = 0; j < shares.size(); ++j)
-        by_material[appraisal.mirror.layers[j].material] += shares[j];
-    const auto most =
-        std::max_element(by_material.begin(), by_material.end(),
-                         [](const auto& a, const auto& b) { return a.second < b.second; });
-    if (most == by_material.end()) return "";
-    return fmt::format("{} carries {:.0f} % of the coating's Brownian noise power at {}",
-                       most->first, most->second * 100.0,
-                       frequency_text(appraisal.noise.layer_frequency));
+/// Which of two faces a line is about; nothing when there is one.
+std::string light_words(const Appraisal& appraisal, const Face& face) {
+    if (appraisal.faces.size() == 1) return "";
+    return ", " + polarisation_text(face.polarisation) + " polarisation";
 }
 
 /// The answer in two lines, for those who read no further.
@@ -228,81 +221,13 @@ void short_section(Page& page, const Appraisal& appraisal) {
         "reflects {}, transmits {}, absorbs {}{}{}", reflectance_text(mean),
         transmittance_text(mean), absorption_unknown(appraisal) ? "at least " : "",
         fraction_text(mean.absorptance), appraisal.faces.size() > 1 ? " (unpolarised)" : ""));
-    const assess::Noise& noise = appraisal.noise;
-    const auto at = std::find(noise.spot.begin(), noise.spot.end(), noise.layer_frequency);
-    if (at != noise.spot.end()) {
-        const auto i = static_cast<std::size_t>(at - noise.spot.begin());
-        const NoiseTerm* largest = nullptr;
-        std::string missing;
-        for (const NoiseTerm& term : noise.terms) {
-            if (!term.missing.empty()) {
-                missing += (missing.empty() ? "" : ", ") + term.title;
-            } else if (largest == nullptr || term.spot_psd[i] > largest->spot_psd[i]) {
-                largest = &term;
-            }
-        }
-        if (largest != nullptr) {
-            page.item(fmt::format("moves by {} m/√Hz at {}{}, {:.0f} % of the power from {}",
-                                  amplitude_text(noise.spot_total[i]), frequency_text(*at),
-                                  missing.empty() ? "" : " without " + missing,
-                                  largest->spot_psd[i] / noise.spot_total[i] * 100.0,
-                                  largest->title));
-        }
+    for (const Face& face : appraisal.faces) {
+        const std::string movement = movement_text(face.noise);
+        if (!movement.empty()) page.item(movement + light_words(appraisal, face));
     }
     if (!appraisal.warnings.empty()) {
         page.item(count_text(appraisal.warnings.size(), "warning") + " below", true);
     }
-}
-
-std::vector<std::string> noise_row(const NoiseTerm& term, std::size_t columns) {
-    std::vector<std::string> row{term.title};
-    for (std::size_t i = 0; i < columns; ++i) {
-        row.push_back(term.missing.empty() ? amplitude_text(term.spot_psd[i]) : "–");
-    }
-    return row;
-}
-
-void noise_section(Page& page, const Appraisal& appraisal) {
-    const assess::Noise& noise = appraisal.noise;
-    page.heading("Noise: apparent displacement of the mirror, amplitude spectral density in m/√Hz");
-    if (!noise.computed) {
-        page.item("not computed: " + noise.missing);
-        return;
-    }
-    std::vector<std::string> head{"term"};
-    for (const double f : noise.spot) head.push_back(frequency_text(f));
-    std::vector<std::vector<std::string>> rows;
-    for (const NoiseTerm& term : noise.terms) rows.push_back(noise_row(term, noise.spot.size()));
-    std::vector<std::string> total{noise.complete ? "sum (as power)" : "sum of the terms computed"};
-    for (const double psd : noise.spot_total) total.push_back(amplitude_text(psd));
-    rows.push_back(total);
-    page.table(head, rows);
-    for (const NoiseTerm& term : noise.terms) {
-        if (!term.missing.empty())
-            page.item(fmt::format("{} not computed: {}", term.title, term.missing), true);
-    }
-    for (const assess::Dominance& stretch : noise.dominance) {
-        const std::string where = stretch.from == stretch.to
-                                      ? "at " + frequency_text(stretch.from)
-                                      : fmt::format("from {} to {}", frequency_text(stretch.from),
-                                                    frequency_text(stretch.to));
-        page.item(fmt::format("{} is the largest term {}", stretch.title, where));
-    }
-    const std::string loudest = loudest_material(appraisal);
-    if (!loudest.empty()) page.item(loudest);
-    page.heading("Parts of these terms and other models, for comparison; not in the sum");
-    rows.clear();
-    std::map<std::string, std::string> reasons;
-    for (const NoiseTerm& term : noise.comparisons) {
-        if (term.missing.empty()) {
-            rows.push_back(noise_row(term, noise.spot.size()));
-        } else {
-            std::string& titles = reasons[term.missing];
-            titles += (titles.empty() ? "" : ", ") + term.title;
-        }
-    }
-    page.table(head, rows);
-    for (const auto& [reason, titles] : reasons) page.item(titles + ": not computed: " + reason);
 }
 
 void list_section(Page& page, const std::string& title, const std::vector<std::string>& list,
@@ -339,15 +264,6 @@ std::vector<std::string> by_rule(const std::vector<std::string>& analogies, doub
 
 }  // namespace
 
-std::vector<double> brownian_shares(const assess::Noise& noise) {
-    double total = 0.0;
-    for (const assess::LayerNoise& layer : noise.layers) total += layer.psd;
-    std::vector<double> shares;
-    for (const assess::LayerNoise& layer : noise.layers)
-        shares.push_back(total > 0.0 ? layer.psd / total : 0.0);
-    return shares;
-}
-
 std::string appraisal_text(const stack::Design& design, const materials::Library& library,
                            const Appraisal& appraisal, const PageOptions& options) {
     Page page(options.colour);
@@ -356,7 +272,7 @@ std::string appraisal_text(const stack::Design& design, const materials::Library
     short_section(page, appraisal);
     mirror_section(page, design, appraisal);
     const bool lower_limit = absorption_unknown(appraisal);
-    for (const FaceOptics& face : appraisal.faces) {
+    for (const Face& face : appraisal.faces) {
         face_section(page, face, design.light.angle > 0.0, lower_limit);
     }
     if (appraisal.faces.size() > 1) {
@@ -366,14 +282,17 @@ std::string appraisal_text(const stack::Design& design, const materials::Library
         page.row("transmittance", transmittance_text(mean));
         page.row("absorptance", (lower_limit ? "at least " : "") + fraction_text(mean.absorptance));
     }
-    power_rows(page, design, appraisal);
+    power_rows(page, appraisal);
     material_section(page, appraisal);
-    if (!appraisal.noise.layers.empty()) {
+    const assess::Noise& noise = appraisal.faces.front().noise;
+    if (!noise.layers.empty()) {
         page.line(fmt::format("  Brownian %: share of the coating's Brownian noise power at {}",
-                              frequency_text(appraisal.noise.layer_frequency)));
+                              frequency_text(noise.layer_frequency)));
     }
     layer_section(page, appraisal, options);
-    noise_section(page, appraisal);
+    for (const Face& face : appraisal.faces) {
+        noise_section(page, appraisal.mirror, face.noise, light_words(appraisal, face));
+    }
     list_section(page, "Warnings", appraisal.warnings, true);
     list_section(page, "Assumed or left out", appraisal.notes, false);
     list_section(page, "Values by analogy", by_rule(appraisal.analogies, design.temperature),
@@ -387,7 +306,7 @@ std::string appraisal_text(const stack::Design& design, const materials::Library
         page.item(
             fmt::format("no uncertainty is stated for: {}", fmt::join(appraisal.fixed, ", ")));
     }
-    sources_section(page, library, appraisal, design.temperature);
+    sources_section(page, library, appraisal);
     return page.text();
 }
 

@@ -15,7 +15,4 @@ struct PageOptions {
 std::string appraisal_text(const stack::Design& design, const materials::Library& library,
                            const assess::Appraisal& appraisal, const PageOptions& options);
 
-/// Share of the coating's Brownian power of each layer; empty when it was not computed.
-std::vector<double> brownian_shares(const assess::Noise& noise);
-
 }  // namespace stillcoat::present

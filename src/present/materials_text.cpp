@@ -60,6 +60,7 @@ std::string limits_text(const Entry& entry) {
     add(entry.temperature, 1.0, "K");
     add(entry.wavelength, 1e9, "nm");
     add(entry.frequency, 1.0, "Hz");
+    if (entry.continued_to) text += fmt::format("; continued to {:g} K", *entry.continued_to);
     return text.empty() ? "no limit stated" : text;
 }
 
@@ -105,11 +106,6 @@ std::string sources_text(const Entry& entry, const materials::Library& library) 
                        entry.nature, entry.status);
 }
 
-std::string cold_sources_text(const materials::ColdTable& cold, const materials::Library& library) {
-    return fmt::format("{} [{}] ({}, {})", citations(cold.sources, library), cold.place,
-                       cold.nature, cold.status);
-}
-
 /// What else an index datum says: its medium, its level, its offset.
 std::string index_text(const Entry& entry) {
     std::string text = entry.medium == materials::Medium::air      ? "relative to air"
@@ -142,6 +138,30 @@ void entry_rows(Page& page, const std::string& label, const Entry& entry, const 
     if (entry.beyond) page.row("", beyond_text(*entry.beyond));
     page.row("", sources_text(entry, library));
     if (!entry.note.empty()) page.row("", "note: " + entry.note);
+}
+
+/// Every piece of data behind a value, with where it holds and where it comes from.
+void basis_rows(Page& page, const std::vector<materials::Basis>& bases,
+                const materials::Library& library) {
+    for (const materials::Basis& basis : bases) {
+        const PropertyInfo& about = materials::info(basis.property);
+        std::string what = fmt::format("{} of {}", about.title, basis.material);
+        if (basis.part == materials::Part::cold_table) {
+            what += fmt::format(
+                ", cold table: as printed up to {:g} K, joined to the "
+                "room-temperature value at {:g} K",
+                basis.entry->cold->join.lower, basis.entry->cold->join.upper);
+        } else if (basis.part == materials::Part::rule) {
+            what += ", " + beyond_text(*basis.entry->beyond);
+        } else {
+            what += ", holds for " + limits_text(*basis.entry);
+        }
+        page.row("rests on", what);
+        const std::string status = materials::status_of(basis);
+        page.row("", fmt::format("{} [{}] ({}{})", citations(materials::sources_of(basis), library),
+                                 materials::place_of(basis), materials::nature_of(basis),
+                                 status == "not stated" ? "" : ", " + status));
+    }
 }
 
 }  // namespace
@@ -193,9 +213,6 @@ std::string property_page(const materials::Library& library, const std::string& 
     page.heading(fmt::format("{} of {}", about.title, name));
     page.row("at", fmt::format("{:g} K, {:g} nm, {:g} Hz", conditions.temperature,
                                conditions.wavelength * 1e9, conditions.frequency));
-    const Entry* entry = nullptr;
-    std::string analogy;
-    bool cold = false;
     if (property == materials::PropertyId::refractive_index) {
         const auto value =
             materials::index_at(library, name, conditions.wavelength, conditions.temperature);
@@ -205,31 +222,18 @@ std::string property_page(const materials::Library& library, const std::string& 
         page.row("value",
                  fmt::format("{:.6f} in vacuum; group index {:.6f}", value.index->value, group));
         page.row("", width_text(value.width, *about.kind));
-        entry = value.entry;
-        analogy = value.analogy;
-    } else {
-        const materials::Value value = materials::evaluate(library, name, property, conditions);
-        if (!value.number) throw core::InputError(value.missing, "");
-        page.row("value", in_unit(*value.number, *about.kind));
-        page.row("", width_text(value.width, *about.kind));
-        entry = value.entry;
-        analogy = value.analogy;
-        cold = value.from_cold_table;
-        if (value.frequency_extrapolated)
-            page.row("", "outside the frequencies of the measurement");
+        page.row("note", value.note);
+        page.row("by analogy", value.analogy);
+        basis_rows(page, value.bases, library);
+        return page.text();
     }
-    if (!analogy.empty()) page.row("by analogy", analogy);
-    if (cold && entry != nullptr && entry->cold) {
-        page.row("cold table",
-                 fmt::format(
-                     "used as printed up to {:g} K, joined to the room-temperature value at {:g} K",
-                     entry->cold->join.lower, entry->cold->join.upper));
-        page.row("its source", cold_sources_text(*entry->cold, library));
-    }
-    if (entry != nullptr) {
-        page.row(cold ? "room temperature" : "holds for", limits_text(*entry));
-        page.row("source", sources_text(*entry, library));
-    }
+    const materials::Value value = materials::evaluate(library, name, property, conditions);
+    if (!value.number) throw core::InputError(value.missing, "");
+    page.row("value", in_unit(*value.number, *about.kind));
+    page.row("", width_text(value.width, *about.kind));
+    if (value.frequency_extrapolated) page.row("", "outside the frequencies of the measurement");
+    page.row("by analogy", value.analogy);
+    basis_rows(page, value.bases, library);
     return page.text();
 }
 

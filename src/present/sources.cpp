@@ -8,7 +8,7 @@
 namespace stillcoat::present {
 
 std::vector<SourceUse> data_sources(const materials::Library& library,
-                                    const assess::Appraisal& appraisal, double temperature) {
+                                    const assess::Appraisal& appraisal) {
     std::map<std::string, SourceUse> by_key;
     const auto add = [&](const std::string& key, const std::string& use) {
         SourceUse& source = by_key[key];
@@ -22,15 +22,14 @@ std::vector<SourceUse> data_sources(const materials::Library& library,
         }
     };
     for (const stack::Ledger::Use& use : appraisal.uses) {
-        const std::string what = fmt::format("{} of {} ({})", materials::info(use.property).title,
-                                             use.material, use.entry->status);
-        for (const std::string& key : use.entry->sources) add(key, what);
-        // The sources of a cold table and of a rule count only where they had a say.
-        if (use.entry->cold && temperature < use.entry->cold->join.upper) {
-            for (const std::string& key : use.entry->cold->sources) add(key, what);
-        }
-        if (use.entry->beyond && use.by_rule) {
-            for (const std::string& key : use.entry->beyond->sources) add(key, what);
+        for (const materials::Basis& basis : use.bases) {
+            // A rule has no status: what it says is by analogy.
+            const std::string how = basis.part == materials::Part::rule
+                                        ? materials::nature_of(basis)
+                                        : materials::status_of(basis);
+            const std::string what = fmt::format(
+                "{} of {} ({})", materials::info(basis.property).title, basis.material, how);
+            for (const std::string& key : materials::sources_of(basis)) add(key, what);
         }
     }
     std::vector<SourceUse> list;
@@ -45,7 +44,8 @@ std::vector<std::string> formula_sources(const assess::Appraisal& appraisal) {
         "Principles of Optics, §1.6; stored energy in its non-dispersive form"};
     // Terms that rest on the same formula share a line.
     std::vector<std::pair<std::string, std::string>> by_source;
-    for (const auto* group : {&appraisal.noise.terms, &appraisal.noise.comparisons}) {
+    const assess::Noise& noise = appraisal.faces.front().noise;
+    for (const auto* group : {&noise.terms, &noise.comparisons}) {
         for (const assess::NoiseTerm& term : *group) {
             if (term.source.empty() || !term.missing.empty()) continue;
             const auto known =
@@ -63,11 +63,11 @@ std::vector<std::string> formula_sources(const assess::Appraisal& appraisal) {
 }
 
 void sources_section(Page& page, const materials::Library& library,
-                     const assess::Appraisal& appraisal, double temperature) {
+                     const assess::Appraisal& appraisal) {
     page.heading("Formulas");
     for (const std::string& text : formula_sources(appraisal)) page.item(text);
     page.heading("Sources of the values used");
-    for (const SourceUse& source : data_sources(library, appraisal, temperature)) {
+    for (const SourceUse& source : data_sources(library, appraisal)) {
         page.item(fmt::format("{}{}: {}", source.key.empty() ? "design file: " : "",
                               source.citation, fmt::join(source.used_for, "; ")));
     }

@@ -16,14 +16,13 @@ struct SourceUse {
     std::vector<std::string> used_for;  ///< "loss angle of silica-ibs (from memory)"
 };
 
-/// @param temperature operating temperature [K]: which parts of an entry had a say
 std::vector<SourceUse> data_sources(const materials::Library& library,
-                                    const assess::Appraisal& appraisal, double temperature);
+                                    const assess::Appraisal& appraisal);
 
 /// Formulas used, with what they leave out, each once.
 std::vector<std::string> formula_sources(const assess::Appraisal& appraisal);
 
 void sources_section(Page& page, const materials::Library& library,
-                     const assess::Appraisal& appraisal, double temperature);
+                     const assess::Appraisal& appraisal);
 
 }  // namespace stillcoat::present

@@ -1,5 +1,7 @@
 #include "present/wording.hpp"
 
+#include "stillcoat/core/errors.hpp"
+
 #include <fmt/format.h>
 
 #include <algorithm>
@@ -120,7 +122,7 @@ std::string width_text(const materials::Width& width, const core::QuantityKind& 
 
 std::vector<std::string> wrapped(const std::string& text, std::size_t width) {
     std::vector<std::string> lines;
-    std::istringstream words(text);
+    std::istringstream words(core::printable(text));
     std::string word;
     std::string line;
     while (words >> word) {
@@ -136,13 +138,14 @@ std::vector<std::string> wrapped(const std::string& text, std::size_t width) {
 
 void Page::heading(const std::string& text) {
     if (!text_.empty()) text_ += "\n";
-    text_ += colour_ ? fmt::format("\x1b[1m{}\x1b[0m\n", text) : text + "\n";
+    const std::string shown = core::printable(text);
+    text_ += colour_ ? fmt::format("\x1b[1m{}\x1b[0m\n", shown) : shown + "\n";
 }
 
-void Page::line(const std::string& text) { text_ += text + "\n"; }
+void Page::line(const std::string& text) { text_ += core::printable(text) + "\n"; }
 
 void Page::row(const std::string& label, const std::string& value) {
-    std::string start = "  " + padded(label, label_width, true);
+    std::string start = "  " + padded(core::printable(label), label_width, true);
     for (const std::string& part : wrapped(value, page_width - label_width - 2)) {
         text_ += start + part + "\n";
         start = std::string(label_width + 2, ' ');

@@ -4,7 +4,6 @@
 
 #include <algorithm>
 #include <cmath>
-#include <limits>
 
 #include "stack/coating_reader.hpp"
 #include "stillcoat/core/constants.hpp"
@@ -18,10 +17,14 @@ using core::Problems;
 using core::TableReader;
 namespace kind = core::kind;
 
+// What no mirror leaves, and within which no formula overflows.
+const core::Limits frequency_limits = core::between(1e-12, 1e15, "Hz");
+const core::Limits beam_limits = core::between(1e-9, 1e3, "m");
+const core::Limits body_limits = core::between(1e-6, 1e3, "m");
+const core::Limits power_limits = core::between(1e-30, 1e18, "W");
+
 /// A length whose example is a beam radius.
 const core::QuantityKind beam_radius_kind{"length", "m", "0.42 mm"};
-
-const double infinity = std::numeric_limits<double>::infinity();
 
 /// The reader of a required table of the document.
 std::optional<TableReader> section(TableReader& document, const std::string& key,
@@ -41,13 +44,15 @@ Light read_light(TableReader& document, const materials::Library& library) {
     Light light{};
     auto reader = section(document, "light", "[light] with wavelength = \"1064 nm\"");
     if (!reader) return light;
-    light.wavelength = reader->required_quantity("wavelength", kind::length, core::positive("m"));
+    light.wavelength =
+        reader->required_quantity("wavelength", kind::length, admissible::wavelength());
     const core::Limits acute{0.0, core::pi / 2.0, true, false, "from 0 deg to less than 90 deg"};
     light.angle = reader->quantity("angle", kind::angle, acute).value_or(0.0);
     const auto polarisation = reader->choice("polarisation", {"s", "p", "unpolarised"});
     if (light.angle > 0.0 && !reader->has("polarisation")) {
         reader->missing("polarisation", "\"s\", \"p\" or \"unpolarised\" (off normal incidence)");
     }
+    light.polarisation_stated = polarisation.has_value();
     light.polarisation = polarisation == "p"             ? PolarisationChoice::p
                          : polarisation == "unpolarised" ? PolarisationChoice::unpolarised
                                                          : PolarisationChoice::s;
@@ -55,7 +60,7 @@ Light read_light(TableReader& document, const materials::Library& library) {
     if (light.medium != "vacuum" && light.medium != "air") {
         check_material(*reader, "medium", light.medium, library, {"vacuum", "air"});
     }
-    light.power = reader->quantity("power", kind::power, core::positive("W"));
+    light.power = reader->quantity("power", kind::power, power_limits);
     reader->finish();
     return light;
 }
@@ -67,8 +72,8 @@ MirrorBody read_mirror(TableReader& document, const materials::Library& library)
     mirror.substrate = reader->required_text("substrate");
     if (!mirror.substrate.empty())
         check_material(*reader, "substrate", mirror.substrate, library, {});
-    mirror.diameter = reader->quantity("diameter", kind::length, core::positive("m"));
-    mirror.thickness = reader->quantity("thickness", kind::length, core::positive("m"));
+    mirror.diameter = reader->quantity("diameter", kind::length, body_limits);
+    mirror.thickness = reader->quantity("thickness", kind::length, body_limits);
     if (reader->has("diameter") != reader->has("thickness")) {
         const bool diameter = reader->has("diameter");
         reader->problem_at(
@@ -101,10 +106,10 @@ Band read_band(TableReader& document) {
     const Node* node = document.table("band");
     if (node == nullptr) return band;
     TableReader reader(*node, "[band]", document.problems());
-    band.from = reader.quantity("from", kind::frequency, core::positive("Hz")).value_or(band.from);
-    band.to = reader.quantity("to", kind::frequency, core::positive("Hz")).value_or(band.to);
+    band.from = reader.quantity("from", kind::frequency, frequency_limits).value_or(band.from);
+    band.to = reader.quantity("to", kind::frequency, frequency_limits).value_or(band.to);
     band.points_per_decade = reader.whole_number("points_per_decade", 1, 1000).value_or(20);
-    if (const auto spot = reader.quantities("spot", kind::frequency, core::positive("Hz"))) {
+    if (const auto spot = reader.quantities("spot", kind::frequency, frequency_limits)) {
         band.spot = *spot;
         std::vector<double> sorted = *spot;
         std::sort(sorted.begin(), sorted.end());
@@ -144,25 +149,49 @@ void read_overrides(TableReader& document, Design& design, materials::Library& l
             continue;
         }
         materials::override_properties(library, name, entry.value, document.problems());
-        std::string keys;
-        for (const core::Entry& value : entry.value.entries)
-            keys += (keys.empty() ? "" : ", ") + value.key;
-        design.overridden.push_back(fmt::format("{} of {}", keys, name));
+        Override replaced{name, {}};
+        for (const core::Entry& value : entry.value.entries) replaced.keys.push_back(value.key);
+        design.overrides.push_back(std::move(replaced));
     }
 }
 
+/// A stack and a band that are each admissible may take hours together.
+void check_effort(const Design& design, Problems& problems) {
+    if (!problems.empty()) return;
+    const double points =
+        std::log10(design.band.to / design.band.from) * design.band.points_per_decade +
+        static_cast<double>(design.band.spot.size());
+    const double layers = static_cast<double>(design.coating.layers.size());
+    if (points * layers <= static_cast<double>(most_layer_frequencies)) return;
+    problems.add(core::Place{design.document.name, 0, 0, 1, ""},
+                 fmt::format("{:.0f} layers at {:.0f} frequencies: the product is above {}", layers,
+                             points, most_layer_frequencies),
+                 "take fewer points per decade, or a narrower [band]");
+}
+
 }  // namespace
+
+core::Limits admissible::wavelength() { return core::between(1e-9, 1.0, "m"); }
+
+core::Limits admissible::temperature() { return core::between(1e-3, 1e5, "K"); }
 
 void check_material(TableReader& reader, const std::string& key, const std::string& name,
                     const materials::Library& library, const std::vector<std::string>& others) {
     if (library.materials.count(name) != 0) return;
     std::vector<std::string> names = library.names();
     names.insert(names.end(), others.begin(), others.end());
+    reader.problem_at(key, fmt::format("unknown material \"{}\"", name),
+                      known_materials_hint(name, names));
+}
+
+std::string known_materials_hint(const std::string& name, const std::vector<std::string>& names) {
     const auto near = core::nearest_spelling(name, names);
-    reader.problem_at(
-        key, fmt::format("unknown material \"{}\"", name),
-        near ? fmt::format("did you mean \"{}\"? `stillcoat materials` lists all", *near)
-             : "`stillcoat materials` lists the known ones");
+    return near ? fmt::format("did you mean \"{}\"? `stillcoat materials` lists all", *near)
+                : "`stillcoat materials` lists the known ones";
+}
+
+core::Place LayerInput::place() const {
+    return node != nullptr ? node->find("material")->place() : cell;
 }
 
 Design read_design(core::Document document, materials::Library& library) {
@@ -175,14 +204,13 @@ Design read_design(core::Document document, materials::Library& library) {
     design.light = read_light(reader, library);
     if (auto beam =
             section(reader, "beam", "[beam] with radius = \"0.42 mm\" (1/e² intensity radius)")) {
-        design.beam_radius =
-            beam->required_quantity("radius", beam_radius_kind, core::positive("m"));
+        design.beam_radius = beam->required_quantity("radius", beam_radius_kind, beam_limits);
         beam->finish();
     }
     design.mirror = read_mirror(reader, library);
     if (auto room = section(reader, "environment", "[environment] with temperature = \"295 K\"")) {
         design.temperature =
-            room->required_quantity("temperature", kind::temperature, core::positive("K"));
+            room->required_quantity("temperature", kind::temperature, admissible::temperature());
         room->finish();
     }
     design.band = read_band(reader);
@@ -191,6 +219,7 @@ Design read_design(core::Document document, materials::Library& library) {
         coating->finish();
     }
     reader.finish();
+    check_effort(design, problems);
     problems.throw_if_any();
     return design;
 }

@@ -4,6 +4,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <functional>
 
 namespace stillcoat::stack {
 namespace {
@@ -14,6 +15,18 @@ using materials::Library;
 using materials::PropertyId;
 using materials::Value;
 
+/// Where a name stands, asked for only when something is wrong with it.
+using Where = std::function<core::Place()>;
+
+/// Where a value of a table of the document stands, also one that is a default.
+Where value_place(const Design& design, const std::string& table, const std::string& key) {
+    return [&design, table, key] {
+        const core::Node* node = design.document.root.find(table);
+        if (node != nullptr && node->find(key) != nullptr) node = node->find(key);
+        return node != nullptr ? node->place() : core::Place{design.document.name, 0, 0, 1, ""};
+    };
+}
+
 /// Optical constants of every material of the design, each looked up once.
 class OpticalLookup {
   public:
@@ -21,7 +34,7 @@ class OpticalLookup {
         : library_(library), wavelength_(wavelength), temperature_(temperature), ledger_(ledger) {}
 
     /// Adds a problem at `place` (once per material) when the index is unknown.
-    OpticalConstants get(const std::string& material, const core::Node* node, Problems& problems) {
+    OpticalConstants get(const std::string& material, const Where& where, Problems& problems) {
         const auto found = known_.find(material);
         if (found != known_.end()) return found->second;
         OpticalConstants constants{numerics::Jet<double>(1.0), numerics::Jet<double>(0.0), false};
@@ -30,8 +43,7 @@ class OpticalLookup {
             ledger_.use_index(material, index);
             constants.index = *index.index;
         } else {
-            problems.add(place_of(node), index.missing,
-                         hint(material, PropertyId::refractive_index));
+            problems.add(where(), index.missing, hint(material, PropertyId::refractive_index));
         }
         const Value k = materials::evaluate(library_, material, PropertyId::extinction_coefficient,
                                             {temperature_, wavelength_, 1.0});
@@ -45,17 +57,13 @@ class OpticalLookup {
             constants.extinction_known = true;
         } else if (library_.at(material).form == "metal") {
             // A transparent metal is no approximation of one.
-            problems.add(place_of(node), k.missing, hint(material, used_as));
+            problems.add(where(), k.missing, hint(material, used_as));
         }
         known_[material] = constants;
         return constants;
     }
 
   private:
-    static core::Place place_of(const core::Node* node) {
-        return node != nullptr ? node->place() : core::Place{};
-    }
-
     /// What to do about an unknown optical constant: an alternative that reaches there, if there is
     /// one.
     std::string hint(const std::string& material, PropertyId property) const {
@@ -118,19 +126,17 @@ class ThicknessStrain {
     std::map<std::string, double> known_;
 };
 
-numerics::Jet<double> incident_index(const Design& design, const Library& library,
-                                     OpticalLookup& lookup, Problems& problems) {
-    (void)library;
+numerics::Jet<double> incident_index(const Design& design, OpticalLookup& lookup,
+                                     Problems& problems) {
     const std::string& medium = design.light.medium;
     if (medium == "vacuum") return numerics::Jet<double>(1.0);
     if (medium == "air") return numerics::Jet<double>(materials::index_of_air);
-    const core::Node* node = design.document.root.find("light");
-    if (node != nullptr) node = node->find("medium");
-    const OpticalConstants constants = lookup.get(medium, node, problems);
+    const Where where = value_place(design, "light", "medium");
+    const OpticalConstants constants = lookup.get(medium, where, problems);
     // Bulk absorption over the width of a wave is nothing; a real extinction makes R and T ill
     // defined.
     if (constants.extinction.value > 1e-6) {
-        problems.add(node != nullptr ? node->place() : core::Place{},
+        problems.add(where(),
                      fmt::format("{} absorbs (k = {:.3g}): an absorbing incident medium is refused",
                                  medium, constants.extinction.value),
                      "reflectance and transmittance are not defined in it");
@@ -142,34 +148,34 @@ numerics::Jet<double> incident_index(const Design& design, const Library& librar
 
 std::optional<double> Ledger::use(const std::string& material, PropertyId property,
                                   const Value& value) {
-    if (value.number)
-        add(material, property, value.entry, value.frequency_extrapolated, value.analogy);
+    if (value.number) {
+        add({material, property, value.width, value.bases, value.frequency_extrapolated},
+            value.analogy);
+    }
     return value.number;
 }
 
 void Ledger::use_index(const std::string& material, const IndexValue& value) {
-    add(material, PropertyId::refractive_index, value.entry, false, value.analogy);
+    add({material, PropertyId::refractive_index, value.width, value.bases, false}, value.analogy);
+    if (!value.note.empty()) note(value.note);
 }
 
 void Ledger::note(const std::string& text) {
     if (std::find(notes_.begin(), notes_.end(), text) == notes_.end()) notes_.push_back(text);
 }
 
-void Ledger::add(const std::string& material, PropertyId property, const materials::Entry* entry,
-                 bool extrapolated, const std::string& analogy) {
+void Ledger::add(Use use, const std::string& analogy) {
     if (!analogy.empty() &&
         std::find(analogies_.begin(), analogies_.end(), analogy) == analogies_.end()) {
         analogies_.push_back(analogy);
     }
     for (Use& known : uses_) {
-        if (known.material != material || known.property != property || known.entry != entry)
-            continue;
-        known.frequency_extrapolated = known.frequency_extrapolated || extrapolated;
-        known.by_rule = known.by_rule || !analogy.empty();
+        if (known.material != use.material || known.property != use.property) continue;
+        materials::add_bases(known.bases, use.bases);
+        known.frequency_extrapolated = known.frequency_extrapolated || use.frequency_extrapolated;
         return;
     }
-    if (entry != nullptr)
-        uses_.push_back({material, property, entry, extrapolated, !analogy.empty()});
+    uses_.push_back(std::move(use));
 }
 
 Mirror at_operating_point(const Design& design, const Library& library, Ledger& ledger) {
@@ -185,21 +191,20 @@ Mirror at_operating_point(const Design& design, const Library& library, Ledger& 
     ThicknessStrain strain(design, library, ledger);
     Mirror mirror{};
     mirror.substrate = design.mirror.substrate;
-    mirror.incident_index = incident_index(design, library, operating, problems);
-    const core::Node* substrate = design.document.root.find("mirror");
-    if (substrate != nullptr) substrate = substrate->find("substrate");
-    mirror.substrate_optical = operating.get(mirror.substrate, substrate, problems);
+    mirror.incident_index = incident_index(design, operating, problems);
+    mirror.substrate_optical =
+        operating.get(mirror.substrate, value_place(design, "mirror", "substrate"), problems);
     double path = 0.0;
     double reference_path = 0.0;
     for (const LayerInput& input : coating.layers) {
-        const core::Node* node = input.node->find("material");
+        const Where where = [&input] { return input.place(); };
         MirrorLayer layer{};
         layer.material = input.material;
-        layer.optical = operating.get(input.material, node, problems);
+        layer.optical = operating.get(input.material, where, problems);
         if (!problems.empty()) continue;
         layer.reference_thickness = input.thickness.value_or(0.0);
         if (input.quarter_waves) {
-            const double n = reference.get(input.material, node, problems).index.value;
+            const double n = reference.get(input.material, where, problems).index.value;
             layer.reference_thickness =
                 *input.quarter_waves * coating.design_wavelength / (4.0 * n);
         }
@@ -207,7 +212,7 @@ Mirror at_operating_point(const Design& design, const Library& library, Ledger& 
         layer.quarter_waves =
             4.0 * layer.optical.index.value * layer.thickness / design.light.wavelength;
         path += layer.optical.index.value * layer.thickness;
-        reference_path += reference_colour.get(input.material, node, problems).index.value *
+        reference_path += reference_colour.get(input.material, where, problems).index.value *
                           layer.reference_thickness;
         mirror.coating_thickness += layer.thickness;
         mirror.layers.push_back(std::move(layer));

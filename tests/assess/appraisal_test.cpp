@@ -32,7 +32,7 @@ const assess::NoiseTerm& term(const assess::Noise& noise, const std::string& key
 }
 
 TEST(Appraisal, TotalIsTheSumOfItsTermsAsPower) {
-    const assess::Noise noise = appraised(mirror_text(quarter_wave_pairs)).noise;
+    const assess::Noise noise = appraised(mirror_text(quarter_wave_pairs)).faces[0].noise;
     ASSERT_TRUE(noise.complete);
     for (std::size_t i = 0; i < noise.frequencies.size(); ++i) {
         double sum = 0.0;
@@ -62,13 +62,13 @@ TEST(Appraisal, ReproducesTheClosedFormOfEqualElasticConstants) {
             "poisson_ratio = { value = 0.17, source = \"x\" }\n"));
     const double expected = noise::equal_elastic_psd({72e9, 0.17}, result.mirror.coating_thickness,
                                                      3e-4, 0.06, 295.0, 100.0);
-    EXPECT_NEAR(term(result.noise, "coating_brownian_at_face").spot_psd[2] / expected, 1.0, 1e-12);
+    EXPECT_NEAR(term(result.faces[0].noise, "coating_brownian_at_face").spot_psd[2] / expected, 1.0, 1e-12);
 }
 
 TEST(Appraisal, LeavesOutATermWhoseInputIsUnknownAndSaysWhereToGiveIt) {
     const std::string gold =
         "[[coating.block]]\nlayers = [ { material = \"gold-film\", thickness = \"150 nm\" } ]\n";
-    const assess::Noise noise = appraised(mirror_text(gold)).noise;
+    const assess::Noise noise = appraised(mirror_text(gold)).faces[0].noise;
     EXPECT_FALSE(noise.complete);
     const auto& thermal = term(noise, "thermal_coherent");
     EXPECT_TRUE(thermal.psd.empty());
@@ -81,6 +81,7 @@ TEST(Appraisal, LeavesOutATermWhoseInputIsUnknownAndSaysWhereToGiveIt) {
         appraised(mirror_text(gold,
                               "[material.gold-film]\nthermo_optic_coefficient = { value = "
                               "\"-1e-4 1/K\", source = \"x\" }\n"))
+            .faces[0]
             .noise;
     EXPECT_TRUE(given.complete);
 }
@@ -90,8 +91,8 @@ TEST(Appraisal, OffNormalGivesOpticsForBothPolarisationsAndSaysThatNoiseComesLat
         quarter_wave_pairs, "",
         "wavelength = \"1064 nm\"\nangle = \"45 deg\"\npolarisation = \"unpolarised\""));
     ASSERT_EQ(result.faces.size(), 2u);
-    EXPECT_FALSE(result.noise.computed);
-    EXPECT_FALSE(result.noise.missing.empty());
+    EXPECT_FALSE(result.faces[0].noise.computed);
+    EXPECT_FALSE(result.faces[0].noise.missing.empty());
     EXPECT_GT(result.faces[0].response.reflectance, result.faces[1].response.reflectance);
     EXPECT_NEAR(
         mean_over_faces(result, &optics::Response::transmittance),
@@ -104,10 +105,10 @@ TEST(Appraisal, ExcessLossMultipliesTheFilmsAndIsNamed) {
     const assess::Appraisal more =
         appraised(mirror_text("[coating]\nexcess_loss = 1.15\n" + quarter_wave_pairs));
     EXPECT_NEAR(
-        term(more.noise, "coating_brownian").psd[5] / term(plain.noise, "coating_brownian").psd[5],
+        term(more.faces[0].noise, "coating_brownian").psd[5] / term(plain.faces[0].noise, "coating_brownian").psd[5],
         1.15, 1e-12);
-    EXPECT_EQ(term(more.noise, "substrate_brownian").psd[5],
-              term(plain.noise, "substrate_brownian").psd[5]);
+    EXPECT_EQ(term(more.faces[0].noise, "substrate_brownian").psd[5],
+              term(plain.faces[0].noise, "substrate_brownian").psd[5]);
     EXPECT_NE(std::find_if(more.notes.begin(), more.notes.end(),
                            [](const std::string& note) {
                                return note.find("excess_loss = 1.15") != std::string::npos;
@@ -190,7 +191,7 @@ TEST(Appraisal, OfASiliconMirrorHasNoExpansionNoiseWhereSiliconDoesNotExpand) {
     const auto at = [](const std::string& temperature) {
         const assess::Appraisal result = appraised(mirror_text(
             quarter_wave_pairs, "", "wavelength = \"1550 nm\"", "silicon", temperature));
-        return term(result.noise, "bare_substrate_thermo_elastic").spot_psd[2];
+        return term(result.faces[0].noise, "bare_substrate_thermo_elastic").spot_psd[2];
     };
     EXPECT_LT(at("123.5 K"), 1e-12 * at("140 K"));
 }

@@ -71,15 +71,15 @@ CASES = {
        |                         ^^^^^^^^^^^^^^
        did you mean "tantala-ibs"? `stillcoat materials` lists all"""),
     "negative-thickness": (change("quarter_waves = 1.0", 'thickness = "-3 nm"'), """\
-{f}:10:52: thickness in layer 1 of the block is "-3 nm"
+{f}:10:52: thickness in layer 1 of [[coating.block]] 1 is "-3 nm"
     10 | layers = [ { material = "tantala-ibs", thickness = "-3 nm" } ]
        |                                                    ^^^^^^^
-       it must be greater than 0 m"""),
+       it must be from 1e-15 m to 1 m"""),
     "zero-thickness": (change("quarter_waves = 1.0", "quarter_waves = 0"), """\
-{f}:10:56: quarter_waves in layer 1 of the block is 0
+{f}:10:56: quarter_waves in layer 1 of [[coating.block]] 1 is 0
     10 | layers = [ { material = "tantala-ibs", quarter_waves = 0 } ]
        |                                                        ^
-       it must be greater than 0"""),
+       it must be from 1e-9 to 1e9"""),
     "repeat-zero": (change("layers =", "repeat = 0\nlayers ="), """\
 {f}:10:10: repeat in [[coating.block]] 1 is 0
     10 | repeat = 0
@@ -116,20 +116,20 @@ CASES = {
        choose another material, or state refractive_index in [material."tantala-ibs"]
 2 problems"""),
     "not-a-number": (change("quarter_waves = 1.0", "quarter_waves = nan"), """\
-{f}:10:56: quarter_waves in layer 1 of the block is nan
+{f}:10:56: quarter_waves in layer 1 of [[coating.block]] 1 is nan
     10 | layers = [ { material = "tantala-ibs", quarter_waves = nan } ]
        |                                                        ^^^
-       it must be greater than 0"""),
+       it must be from 1e-9 to 1e9"""),
     "infinite": (change("quarter_waves = 1.0", "quarter_waves = inf"), """\
-{f}:10:56: quarter_waves in layer 1 of the block is inf
+{f}:10:56: quarter_waves in layer 1 of [[coating.block]] 1 is inf
     10 | layers = [ { material = "tantala-ibs", quarter_waves = inf } ]
        |                                                        ^^^
-       it must be greater than 0"""),
+       it must be from 1e-9 to 1e9"""),
     "beyond-double": (change("quarter_waves = 1.0", "quarter_waves = 1e400"), """\
-{f}:10:56: quarter_waves in layer 1 of the block is inf
+{f}:10:56: quarter_waves in layer 1 of [[coating.block]] 1 is inf
     10 | layers = [ { material = "tantala-ibs", quarter_waves = 1e400 } ]
        |                                                        ^^^^^
-       it must be greater than 0"""),
+       it must be from 1e-9 to 1e9"""),
     "beyond-double-with-unit": (change('"1 mm"', '"1e400 mm"'), """\
 {f}:4:10: radius in [beam]: the number in "1e400 mm" is beyond what can be held
      4 | radius = "1e400 mm"
@@ -148,7 +148,7 @@ CASES = {
 {f}:4:10: radius in [beam] is "0 mm"
      4 | radius = "0 mm"
        |          ^^^^^^
-       it must be greater than 0 m"""),
+       it must be from 1e-09 m to 1000 m"""),
     "right-angle": (change('"1064 nm"', '"1064 nm"\nangle = "90 deg"\npolarisation = "s"'), """\
 {f}:3:9: angle in [light] is "90 deg"
      3 | angle = "90 deg"
@@ -165,7 +165,7 @@ CASES = {
        |                ^^^
        it must be one of "s", "p", "unpolarised\""""),
     "two-thicknesses": (change("quarter_waves = 1.0", 'quarter_waves = 1.0, thickness = "5 nm"'), """\
-{f}:10:61: thickness and quarter_waves in layer 1 of the block contradict each other
+{f}:10:61: thickness and quarter_waves in layer 1 of [[coating.block]] 1 contradict each other
     10 | layers = [ { material = "tantala-ibs", quarter_waves = 1.0, thickness = "5 nm" } ]
        |                                                             ^^^^^^^^^
        and here: {f}:10:40
@@ -289,7 +289,71 @@ noise not computed: noise is computed for normal incidence only; the optics hold
                         ["appraise", "design.toml", "--out", "design.toml"]),
     "result-in-no-folder": (GOOD, "none/result.txt: cannot create: No such file or directory\n"
                             "       nothing was written", ["appraise", "design.toml", "--out", "none/result.txt"]),
-    "full-disk": (GOOD, "/dev/full: cannot write: No space left on device\n       nothing was written",
+    "frequency-in-turns": (GOOD + '[band]\nto = "6000 rpm"\n', """\
+{f}:12:6: to in [band]: "rpm" is not a unit of frequency
+    12 | to = "6000 rpm"
+       |      ^^^^^^^^^^
+       write a frequency with its unit, for example "100 Hz\""""),
+    "quarter-waves-in-turns": (change("quarter_waves = 1.0", 'quarter_waves = "1 turn"'), """\
+{f}:10:56: quarter_waves in layer 1 of [[coating.block]] 1: "turn" is not a unit of pure number
+    10 | layers = [ { material = "tantala-ibs", quarter_waves = "1 turn" } ]
+       |                                                        ^^^^^^^^
+       write a pure number with its unit, for example "0.5\""""),
+    "extinction-and-absorption": (GOOD + """[material.silica-ibs]
+extinction_coefficient = { value = 1e-7, source = "x" }
+absorption_coefficient = { value = "1e-3 1/m", source = "x" }
+""", """\
+{f}:12:1: extinction_coefficient and absorption_coefficient in [material."silica-ibs"] contradict each other
+    12 | extinction_coefficient = { value = 1e-7, source = "x" }
+       | ^^^^^^^^^^^^^^^^^^^^^^
+       and here: {f}:13:1
+    13 | absorption_coefficient = { value = "1e-3 1/m", source = "x" }
+       | ^^^^^^^^^^^^^^^^^^^^^^
+       each follows from the other: keep one of the two"""),
+    "table-shorter-than-its-range": (GOOD + """[material.tantala-ibs]
+loss_angle = { temperature_K = [280, 300], values = [3e-4, 4e-4], range = { temperature_K = [4, 300] }, source = "x" }
+""", """\
+{f}:12:93: temperature_K in range of loss_angle of tantala-ibs is [4, 300], its table ends at 280 and 300
+    12 |  values = [3e-4, 4e-4], range = { temperature_K = [4, 300] }, source = "x" }
+       |                                                   ^^^^^^^^
+       a little above the end: continued_to_K; further: a rule under beyond"""),
+    "wavelength-beyond-own-table": (GOOD + """[material.tantala-ibs]
+refractive_index = { wavelength_nm = [400, 600], values = [2.2, 2.1], medium = "vacuum", source = "x" }
+""", """\
+{f}:10:25: refractive index of tantala-ibs is known for 400–600 nm only, not at 1064 nm
+    10 | layers = [ { material = "tantala-ibs", quarter_waves = 1.0 } ]
+       |                         ^^^^^^^^^^^^^
+       choose another material, or state refractive_index in [material."tantala-ibs"]"""),
+    "loss-above-one-in-the-band": (GOOD + """[material.tantala-ibs]
+loss_angle = { value_at_1_Hz = 1e-4, exponent = 2, source = "x" }
+""", """\
+coating Brownian not computed: loss angle of tantala-ibs at 295 K and 100 Hz comes out as 1; it must be from 0 to less than 1; give it in [material."tantala-ibs"]
+       refused because of --strict; nothing was written""", ["appraise", "design.toml", "--strict", "--out", "result.txt"]),
+    "brackets-behind-a-long-text": ('a = """\n" """\nb = ' + "[" * 100000, """\
+{f}:3:1: nested deeper than 64 levels
+       write the tables flat"""),
+    "layers-times-frequencies": (change("layers =", "repeat = 20000\nlayers =") + "[band]\npoints_per_decade = 1000\n", """\
+{f}: 20000 layers at 4004 frequencies: the product is above 2000000
+       take fewer points per decade, or a narrower [band]"""),
+    "inner-block-without-layers": (change(LAYER, "layers = [ { repeat = 3 } ]"), """\
+{f}:10:12: layers is missing in the block layer 1 of [[coating.block]] 1
+    10 | layers = [ { repeat = 3 } ]
+       |            ^^^^^^^^^^^^^^
+       add layers = [ { material = "silica-ibs", quarter_waves = 1.0 } ]"""),
+    "table-and-blocks": (change("[[coating.block]]", '[coating]\ntable = "x.csv"\n[[coating.block]]'), """\
+{f}:10:1: table and block in [coating] contradict each other
+    10 | table = "x.csv"
+       | ^^^^^
+       and here: {f}:11:1
+    11 | [[coating.block]]
+       | ^^^^^^^^^^^^^^^^^
+       a coating has one list of layers: keep one of the two"""),
+    "table-missing": (change("[[coating.block]]\n" + LAYER, '[coating]\ntable = "x.csv"'), """\
+{f}:10:9: x.csv: no such file
+    10 | table = "x.csv"
+       |         ^^^^^^^
+       check the name and folder"""),
+    "full-disk": (GOOD, "/dev/full: cannot write: No space left on device\n       what it holds now is not complete",
                   ["appraise", "design.toml", "--replace", "--out", "/dev/full"]),
     "unknown-command": (GOOD, """\
 unknown command "apraise"

@@ -31,12 +31,13 @@ expect(run("appraise", "-", stdin=design.read_text()).stdout.splitlines()[2:] ==
 
 # The JSON document and the CSV tables hold the same numbers.
 document = json.loads(run("appraise", design, "--json").stdout)
+noise = document["faces"][0]["noise"]
 table = list(csv.DictReader(io.StringIO(run("appraise", design, "--csv", "noise").stdout)))
-expect([float(r["frequency_Hz"]) for r in table] == document["noise"]["frequencies_Hz"], "CSV and JSON frequencies differ")
-expect([float(r["total_psd_m2_per_Hz"]) for r in table] == document["noise"]["total_psd_m2_per_Hz"],
+expect([float(r["frequency_Hz"]) for r in table] == noise["frequencies_Hz"], "CSV and JSON frequencies differ")
+expect([float(r["total_psd_m2_per_Hz"]) for r in table] == noise["total_psd_m2_per_Hz"],
        "CSV and JSON totals differ")
-total = [sum(t["psd_m2_per_Hz"][i] for t in document["noise"]["terms"] if t["in_total"]) for i in range(len(table))]
-expect(all(abs(a / b - 1) < 1e-12 for a, b in zip(total, document["noise"]["total_psd_m2_per_Hz"])),
+total = [sum(t["psd_m2_per_Hz"][i] for t in noise["terms"] if t["in_total"]) for i in range(len(table))]
+expect(all(abs(a / b - 1) < 1e-12 for a, b in zip(total, noise["total_psd_m2_per_Hz"])),
        "the total is not the sum of its terms")
 layers = list(csv.DictReader(io.StringIO(run("appraise", design, "--csv", "layers").stdout)))
 expect(len(layers) == document["coating"]["layer_count"] == 36, "layers table")
@@ -75,7 +76,69 @@ expect("own bench (invented)" in changed and "no uncertainty is stated for: Youn
        "override not shown")
 expect(changed != text, "the override changes nothing")
 
-for arguments in (["--help"], ["appraise", "--help"], ["materials", "--help"], ["units", "--help"]):
+# Where nothing is reflected there is no phase: said in words and as null, never as a number.
+nothing = """[light]
+wavelength = "1064 nm"
+medium = "fused-silica"
+[beam]
+radius = "1 mm"
+[mirror]
+substrate = "fused-silica"
+[environment]
+temperature = "295 K"
+[[coating.block]]
+layers = [ { material = "fused-silica", thickness = "100 nm" } ]
+[material.fused-silica]
+extinction_coefficient = { value = 0, source = "x" }
+"""
+text_of_nothing = run("appraise", "-", stdin=nothing).stdout
+expect("not defined" in text_of_nothing and "nan" not in text_of_nothing, "phase of no light, text")
+face_of_nothing = json.loads(run("appraise", "-", "--json", stdin=nothing).stdout)["faces"][0]
+expect(face_of_nothing["reflection_phase_rad"] is None, "phase of no light, JSON")
+expect(face_of_nothing["noise"]["terms"][0]["psd_m2_per_Hz"] is None, "noise of no light")
+
+# Help goes where it is asked to go, and a full disk is no success.
+for words in (["--help"], ["--version"], []):
+    with open("/dev/full", "w") as full:
+        result = subprocess.run([program, *words], stdout=full, stderr=subprocess.PIPE, text=True)
+    expect(result.returncode == 2 and "No space left" in result.stderr, f"{words} to a full disk")
+
+# Layers to the coater and back: the same appraisal to the last byte.
+with tempfile.TemporaryDirectory() as folder:
+    folder = pathlib.Path(folder)
+    for place in ("a", "b"):
+        (folder / place).mkdir()
+    source = design.read_text()
+    (folder / "a/design.toml").write_text(source)
+    run("layers", "design.toml", "--csv", "--out", folder / "b/run17.csv", cwd=folder / "a")
+    head = source[:source.index("[[coating.block]]")]
+    expect("[coating]" in head, "the example has no [coating] before its blocks")
+    (folder / "b/design.toml").write_text(head + '\ntable = "run17.csv"\n')
+    for words in ([], ["--json"], ["--csv", "layers"]):
+        pages = [run("appraise", "design.toml", *words, cwd=folder / place).stdout for place in ("a", "b")]
+        expect(pages[0] == pages[1] and pages[0], f"round trip through the layer table, {words}")
+    expect(run("layers", "design.toml", "--csv", cwd=folder / "a").stdout == (folder / "b/run17.csv").read_text(),
+           "the layer table of the design read back")
+expect("Totals by material" in run("layers", design).stdout, "layers page")
+
+# A draft is a design without a warning; its comment holds the neighbouring counts.
+for cap in ("none", "quarter-wave", "half-wave"):
+    for target in ("5 ppm", "20 %"):
+        drafted = run("draft", "--high", "tantala-ibs", "--low", "silica-ibs", "--substrate", "fused-silica",
+                      "--wavelength", "1064 nm", "--transmittance", target, "--cap", cap)
+        document = json.loads(run("appraise", "-", "--json", stdin=drafted.stdout).stdout)
+        limit = 5e-6 if target == "5 ppm" else 0.2
+        expect(document["warnings"] == [], f"draft {cap} {target}: {document['warnings']}")
+        expect(document["transmittance"] <= limit, f"draft {cap} {target}: misses its transmittance")
+        counts = [line for line in drafted.stderr.splitlines() if "pairs transmit" in line]
+        expect(len(counts) in (2, 3) and "<- drafted" in counts[-2], f"draft {cap} {target}: {drafted.stderr}")
+two = run("draft", "--high", "tantala-ibs", "--low", "silica-ibs", "--substrate", "silicon",
+          "--wavelength", "1397 nm", "--antireflecting")
+expect(json.loads(run("appraise", "-", "--json", stdin=two.stdout).stdout)["reflectance"] < 1e-9, "two layers reflect")
+smallest = run("draft").stdout
+expect("[coating]" in smallest and run("appraise", "-", stdin=smallest).stdout, "the smallest example")
+
+for arguments in (["--help"], *([command, "--help"] for command in ("draft", "appraise", "layers", "materials", "units"))):
     out = run(*arguments).stdout
     expect("Usage" in out, f"{arguments}: no help")
     expect("xample" in out or arguments[0] == "units", f"{arguments}: no example")

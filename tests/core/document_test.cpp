@@ -55,6 +55,23 @@ TEST(Document, MayHoldBracketsInTextsAndComments) {
     EXPECT_EQ(parse_document(text, "d.toml").root.entries.size(), 2u);
 }
 
+TEST(Document, MayHoldTextsOfSeveralLines) {
+    const std::string brackets(200, '[');
+    for (const std::string quotes : {"\"\"\"", "'''"}) {
+        const std::string mark(1, quotes[0]);
+        // A single quote inside neither ends the text nor begins another one.
+        const std::string text =
+            "a = " + quotes + "\n" + brackets + mark + "\n" + brackets + quotes + "\nb = 1\n";
+        const Document document = parse_document(text, "d.toml");
+        EXPECT_EQ(document.root.find("a")->text, brackets + mark + "\n" + brackets);
+        // Brackets behind such a text are counted.
+        const std::string hidden = "a = " + quotes + mark + " " + quotes +
+                                   "\nb = " + std::string(100'000, '[') + mark + "\n";
+        EXPECT_NE(message_of([&] { parse_document(hidden, "d.toml"); }).find("nested deeper"),
+                  std::string::npos);
+    }
+}
+
 TEST(Document, DoesNotClampAnIntegerBeyondSixtyFourBits) {
     const Document document =
         parse_document("a = 99999999999999999999999\nb = -99999999999999999999999\n", "d.toml");

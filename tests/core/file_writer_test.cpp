@@ -41,6 +41,22 @@ TEST_F(FileWriter, KeepsAnExistingFileUnlessToldOtherwise) {
     EXPECT_EQ(files(), 1u);
 }
 
+TEST_F(FileWriter, KeepsPermissionsAndLinksOfWhatItReplaces) {
+    write_file((folder_ / "a").string(), "one", Existing::keep);
+    fs::permissions(folder_ / "a", fs::perms::owner_read | fs::perms::owner_write);
+    fs::create_symlink(folder_ / "a", folder_ / "link");
+    write_file((folder_ / "link").string(), "two", Existing::replace);
+    EXPECT_EQ(content("a"), "two");
+    EXPECT_TRUE(fs::is_symlink(folder_ / "link"));
+    EXPECT_EQ(fs::status(folder_ / "a").permissions(),
+              fs::perms::owner_read | fs::perms::owner_write);
+    fs::create_symlink(folder_ / "nowhere", folder_ / "dangling");
+    for (const Existing existing : {Existing::keep, Existing::replace}) {
+        EXPECT_THROW(write_file((folder_ / "dangling").string(), "x", existing), InputError);
+    }
+    EXPECT_EQ(files(), 3u);
+}
+
 TEST_F(FileWriter, LeavesNothingBehindWhenItCannotWrite) {
     EXPECT_THROW(write_file((folder_ / "none" / "a").string(), "x", Existing::keep), InputError);
     EXPECT_THROW(write_file(folder_.string(), "x", Existing::replace), InputError);

@@ -17,38 +17,47 @@ const double nan = std::numeric_limits<double>::quiet_NaN();
 const double infinity = std::numeric_limits<double>::infinity();
 
 /// Everything that takes beam radius, temperature and frequency.
-using Spectrum = std::function<double(double w, double temperature, double f)>;
+using Spectrum = std::function<double(const Footprint& w, double temperature, double f)>;
 
 std::vector<Spectrum> all_spectra() {
     static const Mirror mirror = quarter_wave_mirror(true, 2);
     static const TransmittedPath path{1.45, 8.6e-6, 0.1, 1064e-9};
-    return {
-        [](double w, double t, double f) { return mirror.noise(w, t, f).everything_coherent; },
-        [](double w, double t, double f) { return substrate_thermo_elastic_psd(silica, w, t, f); },
-        [](double w, double t, double f) { return adiabatic_thermo_elastic_psd(silica, w, t, f); },
-        [](double w, double t, double f) { return thermo_refractive_psd(silica, path, w, t, f); },
-        [](double w, double t, double f) {
-            return standing_wave_thermo_refractive_psd(silica, path, w, t, f);
-        },
-        [](double w, double t, double f) { return face_temperature_psd(1.38, 1.64e6, w, t, f); },
-        [](double w, double t, double f) {
-            return face_temperature_psd_one_dimensional(1.38, 1.64e6, w, t, f);
-        },
-        [](double w, double t, double f) {
-            return classic_thermo_optic(mirror.substrate, mirror.layers, w, t, f,
-                                        LayerStrain::with_substrate)
-                .psd;
-        },
-        [](double w, double t, double f) {
-            return parallel_perpendicular_psd(silica_elastic, tantala_elastic, 1e-6, 1e-4, 2e-4, w,
-                                              t, f);
-        },
-        [](double w, double t, double f) {
-            return equal_elastic_psd(silica_elastic, 1e-6, 1e-4, w, t, f);
-        },
-        [](double w, double t, double f) {
-            return brownian_psd(half_space_energy(silica_elastic, w), {1e-6, 1e-6}, t, f);
-        }};
+    return {[](const Footprint& w, double t, double f) {
+                return mirror.noise(w, t, f).everything_coherent;
+            },
+            [](const Footprint& w, double t, double f) {
+                return substrate_thermo_elastic_psd(silica, w, t, f);
+            },
+            [](const Footprint& w, double t, double f) {
+                return adiabatic_thermo_elastic_psd(silica, w, t, f);
+            },
+            [](const Footprint& w, double t, double f) {
+                return thermo_refractive_psd(silica, path, w, t, f);
+            },
+            [](const Footprint& w, double t, double f) {
+                return standing_wave_thermo_refractive_psd(silica, path, w, t, f);
+            },
+            [](const Footprint& w, double t, double f) {
+                return face_temperature_psd(1.38, 1.64e6, w, t, f);
+            },
+            [](const Footprint& w, double t, double f) {
+                return face_temperature_psd_one_dimensional(1.38, 1.64e6, w, t, f);
+            },
+            [](const Footprint& w, double t, double f) {
+                return classic_thermo_optic(mirror.substrate, mirror.layers, w, t, f,
+                                            LayerStrain::with_substrate)
+                    .psd;
+            },
+            [](const Footprint& w, double t, double f) {
+                return parallel_perpendicular_psd(silica_elastic, tantala_elastic, 1e-6, 1e-4, 2e-4,
+                                                  w, t, f);
+            },
+            [](const Footprint& w, double t, double f) {
+                return equal_elastic_psd(silica_elastic, 1e-6, 1e-4, w, t, f);
+            },
+            [](const Footprint& w, double t, double f) {
+                return brownian_psd(half_space_energy(silica_elastic, w), {1e-6, 1e-6}, t, f);
+            }};
 }
 
 TEST(NoiseDomain, BeamTemperatureAndFrequencyMustBePositiveAndFinite) {
@@ -56,6 +65,8 @@ TEST(NoiseDomain, BeamTemperatureAndFrequencyMustBePositiveAndFinite) {
         EXPECT_GT(spectrum(0.01, 300.0, 100.0), 0.0);
         for (const double bad : {0.0, -1.0, nan, infinity}) {
             EXPECT_THROW(spectrum(bad, 300.0, 100.0), core::DomainError);
+            EXPECT_THROW(spectrum({0.01, bad}, 300.0, 100.0), core::DomainError);
+            EXPECT_THROW(spectrum({bad, 0.01}, 300.0, 100.0), core::DomainError);
             EXPECT_THROW(spectrum(0.01, bad, 100.0), core::DomainError);
             EXPECT_THROW(spectrum(0.01, 300.0, bad), core::DomainError);
         }
@@ -64,7 +75,7 @@ TEST(NoiseDomain, BeamTemperatureAndFrequencyMustBePositiveAndFinite) {
 
 TEST(NoiseDomain, SpectraStayFiniteAtTheEndsOfTheirRange) {
     for (const Spectrum& spectrum : all_spectra()) {
-        for (const double w : {1e-6, 1.0}) {
+        for (const Footprint& w : {Footprint(1e-6), Footprint(1.0), Footprint(1e-6, 1.0)}) {
             for (const double f : {1e-9, 1e10}) {
                 const double psd = spectrum(w, 4.0, f);
                 EXPECT_TRUE(std::isfinite(psd) && psd >= 0.0) << psd;
@@ -113,13 +124,16 @@ TEST(NoiseDomain, ThermalPropertiesOutOfRangeAreRefused) {
                                       [](ThermalLayer& l) { l.index_slope = nan; },
                                       [](ThermalLayer& l) { l.readout.thickness = -1e-9; },
                                       [](ThermalLayer& l) { l.readout.strain_constant = nan; },
+                                      [](ThermalLayer& l) { l.readout.index_constant = nan; },
+                                      [](ThermalLayer& l) { l.readout.in_plane_constant = nan; },
                                       [](ThermalLayer& l) {
-                                          l.readout.index_square = {0.0, nan};
+                                          l.readout.terms[0].index = {0.0, nan};
                                       },
-                                      [](ThermalLayer& l) { l.readout.strain_square = infinity; },
-                                      [](ThermalLayer& l) { l.readout.forward = nan; },
+                                      [](ThermalLayer& l) { l.readout.terms[0].strain = infinity; },
+                                      [](ThermalLayer& l) { l.readout.terms[0].in_plane = nan; },
+                                      [](ThermalLayer& l) { l.readout.terms[0].rate = nan; },
                                       [](ThermalLayer& l) {
-                                          l.readout.wavenumber = {1e7, -1e3};
+                                          l.readout.terms[0].rate = {1e3, 1e7};
                                       }};
     for (std::size_t i = 0; i < changes.size(); ++i) {
         Mirror mirror = quarter_wave_mirror(true, 2);

@@ -7,13 +7,9 @@
 #include "noise/collocation.hpp"
 #include "noise/mirrors.hpp"
 #include "noise/wavenumber_rule.hpp"
-#include "support/worst_error.hpp"
 
 namespace stillcoat::noise {
 namespace {
-
-using test::relative_error;
-using test::WorstError;
 
 SourceProducts products(const Mirror& mirror, double k, double omega) {
     return source_products(layered_heat(mirror.substrate, mirror.layers), k, omega);
@@ -52,12 +48,14 @@ TEST(LayeredHeat, EqualsCollocationForRandomMirrors) {
     SCOPED_TRACE(seed);
     RandomMirrors random(seed);
     WorstError worst;
-    for (int i = 0; i < 16; ++i) {
-        const Mirror mirror = random.mirror(1 + i % 3, i % 2 ? 0.3 : 0.0);
+    for (int i = 0; i < 24; ++i) {
+        const Mirror mirror = random.mirror(1 + i % 3, i % 2 ? 0.3 : 0.0, i % 3 == 0);
         const double omega = random.spread(1e-3, 1e8), k = random.spread(1e-1, 4e5);
         double phase = 0.0;
         for (const ThermalLayer& layer : mirror.layers) {
-            phase = std::max(phase, std::abs(layer.readout.wavenumber) * layer.readout.thickness);
+            for (const optics::ReadoutTerm& term : layer.readout.terms) {
+                phase = std::max(phase, 0.5 * std::abs(term.rate) * layer.readout.thickness);
+            }
         }
         const auto exact = collocation::products(mirror, k, omega, phase < 5.0 ? 40 : 70);
         const SourceProducts here = products(mirror, k, omega);
@@ -74,9 +72,39 @@ TEST(LayeredHeat, EqualsCollocationForRandomMirrors) {
         const double scale = std::sqrt(expected.ee * expected.rr);
         EXPECT_NEAR(double(real(exact[1][0])) / scale, here.er / scale, 1e-13);
         const double with_substrate = std::sqrt(expected.ee * expected.ss);
-        EXPECT_NEAR(double(real(exact[0][2])) / with_substrate, here.es / with_substrate, 1e-12);
+        EXPECT_NEAR(double(real(exact[0][2])) / with_substrate, here.es / with_substrate, 9e-14);
     }
     worst.print("layered heat against collocation");
+    EXPECT_LT(worst.error(), 4e-13);
+}
+
+TEST(LayeredHeat, EqualsCollocationThroughALayerAtItsCriticalAngle) {
+    WorstError worst;
+    for (const optics::Polarisation polarisation :
+         {optics::Polarisation::s, optics::Polarisation::p}) {
+        for (const double relative : {-1e-3, 0.0, 1e-9}) {
+            const double angle = 0.25 * pi, beta = 1.45 * std::sin(angle);
+            const optics::OpticalStack stack{
+                1.45, {{2.07, 9e-8}, {beta * (1.0 + relative), 2e-7}, {2.07, 1.3e-7}}, 1.75};
+            Mirror mirror{silica,
+                          {{tantala, 1.4e-5, {}}, {silica, -8e-5, {}}, {tantala, 1.4e-5, {}}}};
+            const std::vector<optics::ReadoutLayer> weights = optics::readout_weights(
+                optics::standing_wave(stack, {1064e-9, angle, polarisation}),
+                std::vector<optics::Photoelasticity>(3, {0.12, 0.27}));
+            for (std::size_t j = 0; j < 3; ++j) mirror.layers[j].readout = weights[j];
+            for (const double omega : {1.0, 1e7}) {
+                const auto exact = collocation::products(mirror, 2e3, omega, 40);
+                const SourceProducts here = products(mirror, 2e3, omega);
+                SourceProducts expected = here;
+                expected.ee = double(real(exact[0][0]));
+                expected.er = double(real(exact[0][1]));
+                expected.rr = double(real(exact[1][1]));
+                expected.rs = double(real(exact[2][1]));
+                worst.see(difference(here, expected), std::to_string(relative));
+            }
+        }
+    }
+    worst.print("layered heat with a critical layer against collocation");
     EXPECT_LT(worst.error(), 1e-12);
 }
 
@@ -111,13 +139,15 @@ TEST(LayeredHeat, EqualsTheSlabOfTheSubstratesMatterAtEveryThickness) {
         }
     }
     worst.print("one slab, 1 nm to 10 mm, 1 mHz to 1 GHz");
-    EXPECT_LT(worst.error(), 1e-11);
+    EXPECT_LT(worst.error(), 5e-15);
 }
 
 TEST(LayeredHeat, StaysFiniteInAThickAbsorbingLayerAtAGigahertz) {
     Mirror mirror = quarter_wave_mirror(true, 2, 0.5);
     mirror.layers[1].readout.thickness = 5e-3;
-    mirror.layers[1].readout.backward = 0.0;
+    for (optics::ReadoutTerm& term : mirror.layers[1].readout.terms) {
+        if (term.upwards) term.strain = term.index = 0.0;
+    }
     const SourceProducts p = products(mirror, 1e3, 2.0 * core::pi * 1e9);
     for (const double value : {p.ee, p.er, p.rr, p.es, p.rs, p.ss, p.bare}) {
         EXPECT_TRUE(std::isfinite(value));
@@ -130,7 +160,7 @@ TEST(LayeredHeat, AbsorptionThatVanishesMeetsTheTransparentForm) {
     // Four exponentials (absorbing) against two (transparent).
     const SourceProducts transparent = products(quarter_wave_mirror(false, 6), 2e3, 1e4);
     const SourceProducts absorbing = products(quarter_wave_mirror(false, 6, 1e-14), 2e3, 1e4);
-    EXPECT_LT(difference(absorbing, transparent), 1e-11);
+    EXPECT_LT(difference(absorbing, transparent), 1e-14);
 }
 
 TEST(LayeredHeat, LayerWithoutThicknessChangesNothing) {
@@ -141,7 +171,7 @@ TEST(LayeredHeat, LayerWithoutThicknessChangesNothing) {
     more.layers.insert(more.layers.begin() + 2, empty);
     EXPECT_LT(difference(products(more, 1e3, 1e4), products(mirror, 1e3, 1e4)), 1e-15);
     const SourceProducts bare = products({silica, {}}, 1e3, 1e4);
-    EXPECT_NEAR(bare.ss / bare.bare, 1.0, 1e-14);
+    EXPECT_NEAR(bare.ss / bare.bare, 1.0, 1e-15);
     EXPECT_EQ(bare.ee, 0.0);
 }
 
@@ -166,7 +196,7 @@ TEST(WavenumberRule, HasConvergedFromTenthOfAMillihertzToAMegahertz) {
         }
     }
     worst.print("wavenumber rule against twice the nodes");
-    EXPECT_LT(worst.error(), 1e-11);
+    EXPECT_LT(worst.error(), 4e-14);
 }
 
 TEST(WavenumberRule, IntegratesTheGaussianItself) {
@@ -175,7 +205,7 @@ TEST(WavenumberRule, IntegratesTheGaussianItself) {
             const WavenumberRule rule = wavenumber_rule(w, k_t);
             double sum = 0.0;
             for (const double weight : rule.weight) sum += weight;
-            EXPECT_NEAR(sum * w * w / 2.0, 1.0, 1e-11) << "w " << w << " k_T " << k_t;
+            EXPECT_NEAR(sum * w * w / 2.0, 1.0, 4e-12) << "w " << w << " k_T " << k_t;
         }
     }
 }

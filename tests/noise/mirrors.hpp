@@ -10,8 +10,15 @@
 #include "stillcoat/noise/coating_brownian.hpp"
 #include "stillcoat/noise/thermal.hpp"
 #include "stillcoat/optics/readout.hpp"
+#include "support/worst_error.hpp"
 
 namespace stillcoat::noise {
+
+using test::relative_error;
+using test::WorstError;
+
+inline constexpr double k_b = core::boltzmann_constant;
+inline constexpr double pi = core::pi;
 
 struct Mirror {
     ThermalMaterial substrate;
@@ -24,8 +31,8 @@ struct Mirror {
         }
         return list;
     }
-    ThermalNoise noise(double beam_radius, double temperature, double frequency) const {
-        return thermal_noise(substrate, layers, beam_radius, temperature, frequency);
+    ThermalNoise noise(const Footprint& spot, double temperature, double frequency) const {
+        return thermal_noise(substrate, layers, spot, temperature, frequency);
     }
 };
 
@@ -47,14 +54,14 @@ inline Mirror quarter_wave_mirror(bool high_outermost, int pairs = 19, double ex
     const optics::StandingWave wave =
         optics::standing_wave(stack, {1064e-9, 0.0, optics::Polarisation::s});
     const std::vector<optics::ReadoutLayer> weights =
-        optics::readout_weights(wave, std::vector<double>(stack.layers.size(), 0.0));
+        optics::readout_weights(wave, std::vector<optics::Photoelasticity>(stack.layers.size()));
     for (std::size_t j = 0; j < weights.size(); ++j) mirror.layers[j].readout = weights[j];
     return mirror;
 }
 
 /// A readout that does not enter the layer.
 inline optics::ReadoutLayer surface_weight(double thickness) {
-    return {thickness, 0.0, 0.0, 0.0, 1.0, 0.0, 0.0};
+    return {thickness, 1.0, 0.0, 0.0, {}};
 }
 
 /// Mirrors of arbitrary materials, with absorption and photoelasticity. The seed is the test's to
@@ -73,20 +80,27 @@ class RandomMirrors {
     ThermalMaterial material() {
         return {elastic(), between(-1e-6, 1e-5), spread(0.1, 300.0), spread(5e5, 4e6)};
     }
-    Mirror mirror(int count, double largest_extinction) {
+    /// At normal incidence, or at a random angle in s or p light.
+    Mirror mirror(int count, double largest_extinction, bool oblique = false) {
         optics::OpticalStack stack{between(1.0, 1.5), {}, between(1.4, 3.5)};
         Mirror mirror{material(), {}};
-        std::vector<double> p12;
+        std::vector<optics::Photoelasticity> photoelasticity;
         for (int j = 0; j < count; ++j) {
             const double absorbing = between(0.0, 1.0) < 0.4 ? 0.0 : 1.0;
             const double k = absorbing * spread(1e-9, 1.0) * largest_extinction;
             stack.layers.push_back({{between(1.3, 3.5), k}, spread(5e-9, 1e-6)});
             mirror.layers.push_back({material(), between(-1e-5, 2e-4), {}});
-            p12.push_back(between(-0.1, 0.3));
+            photoelasticity.push_back({between(-0.1, 0.3), between(-0.1, 0.3)});
         }
-        const optics::StandingWave wave =
-            optics::standing_wave(stack, {between(5e-7, 2e-6), 0.0, optics::Polarisation::s});
-        const std::vector<optics::ReadoutLayer> weights = optics::readout_weights(wave, p12);
+        optics::Illumination light{between(5e-7, 2e-6), 0.0, optics::Polarisation::s};
+        if (oblique) {
+            light.angle = between(0.0, 1.4);
+            light.polarisation =
+                between(0.0, 1.0) < 0.5 ? optics::Polarisation::s : optics::Polarisation::p;
+        }
+        const optics::StandingWave wave = optics::standing_wave(stack, light);
+        const std::vector<optics::ReadoutLayer> weights =
+            optics::readout_weights(wave, photoelasticity);
         for (std::size_t j = 0; j < weights.size(); ++j) mirror.layers[j].readout = weights[j];
         return mirror;
     }
@@ -97,13 +111,18 @@ class RandomMirrors {
 
 /// The two parts of a layer that is cut at `depth`.
 inline std::vector<ThermalLayer> cut_layer(const ThermalLayer& layer, double depth) {
-    const optics::Complex iq = optics::Complex(0.0, 1.0) * layer.readout.wavenumber;
     const double rest = layer.readout.thickness - depth;
     ThermalLayer upper = layer, lower = layer;
     upper.readout.thickness = depth;
-    upper.readout.backward *= std::exp(iq * rest);
     lower.readout.thickness = rest;
-    lower.readout.forward *= std::exp(iq * depth);
+    const auto reduce = [](optics::ReadoutTerm& term, double distance) {
+        const optics::Complex factor = std::exp(term.rate * distance);
+        term.strain *= factor;
+        term.in_plane *= factor;
+        term.index *= factor;
+    };
+    for (optics::ReadoutTerm& term : upper.readout.terms) reduce(term, term.upwards ? rest : 0.0);
+    for (optics::ReadoutTerm& term : lower.readout.terms) reduce(term, term.upwards ? 0.0 : depth);
     return {upper, lower};
 }
 

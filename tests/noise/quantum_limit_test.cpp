@@ -21,7 +21,7 @@ TEST(QuantumLimit, IsTheLeastSumOfShotNoiseAndRadiationPressure) {
         const double force = 8.0 * hbar * omega0 * power / (c * c);
         least = std::min(least, shot + force / std::pow(mass * omega * omega, 2));
     }
-    EXPECT_NEAR(least / free_mass_quantum_limit_psd(mass, f), 1.0, 1e-8);
+    EXPECT_NEAR(least / free_mass_quantum_limit_psd(mass, f), 1.0, 5e-10);
 }
 
 TEST(QuantumLimit, FallsWithMassAndWithTheSquareOfFrequency) {
@@ -31,8 +31,7 @@ TEST(QuantumLimit, FallsWithMassAndWithTheSquareOfFrequency) {
 
 TEST(QuantumLimit, RefusesWhatIsNotPositive) {
     EXPECT_THROW(free_mass_quantum_limit_psd(0.0, 1.0), core::DomainError);
-    EXPECT_THROW(interferometer_quantum_limit_psd(1.0, -1.0, 1.0), core::DomainError);
-    EXPECT_THROW(quantum_limited_power(1.0, 1.0, 0.0, 1.0), core::DomainError);
+    EXPECT_THROW(free_mass_quantum_limit_psd(1.0, -1.0), core::DomainError);
 }
 
 }  // namespace

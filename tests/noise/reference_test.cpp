@@ -9,14 +9,11 @@
 #include "noise/mirrors.hpp"
 #include "stillcoat/noise/classic_thermo_optic.hpp"
 #include "stillcoat/noise/substrate.hpp"
-#include "support/worst_error.hpp"
 
 namespace stillcoat::noise {
 namespace {
 
 using nlohmann::json;
-using test::relative_error;
-using test::WorstError;
 
 const json& reference() {
     static const json document = [] {
@@ -33,6 +30,8 @@ ThermalMaterial substrate_of(const json& c) {
             s.at("conductivity_W_per_mK"),
             s.at("heat_capacity_J_per_m3K")};
 }
+
+double spot_of(const json& c) { return c.at("beam_radius_m"); }
 
 /// The mirror of a case; without penetration its light stays at the face.
 Mirror mirror_of(const json& c, bool penetrating = true) {
@@ -52,20 +51,21 @@ Mirror mirror_of(const json& c, bool penetrating = true) {
     optics::OpticalStack stack{
         c.at("incident_index"), {}, c.at("substrate").at("index").get<double>()};
     Mirror mirror{substrate_of(c), {}};
-    std::vector<double> p12;
+    std::vector<optics::Photoelasticity> photoelasticity;
     for (const json& row : c.at("layers")) {
         const std::vector<double> v = row;
         stack.layers.push_back({{v[0], v[1]}, v[2]});
         mirror.layers.push_back({{{v[3], v[4]}, v[5], v[7], v[8]},
                                  free_index_slope(v[0], v[6], v[9], v[10], v[5]),
                                  {}});
-        p12.push_back(v[10]);
+        photoelasticity.push_back({v[9], v[10]});
     }
     if (stack.layers.empty()) return mirror;
     const optics::StandingWave wave =
         optics::standing_wave(stack, {c.at("wavelength_m"), 0.0, optics::Polarisation::s});
     const std::vector<optics::ReadoutLayer> weights =
-        penetrating ? optics::readout_weights(wave, p12) : optics::surface_readout(stack);
+        penetrating ? optics::readout_weights(wave, photoelasticity)
+                    : optics::surface_readout(stack);
     for (std::size_t j = 0; j < weights.size(); ++j) mirror.layers[j].readout = weights[j];
     return mirror;
 }
@@ -92,14 +92,16 @@ TEST(NoiseReference, ThermalNoise) {
         const std::vector<double> frequencies = c.at("frequencies_Hz");
         for (std::size_t i = 0; i < frequencies.size(); ++i) {
             const std::vector<double> here =
-                listed(mirror.noise(c.at("beam_radius_m"), c.at("temperature_K"), frequencies[i]));
+                listed(mirror.noise(spot_of(c), c.at("temperature_K"), frequencies[i]));
             for (std::size_t k = 0; k < keys.size(); ++k) {
                 worst[k].see(relative_error(here[k], c.at("psd_m2_per_Hz").at(keys[k]).at(i)),
                              place(c, frequencies[i]));
             }
         }
     }
-    for (std::size_t k = 0; k < keys.size(); ++k) report(worst[k], keys[k], 1e-11);
+    // Where expansion and refraction cancel, the coherent sum loses digits.
+    const double limits[] = {8e-15, 4e-13, 4e-12, 8e-14, 2e-13, 4e-15};
+    for (std::size_t k = 0; k < keys.size(); ++k) report(worst[k], keys[k], limits[k]);
 }
 
 TEST(NoiseReference, FreeIndexSlope) {
@@ -107,7 +109,7 @@ TEST(NoiseReference, FreeIndexSlope) {
         const Mirror mirror = mirror_of(c);
         for (std::size_t j = 0; j < mirror.layers.size(); ++j) {
             const double expected = c.at("clamped_index_slope_per_K").at(j);
-            EXPECT_NEAR(mirror.layers[j].index_slope, expected, 1e-14 * std::abs(expected));
+            EXPECT_NEAR(mirror.layers[j].index_slope, expected, 1e-15 * std::abs(expected));
         }
     }
 }
@@ -118,8 +120,8 @@ TEST(NoiseReference, CoatingBrownianEnergiesAndSpectra) {
         for (const bool penetrating : {false, true}) {
             const Mirror mirror = mirror_of(c, penetrating);
             const std::string kind = penetrating ? "penetrating" : "at_the_face";
-            const std::vector<StrainEnergy> energies = thin_film_energies(
-                mirror.substrate.elastic, mirror.elastic_layers(), c.at("beam_radius_m"));
+            const std::vector<StrainEnergy> energies =
+                thin_film_energies(mirror.substrate.elastic, mirror.elastic_layers(), spot_of(c));
             const json& expected = c.at("energy_" + kind + "_J_per_N2");
             for (std::size_t j = 0; j < energies.size(); ++j) {
                 energy.see(relative_error(energies[j].bulk, expected.at("bulk").at(j)),
@@ -153,23 +155,22 @@ TEST(NoiseReference, CoatingBrownianEnergiesAndSpectra) {
             }
         }
     }
-    report(integral, "readout integrals", 1e-11);
-    report(energy, "energies of the layers", 1e-11);
-    report(spectrum, "coating Brownian spectra", 1e-11);
+    report(integral, "readout integrals", 8e-14);
+    report(energy, "energies of the layers", 2e-13);
+    report(spectrum, "coating Brownian spectra", 7e-14);
 }
 
 TEST(NoiseReference, SubstrateBrownian) {
     WorstError worst;
     for (const json& c : reference().at("substrate_brownian")) {
-        const StrainEnergy energy =
-            half_space_energy(substrate_of(c).elastic, c.at("beam_radius_m"));
+        const StrainEnergy energy = half_space_energy(substrate_of(c).elastic, spot_of(c));
         worst.see(relative_error(energy.bulk, c.at("energy_bulk_J_per_N2")), place(c, 0.0));
         worst.see(relative_error(energy.shear, c.at("energy_shear_J_per_N2")), place(c, 0.0));
         const double psd = brownian_psd(energy, {c.at("loss_bulk"), c.at("loss_shear")},
                                         c.at("temperature_K"), c.at("frequency_Hz"));
         worst.see(relative_error(psd, c.at("psd_m2_per_Hz")), place(c, c.at("frequency_Hz")));
     }
-    report(worst, "substrate Brownian", 1e-12);
+    report(worst, "substrate Brownian", 2e-14);
 }
 
 TEST(NoiseReference, CerdonioIntegral) {
@@ -187,7 +188,7 @@ TEST(NoiseReference, CerdonioIntegral) {
                                  scale * c.at("integral").at(i).get<double>()),
                   "Omega = " + std::to_string(scaled));
     }
-    report(worst, "integral of Cerdonio", 1e-11);
+    report(worst, "integral of Cerdonio", 4e-15);
 }
 
 TEST(NoiseReference, LightThroughTheSubstrate) {
@@ -213,8 +214,8 @@ TEST(NoiseReference, LightThroughTheSubstrate) {
                         1.0, 8.0 / (w * w * k_l * k_l));
         }
     }
-    report(single, "thermo-refractive, single pass", 1e-11);
-    report(standing, "thermo-refractive, standing wave", 1e-12);
+    report(single, "thermo-refractive, single pass", 3e-15);
+    report(standing, "thermo-refractive, standing wave", 1e-15);
 }
 
 TEST(NoiseReference, ThickCoatingFactor) {
@@ -225,7 +226,7 @@ TEST(NoiseReference, ThickCoatingFactor) {
                            c.at("factor")),
             "xi = " + c.at("xi").dump());
     }
-    report(worst, "thick-coating factor", 1e-12);
+    report(worst, "thick-coating factor", 4e-15);
 }
 
 TEST(NoiseReference, ClassicThermoOptic) {
@@ -262,10 +263,10 @@ TEST(NoiseReference, ClassicThermoOptic) {
                      place(c, f));
         }
     }
-    report(length, "thermo-optic lengths", 1e-11);
-    report(factor, "thickness factors of stacks", 1e-11);
-    report(face, "temperature of the face", 1e-11);
-    report(spectrum, "classic thermo-optic spectra", 1e-11);
+    report(length, "thermo-optic lengths", 2e-13);
+    report(factor, "thickness factors of stacks", 2e-13);
+    report(face, "temperature of the face", 3e-15);
+    report(spectrum, "classic thermo-optic spectra", 3e-13);
 }
 
 }  // namespace

@@ -41,8 +41,8 @@ TEST(Interface, ReflectsAsFresnelSays) {
                 const double c0 = std::cos(angle);
                 const Complex r = fresnel(n0, c0, n1, c1, polarisation);
                 const Response found = response({n0, {}, n1}, {800e-9, angle, polarisation});
-                EXPECT_LE(std::abs(found.reflection - r), 1e-14);
-                EXPECT_NEAR(found.transmittance, 1.0 - std::norm(r), 1e-14);
+                EXPECT_LE(std::abs(found.reflection - r), 1e-15);
+                EXPECT_NEAR(found.transmittance, 1.0 - std::norm(r), 1e-15);
                 EXPECT_EQ(found.loss, found.transmittance);
             }
         }
@@ -56,10 +56,10 @@ TEST(Interface, TransmitsAsFresnelSaysWithoutTakingADifference) {
     const double p = 4.0 * n0 * c0 * n1 * c1 / std::pow(n0 * c1 + n1 * c0, 2);
     EXPECT_LE(
         relative_error(response({n0, {}, n1}, {1e-6, angle, Polarisation::s}).transmittance, s),
-        1e-14);
+        1e-15);
     EXPECT_LE(
         relative_error(response({n0, {}, n1}, {1e-6, angle, Polarisation::p}).transmittance, p),
-        1e-14);
+        1e-15);
 }
 
 TEST(Interface, PolarisationsAgreeAtNormalIncidence) {
@@ -68,9 +68,9 @@ TEST(Interface, PolarisationsAgreeAtNormalIncidence) {
         const OpticalStack stack = random.stack(0.1, false);
         const Response s = response(stack, {1e-6, 0.0, Polarisation::s});
         const Response p = response(stack, {1e-6, 0.0, Polarisation::p});
-        EXPECT_LE(std::abs(s.reflection - p.reflection), 1e-14);
-        EXPECT_LE(relative_error(p.transmittance, s.transmittance), 1e-13);
-        EXPECT_NEAR(p.absorptance, s.absorptance, 1e-14);
+        EXPECT_LE(std::abs(s.reflection - p.reflection), 3e-15);
+        EXPECT_LE(relative_error(p.transmittance, s.transmittance), 4e-15);
+        EXPECT_NEAR(p.absorptance, s.absorptance, 1e-15);
     }
 }
 
@@ -82,7 +82,7 @@ TEST(Interface, ReflectsNothingOfPLightAtBrewstersAngle) {
     EXPECT_NEAR(p.transmittance, 1.0, 1e-15);
     const Response s = response({n0, {}, n1}, {wavelength_1064, angle, Polarisation::s});
     const double expected = std::pow((n1 * n1 - n0 * n0) / (n1 * n1 + n0 * n0), 2);
-    EXPECT_LE(relative_error(s.reflectance, expected), 1e-14);
+    EXPECT_LE(relative_error(s.reflectance, expected), 1e-15);
 }
 
 TEST(Interface, ReflectsTotallyBeyondTheCriticalAngle) {
@@ -94,7 +94,7 @@ TEST(Interface, ReflectsTotallyBeyondTheCriticalAngle) {
         for (const auto& [polarisation, phase] :
              {std::pair(Polarisation::s, s_phase), std::pair(Polarisation::p, p_phase)}) {
             const Response found = response({n0, {}, n1}, {wavelength_1064, angle, polarisation});
-            EXPECT_LE(std::abs(found.reflection - std::exp(i * phase)), 1e-14);
+            EXPECT_LE(std::abs(found.reflection - std::exp(i * phase)), 1e-15);
             EXPECT_EQ(found.transmittance, 0.0);
             EXPECT_EQ(found.log_transmittance, -std::numeric_limits<double>::infinity());
             EXPECT_EQ(found.loss, 0.0);
@@ -111,7 +111,7 @@ TEST(Interface, ReflectsTotallyBelowAnyLosslessStack) {
         Illumination light = random.light();
         light.angle = random.between(0.75, 1.5);
         const Response found = response(stack, light);
-        EXPECT_NEAR(found.reflectance, 1.0, 1e-13);
+        EXPECT_NEAR(found.reflectance, 1.0, 2e-15);
         EXPECT_EQ(found.transmittance, 0.0);
     }
 }
@@ -145,7 +145,7 @@ TEST(Slab, TransmitsAsAirysFunction) {
         const double delta = 2.0 * core::pi * n1 * d / wavelength_1064;
         const double expected = 1.0 / (1.0 + coefficient * std::pow(std::sin(delta), 2));
         const Response found = response({1.0, {{n1, d}}, 1.0}, normal_light());
-        EXPECT_LE(relative_error(found.transmittance, expected), 1e-14);
+        EXPECT_LE(relative_error(found.transmittance, expected), 1e-15);
     }
 }
 
@@ -155,7 +155,7 @@ TEST(Slab, OfAHalfWaveIsAbsent) {
         const Response with = response({1.0, {{2.07, d}}, 1.45}, normal_light());
         const Response without = response({1.0, {}, 1.45}, normal_light());
         EXPECT_LE(std::abs(with.reflection - without.reflection), 2e-15);
-        EXPECT_LE(relative_error(with.transmittance, without.transmittance), 2e-15);
+        EXPECT_LE(relative_error(with.transmittance, without.transmittance), 1e-15);
     }
 }
 
@@ -182,7 +182,7 @@ TEST(QuarterWaveStack, ReflectsAndTransmitsAsTheClosedFormSays) {
                          normal_light());
             const double r = (n0 - admittance) / (n0 + admittance);
             const double t = 4.0 * n0 * admittance / std::pow(n0 + admittance, 2);
-            EXPECT_LE(std::abs(found.reflection - r), 1e-14) << layers;
+            EXPECT_LE(std::abs(found.reflection - r), 5e-15) << layers;
             EXPECT_LE(relative_error(found.transmittance, t), 1e-13) << layers;
             EXPECT_NEAR(found.log_transmittance, std::log(t), 1e-13) << layers;
         }
@@ -203,8 +203,8 @@ TEST(FrustratedTotalReflection, TunnelsAsTheClosedFormSays) {
             const Response found =
                 response({n, {{gap_index, gap}}, n}, {wavelength_1064, angle, polarisation});
             const double expected = 1.0 / (1.0 + std::pow(mismatch * std::sinh(delta), 2));
-            EXPECT_LE(relative_error(found.transmittance, expected), 1e-12) << gap;
-            EXPECT_NEAR(found.reflectance + found.transmittance, 1.0, 1e-14);
+            EXPECT_LE(relative_error(found.transmittance, expected), 5e-15) << gap;
+            EXPECT_NEAR(found.reflectance + found.transmittance, 1.0, 2e-15);
         }
     }
 }
@@ -220,12 +220,12 @@ TEST(CriticalAngle, LayerTransmitsAsItsLimit) {
     const double s =
         4.0 * eta0 * etas / (std::pow(eta0 + etas, 2) + std::pow(path * eta0 * etas, 2));
     const Response found = response({n0, {{n1, d}}, ns}, {wavelength_1064, angle, Polarisation::s});
-    EXPECT_LE(relative_error(found.transmittance, s), 1e-14);
+    EXPECT_LE(relative_error(found.transmittance, s), 1e-15);
     const double p0 = n0 / std::cos(angle), ps = ns / cs;
     const double p = 4.0 * p0 * ps / (std::pow(p0 + ps, 2) + std::pow(path * n1 * n1, 2));
     const Response found_p =
         response({n0, {{n1, d}}, ns}, {wavelength_1064, angle, Polarisation::p});
-    EXPECT_LE(relative_error(found_p.transmittance, p), 1e-14);
+    EXPECT_LE(relative_error(found_p.transmittance, p), 1e-15);
 }
 
 }  // namespace

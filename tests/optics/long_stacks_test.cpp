@@ -38,7 +38,7 @@ TEST(LongStack, OfThousandsOfQuarterWavesFollowsTheClosedForm) {
             EXPECT_LE(relative_error(found.log_transmittance, expected), 1e-13)
                 << layers << ", " << low;
             worst.see(relative_error(found.log_transmittance, expected), std::to_string(layers));
-            EXPECT_NEAR(found.reflectance, 1.0 - std::exp(expected), 1e-13);
+            EXPECT_NEAR(found.reflectance, 1.0 - std::exp(expected), 1e-15);
         }
     }
     worst.print("ln T of up to 20,000 quarter waves, relative");
@@ -50,7 +50,7 @@ TEST(LongStack, TransmittanceKeepsItsDigitsWhereItIsStillANumber) {
     const double admittance = std::pow(high / low, layers) * 1.5;
     const Response found = response(quarter_wave_stack(high, low, layers, 1.5), normal_light());
     EXPECT_LE(relative_error(found.transmittance, 4.0 * admittance / std::pow(1.0 + admittance, 2)),
-              1e-12);
+              7e-15);
 }
 
 TEST(LongStack, OfRandomLayersConservesEnergy) {
@@ -65,7 +65,7 @@ TEST(LongStack, OfRandomLayersConservesEnergy) {
             const Illumination light{wavelength_1064, 0.6, polarisation};
             const Response found = response(stack, light);
             expect_finite(found);
-            EXPECT_NEAR(found.reflectance + found.transmittance + found.absorptance, 1.0, 1e-12)
+            EXPECT_NEAR(found.reflectance + found.transmittance + found.absorptance, 1.0, 5e-15)
                 << "seed " << seed << ", k " << extinction;
             EXPECT_LT(found.log_transmittance, -100.0);
             for (const double energy : stored_energy(standing_wave(stack, light))) {
@@ -91,7 +91,7 @@ TEST(LongStack, DelaysAsItsStoredEnergySays) {
             for (const double part : stored_energy(standing_wave(stack, light))) energy += part;
             const double delays = found.reflectance * phase.group_delay +
                                   found.transmittance * phase.transmission_group_delay;
-            EXPECT_LE(relative_error(delays, energy), 1e-10) << low << ", " << factor;
+            EXPECT_LE(relative_error(delays, energy), 3e-12) << low << ", " << factor;
             worst.see(relative_error(delays, energy),
                       std::to_string(low) + ", " + std::to_string(factor));
         }
@@ -108,8 +108,8 @@ TEST(LongStack, HasTheDispersionOfItsTopInTheStopBand) {
                                   light);
         };
         const PhaseResponse top = phase(200), whole = phase(20000);
-        EXPECT_LE(relative_error(whole.group_delay, top.group_delay), 1e-14);
-        EXPECT_LE(relative_error(whole.group_delay_dispersion, top.group_delay_dispersion), 1e-13);
+        EXPECT_LE(relative_error(whole.group_delay, top.group_delay), 1e-15);
+        EXPECT_LE(relative_error(whole.group_delay_dispersion, top.group_delay_dispersion), 7e-15);
     }
 }
 
@@ -126,11 +126,11 @@ TEST(LongStack, LetsLightTunnelThroughAThousandGaps) {
         const double angle = core::pi / 3.0;
         const Illumination light{wavelength_1064, angle, Polarisation::s};
         const Response found = response(stack, light);
-        EXPECT_NEAR(found.reflectance + found.transmittance, 1.0, 1e-11) << step;
+        EXPECT_NEAR(found.reflectance + found.transmittance, 1.0, 2e-12) << step;
         if (found.transmittance < 0.01) continue;
         ++transparent;
         const StandingWave wave = standing_wave(stack, light);
-        EXPECT_NEAR(std::norm(wave.electric_substrate), found.transmittance, 1e-11);
+        EXPECT_NEAR(std::norm(wave.electric_substrate), found.transmittance, 3e-13);
         EXPECT_GT(peak_intensity(wave, 1998).intensity, 0.01);
     }
     EXPECT_GE(transparent, 3);
@@ -150,9 +150,9 @@ TEST(ThickMetal, TransmitsAsItsClosedFormInLogarithms) {
             const Response found = response({1.0, {{n, d}}, 1.5}, normal_light(800e-9));
             expect_finite(found);
             EXPECT_LE(std::abs(found.log_transmittance - expected),
-                      1e-15 * std::abs(expected) + 1e-13);
+                      1e-15 * std::abs(expected) + 5e-14);
             if (expected > -650.0) {
-                EXPECT_LE(relative_error(found.transmittance, std::exp(expected)), 1e-12);
+                EXPECT_LE(relative_error(found.transmittance, std::exp(expected)), 7e-14);
             } else {
                 EXPECT_GE(found.transmittance, 0.0);
                 EXPECT_LE(found.transmittance, 1e-280);
@@ -172,7 +172,7 @@ TEST(ThickMetal, AnywhereInTheStackLeavesEveryResultFinite) {
                 const Illumination light{wavelength_1064, angle, polarisation};
                 const Response found = response(stack, light);
                 expect_finite(found);
-                EXPECT_NEAR(found.reflectance + found.absorptance, 1.0, 1e-13);
+                EXPECT_NEAR(found.reflectance + found.absorptance, 1.0, 2e-15);
                 EXPECT_GT(found.layer_absorptance[at], 0.0);
                 EXPECT_LT(found.log_transmittance, -1400.0);
                 const StandingWave wave = standing_wave(stack, light);
@@ -193,7 +193,7 @@ TEST(ThickMetal, BelowTheSurfaceAbsorbsWhatTheInterfaceLetsIn) {
     const double entering = 4.0 * n.real() / std::norm(1.0 + n);
     EXPECT_EQ(found.transmittance, 0.0);
     EXPECT_TRUE(std::isfinite(found.log_transmittance));
-    EXPECT_LE(relative_error(found.absorptance, entering), 1e-13);
+    EXPECT_LE(relative_error(found.absorptance, entering), 1e-15);
 }
 
 }  // namespace

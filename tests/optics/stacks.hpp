@@ -1,6 +1,7 @@
 #pragma once
 /// Stacks that several tests of the optics share.
 
+#include <boost/math/quadrature/gauss.hpp>
 #include <cmath>
 #include <cstdint>
 #include <iostream>
@@ -25,6 +26,27 @@ inline OpticalStack quarter_wave_stack(double outermost, double next, int layers
         stack.layers.push_back({n, wavelength / (4.0 * n)});
     }
     return stack;
+}
+
+/// Tantala and silica; many quarter waves of them are an infinite stack, (low/high)^120 is 3e-19.
+inline constexpr double n_high = 2.07, n_low = 1.45, index_ratio = n_low / n_high;
+inline constexpr int many_layers = 120;
+
+inline OpticalStack many_quarter_waves(bool high_outermost, double incident = 1.0) {
+    return quarter_wave_stack(high_outermost ? n_high : n_low, high_outermost ? n_low : n_high,
+                              many_layers, n_low, wavelength_1064, incident);
+}
+
+/// Gauss–Legendre quadrature in panels far shorter than any wave in the layer.
+template <typename Function>
+double quadrature(const Function& f, double length) {
+    constexpr int panels = 40;
+    double sum = 0.0;
+    for (int m = 0; m < panels; ++m) {
+        sum += boost::math::quadrature::gauss<double, 20>::integrate(f, length * m / panels,
+                                                                     length * (m + 1) / panels);
+    }
+    return sum;
 }
 
 /// Layers of arbitrary index and thickness. Prints its seed.

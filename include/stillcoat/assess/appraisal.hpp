@@ -16,22 +16,9 @@ namespace stillcoat::assess {
 /// The field through the stack, for tables and figures.
 struct FieldSample {
     double depth;       ///< below the face [m]
-    std::size_t layer;  ///< from 0; the number of layers: the substrate
+    std::size_t layer;  ///< from 0
     double index;
     double intensity;  ///< |E|² over the incident one
-};
-
-/// Optics of the coated face for one polarisation.
-struct FaceOptics {
-    optics::Polarisation polarisation;
-    optics::Response response;
-    std::optional<optics::PhaseResponse> phase;  ///< absent where nothing is reflected
-    std::vector<double> stored_energy;           ///< per layer [J/W]
-    double energy_penetration_depth;             ///< [m]
-    double face_intensity;                       ///< |E|² at the face over the incident one
-    std::vector<double> peak_intensity;          ///< per layer, over the incident one
-    std::vector<double> peak_depth;              ///< per layer, below its top [m]
-    std::vector<FieldSample> field;
 };
 
 struct NoiseTerm {
@@ -60,23 +47,45 @@ struct Noise {
     bool computed = false;
     std::string missing;                    ///< why there is no noise at all (oblique incidence)
     std::vector<double> frequencies, spot;  ///< [Hz]
-    std::vector<NoiseTerm> terms;        ///< what the total is made of, largest share first in time
-    std::vector<NoiseTerm> comparisons;  ///< parts, named models, light crossing the substrate
-    std::vector<double> total, spot_total;  ///< sum of the terms computed [m²/Hz]
+    std::vector<NoiseTerm> terms;           ///< what the total is made of
+    std::vector<NoiseTerm> comparisons;     ///< parts, named models, light crossing the substrate
+    std::vector<double> total, spot_total;  ///< sum of the terms computed [m²/Hz]; empty: none was
     bool complete = false;                  ///< every term of the total was computed
     double layer_frequency = 0.0;           ///< [Hz]
     std::vector<LayerNoise> layers;         ///< empty when coating Brownian is not computed
     std::vector<Dominance> dominance;
 };
 
+/// The coated face in one polarisation.
+struct Face {
+    optics::Polarisation polarisation;
+    optics::Response response;
+    std::optional<optics::PhaseResponse> phase;  ///< absent where it is not defined
+    std::vector<double> stored_energy;           ///< per layer [J/W]
+    double energy_penetration_depth;             ///< [m]
+    double face_intensity;                       ///< |E|² at the face over the incident one
+    std::vector<double> peak_intensity;          ///< per layer, over the incident one
+    std::vector<double> peak_depth;              ///< per layer, below its top [m]
+    std::vector<FieldSample> field;
+    Noise noise;
+};
+
+/// What the stated power does to the coating.
+struct LightLoad {
+    double power;              ///< incident [W]
+    double absorbed;           ///< in the coating [W]
+    double centre_intensity;   ///< of the incident beam, across it [W/m²]
+    double largest_intensity;  ///< at the field's maximum in the coating, of s and p the larger
+};
+
 struct Appraisal {
     stack::Mirror mirror;
-    std::vector<FaceOptics> faces;  ///< one, or s and p for unpolarised light
-    Noise noise;
-    std::vector<std::string> warnings;   ///< what the designer should act on
-    std::vector<std::string> notes;      ///< what was left out or assumed
-    std::vector<std::string> analogies;  ///< values by analogy
-    std::vector<std::string> fixed;      ///< inputs without stated uncertainty
+    std::vector<Face> faces;              ///< one, or s and p for unpolarised light
+    std::optional<LightLoad> light_load;  ///< absent when the design states no power
+    std::vector<std::string> warnings;    ///< what the designer should act on
+    std::vector<std::string> notes;       ///< what was left out or assumed
+    std::vector<std::string> analogies;   ///< values by analogy
+    std::vector<std::string> fixed;       ///< inputs without stated uncertainty
     std::vector<stack::Ledger::Use> uses;
 };
 

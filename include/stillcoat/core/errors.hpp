@@ -30,6 +30,10 @@ struct Problem {
     std::optional<Place> other_place;  ///< the second place of a contradiction
 };
 
+/// `text` without the control characters that would move the cursor of a terminal or change its
+/// colours: each becomes a question mark, a tabulator a blank.
+std::string printable(const std::string& text);
+
 /// A problem as lines of text: `file:line:column: message`, the line with a mark below, the hint.
 std::string describe(const Problem& problem);
 
@@ -45,9 +49,13 @@ class InputError : public std::runtime_error {
     std::vector<Problem> problems_;
 };
 
+/// Nobody reads more at once, and a file of a million mistakes must not take hours.
+inline constexpr std::size_t enough_problems = 100;
+
 /// Collects what is wrong so that a file is reported whole.
 class Problems {
   public:
+    /// Adds one; the one that makes them enough_problems is thrown with all before it.
     void add(Problem problem);
     void add(const Place& place, std::string message, std::string hint = "");
     bool empty() const { return list_.empty(); }

@@ -19,7 +19,7 @@ struct QuantityKind {
 
 namespace kind {
 extern const QuantityKind length, angle, temperature, frequency, power, number, pressure, density,
-    thermal_conductivity, specific_heat, per_kelvin, per_length, thermal_resistance;
+    thermal_conductivity, specific_heat, per_kelvin, per_length;
 }
 
 /// "a length", "an angle".
@@ -43,9 +43,6 @@ QuantityReading read_quantity(const std::string& text, const QuantityKind& kind)
 
 /// The SI value of `number` given in `unit`, as in a table with one unit for a column.
 QuantityReading read_quantity(double number, const std::string& unit, const QuantityKind& kind);
-
-/// Factor that turns a difference given in `unit` into SI; for uncertainties of temperatures.
-QuantityReading read_difference(double number, const std::string& unit, const QuantityKind& kind);
 
 /// One line of the list of usual units.
 struct UsualUnits {

@@ -19,12 +19,17 @@ struct Limits {
     bool lower_itself = false;  ///< whether the lower limit itself is admissible
     bool upper_itself = false;
     std::string words;
+
+    /// Whether a value is finite and within.
+    bool admit(double value) const;
 };
 
 /// Any finite value.
 Limits any_value();
 /// Strictly positive; `unit` for the message.
 Limits positive(const std::string& unit);
+/// From `lower` to `upper`, both admissible: what no user means to leave and the formulas survive.
+Limits between(double lower, double upper, const std::string& unit);
 
 class TableReader {
   public:

@@ -51,4 +51,9 @@ void check_links(const Library& library, core::Problems& problems);
 void override_properties(Library& library, const std::string& name, const core::Node& table,
                          core::Problems& problems);
 
+/// Puts one number in the place of what the library knows of a property, without limits in
+/// temperature, wavelength or frequency. @param value [SI], @param source stands in the result
+void replace_value(Library& library, const std::string& name, PropertyId property, double value,
+                   const std::string& source);
+
 }  // namespace stillcoat::materials

@@ -70,7 +70,8 @@ struct Interval {
 struct Scalar {
     double value;
 };
-/// Interpolated in log–log between neighbours of one sign, linearly across a change of sign.
+/// Interpolated in log–log between neighbours of one sign, linearly across a change of sign; ends
+/// with its first and last temperature.
 struct TemperatureTable {
     std::vector<double> temperature, value;
 };
@@ -80,6 +81,8 @@ struct WavelengthTable {
 /// value = at_1_Hz · (f/Hz)^exponent
 struct PowerLaw {
     double at_1_hz, exponent;
+    std::optional<double>
+        exponent_uncertainty;  ///< standard uncertainty of the exponent, as stated
 };
 /// n² = 1 + constant + Σ S_i L²/(L² − λ_i²), L in µm; S_i and λ_i polynomials in T/K, ascending.
 struct Sellmeier {
@@ -98,6 +101,9 @@ struct SameAs {
 };
 using Curve =
     std::variant<Scalar, TemperatureTable, WavelengthTable, PowerLaw, Sellmeier, Cauchy, SameAs>;
+
+/// References from property to property that are followed at most.
+inline constexpr int deepest_reference = 64;
 
 /// An explicit rule outside the range of the data.
 struct Beyond {
@@ -121,6 +127,7 @@ struct ColdTable {
     std::vector<WidthSpan> width_spans;
     std::vector<std::string> sources;
     std::string place, nature, status, note;
+    std::optional<Interval> frequency;  ///< of the measurement [Hz]; absent: not stated
 };
 
 enum class Medium { vacuum, air, unstated };
@@ -137,7 +144,11 @@ struct Entry {
     std::optional<Interval> between_laboratories;
     std::vector<std::string> sources;
     std::string place, measured_at, nature, status, note;
-    std::optional<Interval> temperature, wavelength, frequency;  ///< absent: not limited
+    /// Where the datum holds, never beyond the ends of its table; absent: not limited. The
+    /// frequency of a loss is that of its measurement, both ends equal for a single one.
+    std::optional<Interval> temperature, wavelength, frequency;
+    /// The last piece of a table of temperature goes on to here [K], a few kelvin above its end.
+    std::optional<double> continued_to;
     std::optional<Beyond> beyond;
     std::optional<ColdTable> cold;
     bool from_design = false;  ///< stated in a design file

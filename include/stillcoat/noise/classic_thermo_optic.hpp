@@ -28,17 +28,18 @@ struct ClassicThermoOptic {
 };
 
 ClassicThermoOptic classic_thermo_optic(const ThermalMaterial& substrate,
-                                        const std::vector<ThermalLayer>& layers, double beam_radius,
-                                        double temperature, double frequency, LayerStrain strain);
+                                        const std::vector<ThermalLayer>& layers,
+                                        const Footprint& spot, double temperature, double frequency,
+                                        LayerStrain strain);
 
 /// Beam-averaged temperature noise of a half-space's face [K²/Hz]: all frequencies,
 /// S = (2k_BT²/(πκ)) Re∫k e^{−k²w²/4}/√(k²+iωC/κ) dk; one-dimensional limit (diffusion length short
 /// against the beam), V. B. Braginsky, M. L. Gorodetsky, S. P. Vyatchanin, Phys. Lett. A 271, 303
-/// (2000).
-double face_temperature_psd(double conductivity, double heat_capacity, double beam_radius,
+/// (2000). An ellipse by ⟨|p(k)|²⟩ in place of e^{−k²w²/4}, and by 1/(wx wy) in the limit.
+double face_temperature_psd(double conductivity, double heat_capacity, const Footprint& spot,
                             double temperature, double frequency);
 double face_temperature_psd_one_dimensional(double conductivity, double heat_capacity,
-                                            double beam_radius, double temperature,
+                                            const Footprint& spot, double temperature,
                                             double frequency);
 
 /// Γ of the article's thick-coating correction, →1 for ξ → 0.

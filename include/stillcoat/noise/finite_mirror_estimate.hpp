@@ -5,8 +5,8 @@
 /// Sources: F. Bondu, P. Hello, J.-Y. Vinet, Phys. Lett. A 246, 227 (1998), with the correction of
 /// Y. T. Liu & K. S. Thorne, Phys. Rev. D 62, 122002 (2000); coating strain in the manner of K.
 /// Somiya & K. Yamamoto, Phys. Rev. D 79, 102004 (2009). Leaves out: light that misses the face,
-/// the true stress at the rim (energy low by up to 4 %, coating shear off by 10–70 %). Valid when:
-/// beam radius below half the mirror radius.
+/// elliptical spots, the true stress at the rim (energy low by up to 4 %, coating shear off by
+/// 10–70 %). Valid when: beam radius below half the mirror radius.
 
 #include "stillcoat/noise/elastic.hpp"
 

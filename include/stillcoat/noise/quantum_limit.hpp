@@ -13,13 +13,4 @@ namespace stillcoat::noise {
 /// @throws core::DomainError otherwise
 double free_mass_quantum_limit_psd(double mass, double frequency);
 
-/// Interferometer with arm cavities of length `length` [m] between four equal mirrors of `mass`
-/// [kg]: strain, S = 8ħ/(mω²L²) [1/Hz].
-double interferometer_quantum_limit_psd(double mass, double length, double frequency);
-
-/// Power at the beam splitter that reaches the limit at the cavity's half-bandwidth: I =
-/// mL²γ⁴/(4ω0) [W].
-/// @param half_bandwidth γ/2π [Hz], @param wavelength vacuum [m]
-double quantum_limited_power(double mass, double length, double half_bandwidth, double wavelength);
-
 }  // namespace stillcoat::noise

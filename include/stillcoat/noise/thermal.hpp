@@ -4,13 +4,17 @@
 /// For each transverse wavenumber k the temperature Θ driven by the readout's own source q(z)
 /// solves
 ///     iωC Θ − (κΘ')' + κk²Θ = iωT q(z),   no flux at the face, decay in the substrate,
-///     S = (4 k_B T/ω) ∫ (k dk/2π) e^{−k²w²/4} Im ∫ q Θ dz
+///     S = (4 k_B T/ω) ∫ (k dk/2π) ⟨|p(k)|²⟩ Im ∫ q Θ dz
 /// (Y. Levin, Phys. Lett. A 372, 1941 (2008), applied to M. Evans et al., Phys. Rev. D 78, 102003
-/// (2008)). Sources, displacement towards the light per kelvin and metre of depth:
+/// (2008)); ⟨|p|²⟩ = e^{−k²w²/4} for a circular spot, for an ellipse see footprint.hpp. Sources,
+/// displacement towards the light per kelvin and metre of depth:
 ///     layer:      α E/(1−2ν)·[η + (g − λη)/M] + h β      (expansion; expansion and index,
 ///     coherent) substrate:  2(1+ν_s) α_s e^{−kz'}
 /// η is the face dilatation of the substrate. The bare substrate gives M. Cerdonio et al., Phys.
 /// Rev. D 63, 082003 (2001) at every frequency.
+///
+/// Off normal g and h are those of the light's angle; heat of a thin coating strains it only
+/// across, where g holds the photoelastic effect of both polarisations.
 ///
 /// Leaves out: finite mirror, thermal boundary resistance, the finite ratio of coating thickness to
 /// beam radius. Valid when: d/w below 0.002 for 1 %: a coating of the substrate's own matter should
@@ -21,6 +25,7 @@
 #include <vector>
 
 #include "stillcoat/noise/elastic.hpp"
+#include "stillcoat/noise/footprint.hpp"
 #include "stillcoat/optics/readout.hpp"
 
 namespace stillcoat::noise {
@@ -56,20 +61,20 @@ struct ThermalNoise {
     double substrate_thermo_elastic;       ///< the bare substrate without any coating
 };
 
-/// @param beam_radius 1/e² intensity radius [m], @param temperature [K], @param frequency [Hz]; all
-/// > 0
+/// @param spot of the beam on the face, @param temperature [K], @param frequency [Hz]; all > 0
 /// @throws core::DomainError for a quantity out of range.
 ThermalNoise thermal_noise(const ThermalMaterial& substrate,
-                           const std::vector<ThermalLayer>& layers, double beam_radius,
+                           const std::vector<ThermalLayer>& layers, const Footprint& spot,
                            double temperature, double frequency);
 
 /// The bare substrate alone, all frequencies [m²/Hz].
-double substrate_thermo_elastic_psd(const ThermalMaterial& substrate, double beam_radius,
+double substrate_thermo_elastic_psd(const ThermalMaterial& substrate, const Footprint& spot,
                                     double temperature, double frequency);
 
 /// The bare substrate when the diffusion length is short against the beam: V. B. Braginsky, M. L.
-/// Gorodetsky, S. P. Vyatchanin, Phys. Lett. A 264, 1 (1999) [m²/Hz].
-double adiabatic_thermo_elastic_psd(const ThermalMaterial& substrate, double beam_radius,
+/// Gorodetsky, S. P. Vyatchanin, Phys. Lett. A 264, 1 (1999) [m²/Hz]; an ellipse by ⟨1/w³⟩ = (2/π)
+/// E(m)/(w_max w_min²), m = 1 − w_min²/w_max².
+double adiabatic_thermo_elastic_psd(const ThermalMaterial& substrate, const Footprint& spot,
                                     double temperature, double frequency);
 
 }  // namespace stillcoat::noise

@@ -43,6 +43,9 @@ struct Illumination {
     Polarisation polarisation;
 };
 
+/// Reflection amplitudes below this are rounding noise: their phase means nothing.
+inline constexpr double smallest_reflection = 1e-13;
+
 struct Response {
     Complex reflection;  ///< amplitude ratio of tangential E
     double reflectance;  ///< |r|²

@@ -12,15 +12,17 @@ namespace stillcoat::stack {
 
 inline constexpr std::size_t most_layers = 20'000;
 inline constexpr std::size_t most_frequencies = 20'000;
+inline constexpr std::size_t most_layer_frequencies = 2'000'000;  ///< their product
 
 enum class PolarisationChoice { s, p, unpolarised };
 
 struct Light {
     double wavelength;                ///< in vacuum [m]
     double angle;                     ///< in the incident medium [rad]
-    PolarisationChoice polarisation;  ///< s at normal incidence
-    std::string medium;               ///< "vacuum", "air" or a material
-    std::optional<double> power;      ///< incident [W]
+    PolarisationChoice polarisation;  ///< s where none is stated
+    bool polarisation_stated;
+    std::string medium;           ///< "vacuum", "air" or a material
+    std::optional<double> power;  ///< incident [W]
 };
 
 struct MirrorBody {
@@ -38,7 +40,11 @@ struct LayerInput {
     std::string material;
     std::optional<double> quarter_waves;  ///< counted at the design wavelength, normal incidence
     std::optional<double> thickness;      ///< [m]
-    const core::Node* node;               ///< where it stands in the document
+    const core::Node* node;               ///< in the design file; null in a table file
+    core::Place cell;                     ///< of the material in a table file
+
+    /// Where its material stands.
+    core::Place place() const;
 };
 
 struct Coating {
@@ -46,7 +52,14 @@ struct Coating {
     double reference_temperature;  ///< thicknesses hold at this temperature [K]
     double excess_loss;            ///< factor on the films' loss angles; 1 unless stated
     bool excess_loss_stated;
+    std::string table;               ///< file of layers; empty when the design file holds them
     std::vector<LayerInput> layers;  ///< from the light side to the substrate, repeats written out
+};
+
+/// Values of one material that the design file replaces.
+struct Override {
+    std::string material;
+    std::vector<std::string> keys;  ///< "loss_angle"
 };
 
 struct Design {
@@ -58,8 +71,7 @@ struct Design {
     double temperature;  ///< [K]
     Band band;
     Coating coating;
-    std::vector<std::string>
-        overridden;  ///< "loss_angle of tantala-ibs": values that the file replaces
+    std::vector<Override> overrides;
 };
 
 /// Reads a design; values of [material] tables replace those of `library`.

@@ -50,20 +50,20 @@ class Ledger {
     void use_index(const std::string& material, const materials::IndexValue& value);
     void note(const std::string& text);
 
+    /// A lookup that gave a number.
     struct Use {
         std::string material;
         materials::PropertyId property;
-        const materials::Entry* entry;
-        bool frequency_extrapolated;
-        bool by_rule;  ///< the entry's rule beyond its data was used
+        materials::Width width;               ///< of the value
+        std::vector<materials::Basis> bases;  ///< the data that it rests on
+        bool frequency_extrapolated;          ///< outside the frequencies that its data state
     };
     const std::vector<Use>& uses() const { return uses_; }
     const std::vector<std::string>& analogies() const { return analogies_; }
     const std::vector<std::string>& notes() const { return notes_; }
 
   private:
-    void add(const std::string& material, materials::PropertyId property,
-             const materials::Entry* entry, bool extrapolated, const std::string& analogy);
+    void add(Use use, const std::string& analogy);
     std::vector<Use> uses_;
     std::vector<std::string> analogies_;
     std::vector<std::string> notes_;

@@ -1,0 +1,93 @@
+#include "present/command.hpp"
+
+#include <fmt/format.h>
+#include <unistd.h>
+
+#include <cstdlib>
+#include <filesystem>
+
+namespace stillcoat::present {
+
+namespace fs = std::filesystem;
+
+core::Existing Output::existing() const {
+    return replace ? core::Existing::replace : core::Existing::keep;
+}
+
+void Output::write(const std::string& text) const { core::write_file(path, text, existing()); }
+
+bool Output::colour() const {
+    return path == "-" && ::isatty(STDOUT_FILENO) == 1 && std::getenv("NO_COLOR") == nullptr;
+}
+
+void add_output_options(CLI::App& command, Output& output) {
+    command.add_option("-o,--out", output.path, "write to this file; - is standard output")
+        ->type_name("FILE");
+    command.add_flag("--replace", output.replace, "overwrite an existing file");
+}
+
+void add_folder_option(CLI::App& command, std::vector<std::string>& folders) {
+    command
+        .add_option("--materials", folders,
+                    "folder of material files that add to or replace the library's")
+        ->type_name("DIR")
+        ->expected(1);
+}
+
+namespace {
+
+/// A folder of data that belongs to this program: beside an installed program, else `built`, that
+/// of the source tree that it was built from.
+std::string own_folder(const std::string& program, const std::string& name,
+                       const std::string& built) {
+    std::error_code error;
+    const fs::path real = fs::read_symlink("/proc/self/exe", error);
+    const fs::path self = error ? fs::path(program) : real;
+    const fs::path installed =
+        (self.parent_path() / STILLCOAT_DATA_FROM_PROGRAM / name).lexically_normal();
+    if (fs::is_directory(installed, error)) return installed.string();
+    if (fs::is_directory(built, error)) return built;
+    throw core::InputError(
+        fmt::format("the folder of {} is missing: neither {} nor {}", name, installed.string(),
+                    built),
+        name == "materials" ? "reinstall, or name folders with --materials" : "reinstall");
+}
+
+}  // namespace
+
+materials::Library load_library(const std::string& program,
+                                const std::vector<std::string>& folders) {
+    materials::Library library;
+    core::Problems problems;
+    materials::add_folder(library, own_folder(program, "materials", STILLCOAT_BUILD_MATERIALS),
+                          problems);
+    for (const std::string& folder : folders) materials::add_folder(library, folder, problems);
+    // A file that could not be read would be missed by all that refer to it.
+    problems.throw_if_any();
+    materials::check_links(library, problems);
+    problems.throw_if_any();
+    return library;
+}
+
+std::string schema_path(const std::string& program, const std::string& document) {
+    return own_folder(program, "schemas", STILLCOAT_BUILD_SCHEMAS) + "/" + document +
+           ".schema.json";
+}
+
+stack::Design load_design(const std::string& path, materials::Library& library) {
+    core::Document document =
+        path == "-" ? core::parse_document(core::read_text_file("/dev/stdin"), "standard input")
+                    : core::read_document(path);
+    return stack::read_design(std::move(document), library);
+}
+
+double quantity_option(const std::string& option, const std::string& text,
+                       const core::QuantityKind& kind) {
+    const core::QuantityReading reading = core::read_quantity(text, kind);
+    if (!reading.ok)
+        throw core::InputError(option + ": " + reading.failure.message, reading.failure.hint);
+    if (!(reading.value > 0.0)) throw core::InputError(option + " must be greater than 0", "");
+    return reading.value;
+}
+
+}  // namespace stillcoat::present
