@@ -34,7 +34,8 @@ std::vector<FieldSample> field_profile(const stack::Mirror& mirror,
     return field;
 }
 
-Face face_optics(const stack::Mirror& mirror, const optics::Illumination& light) {
+Face face_optics(const stack::Mirror& mirror, const optics::Illumination& light,
+                 const Scope& scope) {
     Face face{};
     face.polarisation = light.polarisation;
     const optics::OpticalStack stack = optical_stack(mirror);
@@ -53,8 +54,12 @@ Face face_optics(const stack::Mirror& mirror, const optics::Illumination& light)
         face.peak_intensity.push_back(peak.intensity);
         face.peak_depth.push_back(peak.depth);
     }
-    face.field = field_profile(mirror, wave);
+    if (scope.field) face.field = field_profile(mirror, wave);
     return face;
+}
+
+void add_once(std::vector<std::string>& list, std::string text) {
+    if (std::find(list.begin(), list.end(), text) == list.end()) list.push_back(std::move(text));
 }
 
 /// Layers whose absorption nobody stated count as transparent, which the result must say.
@@ -100,14 +105,19 @@ void note_shift(const stack::Design& design, const stack::Mirror& mirror,
 }
 
 /// Phase, delay and noise belong to the reflected light, also where there is little of it.
-void warn_of_weak_reflection(const Appraisal& appraisal, std::vector<std::string>& warnings) {
+void warn_of_weak_reflection(const std::vector<Face>& faces, std::vector<std::string>& warnings) {
     constexpr double weak = 0.01;
-    const double reflectance = mean_over_faces(appraisal, &optics::Response::reflectance);
-    if (reflectance >= weak) return;
-    warnings.push_back(fmt::format(
-        "only {:.2g} % of the light is reflected: reflection phase, delay and noise describe that "
-        "remainder, not the light that passes",
-        reflectance * 100.0));
+    for (const Face& face : faces) {
+        if (face.response.reflectance >= weak) continue;
+        const std::string light = faces.size() == 1 ? "the"
+                                  : face.polarisation == optics::Polarisation::s
+                                      ? "the s polarised"
+                                      : "the p polarised";
+        warnings.push_back(
+            fmt::format("only {:.2g} % of {} light is reflected: reflection phase, delay and noise "
+                        "describe that remainder, not the light that passes",
+                        face.response.reflectance * 100.0, light));
+    }
 }
 
 /// Values that the file replaces for a material that this mirror does not hold.
@@ -233,7 +243,8 @@ double mean_over_faces(const Appraisal& appraisal, double optics::Response::*mem
     return sum / static_cast<double>(appraisal.faces.size());
 }
 
-Appraisal appraise(const stack::Design& design, const materials::Library& library) {
+Appraisal appraise(const stack::Design& design, const materials::Library& library,
+                   const Scope& scope) {
     Appraisal result;
     stack::Ledger ledger;
     result.mirror = stack::at_operating_point(design, library, ledger);
@@ -245,24 +256,21 @@ Appraisal appraise(const stack::Design& design, const materials::Library& librar
     if (design.light.angle == 0.0) polarisations = {optics::Polarisation::s};
     for (const optics::Polarisation polarisation : polarisations) {
         result.faces.push_back(face_optics(
-            result.mirror, {design.light.wavelength, design.light.angle, polarisation}));
+            result.mirror, {design.light.wavelength, design.light.angle, polarisation}, scope));
     }
     result.light_load = light_load(design, result);
     warn_of_unknown_absorption(result.mirror, design.light.wavelength, result.warnings);
     note_metals(result.mirror, result.notes);
     note_shift(design, result.mirror, result.notes);
     warn_of_beam(design, result.warnings);
-    if (design.light.angle == 0.0) {
-        warn_of_weak_reflection(result, result.warnings);
-        note_uncertain_expansion(design, library, result.notes);
-    }
+    warn_of_weak_reflection(result.faces, result.warnings);
+    if (scope.noise) note_uncertain_expansion(design, library, result.notes);
     for (Face& face : result.faces) {
-        if (design.light.angle == 0.0) {
-            face.noise = assemble_noise(design, library, result.mirror, ledger, result.warnings);
-        } else {
-            face.noise.missing =
-                "noise is computed for normal incidence only; the optics hold at this angle";
-        }
+        if (!scope.noise) break;
+        std::vector<std::string> warnings;  // what holds for s and p is said once
+        face.noise =
+            assemble_noise(design, library, result.mirror, face.polarisation, ledger, warnings);
+        for (std::string& warning : warnings) add_once(result.warnings, std::move(warning));
     }
     warn_of_unused_overrides(design, ledger.uses(), result.warnings);
     note_unlimited_values(ledger.uses(), result.notes);

@@ -51,11 +51,10 @@ std::vector<Dominance> dominance(const Noise& noise) {
 }  // namespace
 
 Noise assemble_noise(const stack::Design& design, const materials::Library& library,
-                     const stack::Mirror& mirror, stack::Ledger& ledger,
-                     std::vector<std::string>& warnings) {
+                     const stack::Mirror& mirror, optics::Polarisation polarisation,
+                     stack::Ledger& ledger, std::vector<std::string>& warnings) {
     Noise noise;
-    NoiseModel model(design, library, mirror, ledger);
-    noise.computed = true;
+    NoiseModel model(design, library, mirror, polarisation, ledger);
     noise.frequencies = stack::frequencies(design.band);
     noise.spot = design.band.spot;
     noise.terms = model.terms();
@@ -76,6 +75,12 @@ Noise assemble_noise(const stack::Design& design, const materials::Library& libr
     if (design.coating.excess_loss_stated) {
         ledger.note(fmt::format("the films' loss angles are multiplied by excess_loss = {:g}",
                                 design.coating.excess_loss));
+    }
+    if (design.light.angle > 0.0) {
+        ledger.note(
+            "at an angle the noise is displacement along the normal, read as a phase of 2 n0 k0 "
+            "cosθ per metre under a footprint w × w/cosθ; left out: strain in the plane of the "
+            "layers, and light that comes back on the same path (fringes across the face)");
     }
     warn_of_validity(design, mirror, model, warnings);
     return noise;

@@ -6,9 +6,9 @@
 
 namespace stillcoat::assess {
 
-/// Noise at normal incidence. Uses and notes go to `ledger`, warnings to `warnings`.
+/// Noise of the face in one polarisation. Uses and notes go to `ledger`, warnings to `warnings`.
 Noise assemble_noise(const stack::Design& design, const materials::Library& library,
-                     const stack::Mirror& mirror, stack::Ledger& ledger,
-                     std::vector<std::string>& warnings);
+                     const stack::Mirror& mirror, optics::Polarisation polarisation,
+                     stack::Ledger& ledger, std::vector<std::string>& warnings);
 
 }  // namespace stillcoat::assess

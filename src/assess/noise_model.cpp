@@ -12,8 +12,13 @@ namespace stillcoat::assess {
 using materials::PropertyId;
 
 NoiseModel::NoiseModel(const stack::Design& design, const materials::Library& library,
-                       const stack::Mirror& mirror, stack::Ledger& ledger)
-    : design_(design), mirror_(mirror), inputs_(design, library, ledger) {
+                       const stack::Mirror& mirror, optics::Polarisation polarisation,
+                       stack::Ledger& ledger)
+    : design_(design),
+      mirror_(mirror),
+      polarisation_(polarisation),
+      footprint_(noise::oblique_footprint(design.beam_radius, design.light.angle)),
+      inputs_(design, library, ledger) {
     read_weights();
     prepare_brownian();
     prepare_thermal();
@@ -28,14 +33,16 @@ std::vector<double> NoiseModel::every_frequency() const {
 
 void NoiseModel::read_weights() {
     const optics::StandingWave wave = optics::standing_wave(
-        optical_stack(mirror_), {design_.light.wavelength, 0.0, optics::Polarisation::s});
-    std::vector<double> p12;
+        optical_stack(mirror_), {design_.light.wavelength, design_.light.angle, polarisation_});
+    std::vector<optics::Photoelasticity> photoelastic;
     for (const stack::MirrorLayer& layer : mirror_.layers) {
-        p12.push_back(inputs_.photoelastic(layer.material, PropertyId::photoelastic_p12));
+        photoelastic.push_back(
+            {inputs_.photoelastic(layer.material, PropertyId::photoelastic_p11),
+             inputs_.photoelastic(layer.material, PropertyId::photoelastic_p12)});
     }
     face_weights_ = optics::surface_readout(wave.stack);
     if (std::abs(wave.reflection) >= optics::smallest_reflection) {
-        weights_ = optics::readout_weights(wave, p12);
+        weights_ = optics::readout_weights(wave, photoelastic);
     } else {
         weights_missing_ = "the face reflects nothing, so no phase is read";
     }
@@ -53,10 +60,8 @@ void NoiseModel::prepare_brownian() {
         at_face.push_back({*elastic.value, face_weights_[j]});
     }
     if (!brownian_missing_.empty()) return;
-    energies_ =
-        noise::thin_film_energies(*substrate_elastic_.value, elastic_layers_, design_.beam_radius);
-    face_energies_ =
-        noise::thin_film_energies(*substrate_elastic_.value, at_face, design_.beam_radius);
+    energies_ = noise::thin_film_energies(*substrate_elastic_.value, elastic_layers_, footprint_);
+    face_energies_ = noise::thin_film_energies(*substrate_elastic_.value, at_face, footprint_);
     // A law may leave the admissible losses somewhere in the band.
     for (const double frequency : every_frequency()) {
         if (layer_losses(frequency).empty()) return;
@@ -84,8 +89,7 @@ void NoiseModel::prepare_thermal() {
 void NoiseModel::prepare_substrate() {
     const std::string& name = design_.mirror.substrate;
     if (substrate_elastic_.value) {
-        substrate_energy_.value =
-            noise::half_space_energy(*substrate_elastic_.value, design_.beam_radius);
+        substrate_energy_.value = noise::half_space_energy(*substrate_elastic_.value, footprint_);
     }
     substrate_energy_.missing = substrate_elastic_.missing;
     substrate_brownian_missing_ = substrate_energy_.missing;
@@ -101,7 +105,9 @@ void NoiseModel::prepare_substrate() {
         mass_.missing = "diameter and thickness of the mirror not given";
     }
     const Wanted<double> slope = inputs_.property(name, PropertyId::thermo_optic_coefficient);
-    if (!design_.mirror.thickness) {
+    if (design_.light.angle > 0.0) {
+        path_missing_ = "computed for normal incidence only";
+    } else if (!design_.mirror.thickness) {
         path_missing_ = mass_.missing;
     } else if (!substrate_thermal_.value) {
         path_missing_ = substrate_thermal_.missing;
@@ -157,7 +163,8 @@ void NoiseModel::add_coating_brownian(double frequency, std::map<std::string, do
 void NoiseModel::add_thermal(double frequency, std::map<std::string, double>& spectra) const {
     if (!substrate_thermal_.value) return;
     const noise::ThermalMaterial& substrate = *substrate_thermal_.value;
-    const double t = design_.temperature, w = design_.beam_radius;
+    const double t = design_.temperature;
+    const noise::Footprint& w = footprint_;
     const double bare = noise::substrate_thermo_elastic_psd(substrate, w, t, frequency);
     spectra["substrate_thermo_elastic"] = bare;
     spectra["bare_substrate_thermo_elastic"] = bare;

@@ -8,6 +8,7 @@
 #include <vector>
 
 #include "assess/noise_inputs.hpp"
+#include "stillcoat/noise/footprint.hpp"
 #include "stillcoat/noise/substrate.hpp"
 #include "stillcoat/optics/readout.hpp"
 
@@ -16,7 +17,8 @@ namespace stillcoat::assess {
 class NoiseModel {
   public:
     NoiseModel(const stack::Design& design, const materials::Library& library,
-               const stack::Mirror& mirror, stack::Ledger& ledger);
+               const stack::Mirror& mirror, optics::Polarisation polarisation,
+               stack::Ledger& ledger);
 
     /// The spectra that can be computed, by the keys of terms() and comparisons() [m²/Hz].
     std::map<std::string, double> spectra_at(double frequency);
@@ -46,6 +48,8 @@ class NoiseModel {
 
     const stack::Design& design_;
     const stack::Mirror& mirror_;
+    optics::Polarisation polarisation_;
+    noise::Footprint footprint_;
     NoiseInputs inputs_;
     std::vector<optics::ReadoutLayer> weights_, face_weights_;
     std::string weights_missing_;

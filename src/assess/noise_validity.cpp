@@ -52,7 +52,8 @@ void warn_of_finite_mirror(const stack::Design& design, const noise::Elastic& su
                            const noise::Elastic& film, std::vector<std::string>& warnings) {
     const double radius = *design.mirror.diameter / 2.0;
     const double height = *design.mirror.thickness;
-    const double w = design.beam_radius;
+    // The sums know circles only: that of the ellipse's area.
+    const double w = design.beam_radius / std::sqrt(std::cos(design.light.angle));
     const std::string shape =
         fmt::format("beam radius / mirror radius {:.2g}, thickness / radius {:.2g}", w / radius,
                     height / radius);

@@ -186,17 +186,6 @@ std::vector<ReadoutLayer> readout_weights(const StandingWave& wave,
     return weights;
 }
 
-std::vector<ReadoutLayer> readout_weights(const StandingWave& wave,
-                                          const std::vector<double>& photoelastic_p12) {
-    if (wave.light.angle != 0.0) {
-        throw core::DomainError("angle of incidence of readout weights from p12 alone",
-                                wave.light.angle, "rad", "0", source);
-    }
-    std::vector<Photoelasticity> photoelasticity;
-    for (const double p12 : photoelastic_p12) photoelasticity.push_back({0.0, p12});
-    return readout_weights(wave, photoelasticity);
-}
-
 std::vector<ReadoutLayer> surface_readout(const OpticalStack& stack) {
     std::vector<ReadoutLayer> weights;
     weights.reserve(stack.layers.size());

@@ -54,7 +54,6 @@ std::string cell(const std::vector<double>& column, std::size_t row) {
 
 std::string noise_csv(const Appraisal& appraisal) {
     const assess::Noise& first = appraisal.faces.front().noise;
-    if (!first.computed) throw core::InputError("there is no noise table: " + first.missing, "");
     // A term that could not be computed keeps its column, empty; a total that lacks it says so in
     // its name.
     std::string text = first.complete

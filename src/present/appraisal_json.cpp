@@ -83,7 +83,6 @@ Json term(const assess::NoiseTerm& noise_term) {
 }
 
 Json noise(const assess::Noise& result) {
-    if (!result.computed) return {{"computed", false}, {"not_computed_because", result.missing}};
     Json terms = Json::array();
     for (const assess::NoiseTerm& item : result.terms) terms.push_back(term(item));
     Json comparisons = Json::array();
@@ -101,9 +100,7 @@ Json noise(const assess::Noise& result) {
                              {"to_Hz", number(stretch.to)},
                              {"title", stretch.title}});
     }
-    return {{"computed", true},
-            {"not_computed_because", nullptr},
-            {"complete", result.complete},
+    return {{"complete", result.complete},
             {"frequencies_Hz", numbers(result.frequencies)},
             {"spot_frequencies_Hz", numbers(result.spot)},
             {"terms", std::move(terms)},

@@ -63,7 +63,12 @@ void mirror_section(Page& page, const stack::Design& design, const Appraisal& ap
                          design.light.angle * 180.0 / core::pi,
                          design.light.angle == 0.0 ? " (normal)" : "", design.light.medium));
     page.row("beam",
-             fmt::format("radius {} (1/e² intensity), Gaussian", length_text(design.beam_radius)));
+             fmt::format("radius {} (1/e² intensity), Gaussian{}", length_text(design.beam_radius),
+                         design.light.angle == 0.0
+                             ? ""
+                             : fmt::format("; on the face {} × {}", length_text(design.beam_radius),
+                                           length_text(design.beam_radius /
+                                                       std::cos(design.light.angle)))));
     page.row("temperature", fmt::format("{:g} K", design.temperature));
     std::string body = design.mirror.substrate;
     if (design.mirror.diameter) {
@@ -223,7 +228,11 @@ void short_section(Page& page, const Appraisal& appraisal) {
         fraction_text(mean.absorptance), appraisal.faces.size() > 1 ? " (unpolarised)" : ""));
     for (const Face& face : appraisal.faces) {
         const std::string movement = movement_text(face.noise);
-        if (!movement.empty()) page.item(movement + light_words(appraisal, face));
+        const std::string light =
+            appraisal.faces.size() == 1
+                ? ""
+                : "in " + polarisation_text(face.polarisation) + " polarisation ";
+        if (!movement.empty()) page.item(light + movement);
     }
     if (!appraisal.warnings.empty()) {
         page.item(count_text(appraisal.warnings.size(), "warning") + " below", true);

@@ -25,10 +25,6 @@ struct AppraiseOptions {
 /// Says which terms of the total are missing; refuses to go on without them when that was asked
 /// for.
 void report_missing_terms(const assess::Noise& noise, bool strict) {
-    if (!noise.computed && strict) {
-        throw core::InputError("noise not computed: " + noise.missing,
-                               "refused because of --strict; nothing was written");
-    }
     for (const assess::NoiseTerm& term : noise.terms) {
         if (term.missing.empty()) continue;
         const std::string message = fmt::format("{} not computed: {}", term.title, term.missing);

@@ -69,10 +69,6 @@ void noise_section(Page& page, const stack::Mirror& mirror, const assess::Noise&
     page.heading(fmt::format(
         "Noise{}: apparent displacement of the mirror, amplitude spectral density in m/√Hz",
         light));
-    if (!noise.computed) {
-        page.item("not computed: " + noise.missing);
-        return;
-    }
     std::vector<std::string> head{"term"};
     for (const double f : noise.spot) head.push_back(frequency_text(f));
     std::vector<std::vector<std::string>> rows;

@@ -62,7 +62,8 @@ TEST(Appraisal, ReproducesTheClosedFormOfEqualElasticConstants) {
             "poisson_ratio = { value = 0.17, source = \"x\" }\n"));
     const double expected = noise::equal_elastic_psd({72e9, 0.17}, result.mirror.coating_thickness,
                                                      3e-4, 0.06, 295.0, 100.0);
-    EXPECT_NEAR(term(result.faces[0].noise, "coating_brownian_at_face").spot_psd[2] / expected, 1.0, 1e-12);
+    EXPECT_NEAR(term(result.faces[0].noise, "coating_brownian_at_face").spot_psd[2] / expected, 1.0,
+                1e-12);
 }
 
 TEST(Appraisal, LeavesOutATermWhoseInputIsUnknownAndSaysWhereToGiveIt) {
@@ -86,13 +87,11 @@ TEST(Appraisal, LeavesOutATermWhoseInputIsUnknownAndSaysWhereToGiveIt) {
     EXPECT_TRUE(given.complete);
 }
 
-TEST(Appraisal, OffNormalGivesOpticsForBothPolarisationsAndSaysThatNoiseComesLater) {
+TEST(Appraisal, OffNormalGivesOpticsForBothPolarisations) {
     const assess::Appraisal result = appraised(mirror_text(
         quarter_wave_pairs, "",
         "wavelength = \"1064 nm\"\nangle = \"45 deg\"\npolarisation = \"unpolarised\""));
     ASSERT_EQ(result.faces.size(), 2u);
-    EXPECT_FALSE(result.faces[0].noise.computed);
-    EXPECT_FALSE(result.faces[0].noise.missing.empty());
     EXPECT_GT(result.faces[0].response.reflectance, result.faces[1].response.reflectance);
     EXPECT_NEAR(
         mean_over_faces(result, &optics::Response::transmittance),
@@ -100,13 +99,64 @@ TEST(Appraisal, OffNormalGivesOpticsForBothPolarisationsAndSaysThatNoiseComesLat
         1e-18);
 }
 
+/// The mirror of the other tests with its light at an angle.
+assess::Appraisal tilted(double degrees, const std::string& polarisation) {
+    return appraised(mirror_text(quarter_wave_pairs, "",
+                                 "wavelength = \"1064 nm\"\nangle = \"" + std::to_string(degrees) +
+                                     " deg\"\npolarisation = \"" + polarisation + "\""));
+}
+
+TEST(Appraisal, NoiseAtAVanishingAngleIsThatOfNormalIncidence) {
+    const assess::Noise normal = appraised(mirror_text(quarter_wave_pairs)).faces[0].noise;
+    for (const char* polarisation : {"s", "p"}) {
+        const assess::Noise noise = tilted(1e-5, polarisation).faces[0].noise;
+        ASSERT_EQ(noise.terms.size(), normal.terms.size());
+        for (std::size_t i = 0; i < noise.terms.size(); ++i) {
+            EXPECT_NEAR(noise.terms[i].spot_psd[2] / normal.terms[i].spot_psd[2], 1.0, 1e-11)
+                << noise.terms[i].key << ' ' << polarisation;
+        }
+    }
+}
+
+TEST(Appraisal, NoiseAtAnAngleFollowsTheFootprint) {
+    // Without penetration the coating's noise goes with the inverse area of the spot, cosθ; the
+    // substrate's with the mean of 1/√(cos²φ/cos²θ + sin²φ) over the directions.
+    constexpr double degrees = 50.0;
+    const double cosine = std::cos(degrees * core::pi / 180.0);
+    double mean = 0.0;
+    constexpr int directions = 400;
+    for (int i = 0; i < directions; ++i) {
+        const double phi = core::pi * (i + 0.5) / directions;
+        mean += 1.0 / std::hypot(std::cos(phi) / cosine, std::sin(phi)) / directions;
+    }
+    const assess::Noise normal = appraised(mirror_text(quarter_wave_pairs)).faces[0].noise;
+    const assess::Appraisal both = tilted(degrees, "unpolarised");
+    ASSERT_EQ(both.faces.size(), 2u);
+    for (const assess::Face& face : both.faces) {
+        const auto ratio = [&](const std::string& key) {
+            return term(face.noise, key).spot_psd[2] / term(normal, key).spot_psd[2];
+        };
+        EXPECT_NEAR(ratio("coating_brownian_at_face"), cosine, 1e-12);
+        EXPECT_NEAR(ratio("substrate_brownian"), mean, 1e-12);
+    }
+    // Light of the two polarisations enters the coating differently deep.
+    EXPECT_GT(std::abs(term(both.faces[0].noise, "coating_brownian").spot_psd[2] /
+                           term(both.faces[1].noise, "coating_brownian").spot_psd[2] -
+                       1.0),
+              1e-4);
+    EXPECT_EQ(
+        std::count_if(both.notes.begin(), both.notes.end(),
+                      [](const std::string& note) { return note.rfind("at an angle", 0) == 0; }),
+        1);
+}
+
 TEST(Appraisal, ExcessLossMultipliesTheFilmsAndIsNamed) {
     const assess::Appraisal plain = appraised(mirror_text(quarter_wave_pairs));
     const assess::Appraisal more =
         appraised(mirror_text("[coating]\nexcess_loss = 1.15\n" + quarter_wave_pairs));
-    EXPECT_NEAR(
-        term(more.faces[0].noise, "coating_brownian").psd[5] / term(plain.faces[0].noise, "coating_brownian").psd[5],
-        1.15, 1e-12);
+    EXPECT_NEAR(term(more.faces[0].noise, "coating_brownian").psd[5] /
+                    term(plain.faces[0].noise, "coating_brownian").psd[5],
+                1.15, 1e-12);
     EXPECT_EQ(term(more.faces[0].noise, "substrate_brownian").psd[5],
               term(plain.faces[0].noise, "substrate_brownian").psd[5]);
     EXPECT_NE(std::find_if(more.notes.begin(), more.notes.end(),

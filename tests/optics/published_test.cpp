@@ -23,7 +23,7 @@ OpticalStack described_stack(const PublishedRow& row) {
 /// −∫ h dn/dT dz / λ: apparent motion away from the light per kelvin and per wavelength.
 double effective_dn_dt(const PublishedRow& row, const OpticalStack& stack,
                        const Illumination& light) {
-    const std::vector<double> no_photoelasticity(stack.layers.size(), 0.0);
+    const std::vector<Photoelasticity> no_photoelasticity(stack.layers.size(), {0.0, 0.0});
     double motion = 0.0;
     bool outermost = true;
     for (const ReadoutLayer& layer :

@@ -253,18 +253,4 @@ TEST(ReadoutWeights, RefuseWhatTheyDoNotDescribe) {
     EXPECT_THROW(weights_of(stack, p), core::DomainError);
 }
 
-TEST(ReadoutWeights, FromP12AloneAreForNormalIncidence) {
-    const auto stack = quarter_wave_stack(n_high, n_low, 4, n_low);
-    const std::vector<double> p12{0.1, 0.2, 0.3, 0.4};
-    const auto found = readout_weights(standing_wave(stack, normal_light()), p12);
-    const auto expected = weights_of(stack, {{0.5, 0.1}, {0.4, 0.2}, {0.3, 0.3}, {0.2, 0.4}});
-    for (std::size_t j = 0; j < 4; ++j) {
-        EXPECT_EQ(strain_weight(found[j], 5e-8), strain_weight(expected[j], 5e-8));
-        EXPECT_EQ(index_weight(found[j], 5e-8), index_weight(expected[j], 5e-8));
-    }
-    const StandingWave oblique = standing_wave(stack, {wavelength_1064, 0.1, Polarisation::s});
-    EXPECT_THROW(readout_weights(oblique, p12), core::DomainError);
-}
-
-}  // namespace
 }  // namespace stillcoat::optics

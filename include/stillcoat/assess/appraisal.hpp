@@ -44,8 +44,6 @@ struct Dominance {
 };
 
 struct Noise {
-    bool computed = false;
-    std::string missing;                    ///< why there is no noise at all (oblique incidence)
     std::vector<double> frequencies, spot;  ///< [Hz]
     std::vector<NoiseTerm> terms;           ///< what the total is made of
     std::vector<NoiseTerm> comparisons;     ///< parts, named models, light crossing the substrate
@@ -89,8 +87,16 @@ struct Appraisal {
     std::vector<stack::Ledger::Use> uses;
 };
 
+/// What is computed; what is not asked for stays empty.
+struct Scope {
+    bool field = true;          ///< Face::field
+    bool noise = true;          ///< Face::noise, and what is said about it
+    bool neighbourhood = true;  ///< around the operating point
+};
+
 /// @throws core::InputError when the design cannot be evaluated at all
-Appraisal appraise(const stack::Design& design, const materials::Library& library);
+Appraisal appraise(const stack::Design& design, const materials::Library& library,
+                   const Scope& scope = {});
 
 /// Reflectance, transmittance … of unpolarised light: the mean over the faces.
 double mean_over_faces(const Appraisal& appraisal, double optics::Response::*member);

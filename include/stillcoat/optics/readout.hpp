@@ -60,11 +60,6 @@ struct ReadoutLayer {
 std::vector<ReadoutLayer> readout_weights(const StandingWave& wave,
                                           const std::vector<Photoelasticity>& photoelasticity);
 
-/// The same from p12 alone, which is all that g and h ask for at normal incidence (g∥ is then that
-/// of p11 = 0). @throws core::DomainError off normal incidence.
-std::vector<ReadoutLayer> readout_weights(const StandingWave& wave,
-                                          const std::vector<double>& photoelastic_p12);
-
 /// The weights of light that does not enter the coating, at any angle: g = 1, g∥ = h = 0.
 std::vector<ReadoutLayer> surface_readout(const OpticalStack& stack);
 
