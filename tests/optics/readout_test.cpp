@@ -253,4 +253,5 @@ TEST(ReadoutWeights, RefuseWhatTheyDoNotDescribe) {
     EXPECT_THROW(weights_of(stack, p), core::DomainError);
 }
 
+}  // namespace
 }  // namespace stillcoat::optics
