@@ -92,18 +92,6 @@ void note_metals(const stack::Mirror& mirror, std::vector<std::string>& notes) {
     }
 }
 
-void note_shift(const stack::Design& design, const stack::Mirror& mirror,
-                std::vector<std::string>& notes) {
-    if (design.temperature == design.coating.reference_temperature) return;
-    const double ppm = (mirror.optical_path_ratio - 1.0) * 1e6;
-    notes.push_back(
-        fmt::format("from {:g} K to {:g} K the optical thickness of the coating changes by {:+.0f} "
-                    "ppm: its spectrum "
-                    "moves by {:+.2f} nm",
-                    design.coating.reference_temperature, design.temperature, ppm,
-                    (mirror.optical_path_ratio - 1.0) * design.light.wavelength * 1e9));
-}
-
 /// Phase, delay and noise belong to the reflected light, also where there is little of it.
 void warn_of_weak_reflection(const std::vector<Face>& faces, std::vector<std::string>& warnings) {
     constexpr double weak = 0.01;
@@ -192,6 +180,19 @@ void note_uncertain_expansion(const stack::Design& design, const materials::Libr
                     design.mirror.substrate, *alpha.number, alpha.width.value));
 }
 
+void add_part_and_losses(const stack::Design& design, Appraisal& result) {
+    for (Face& face : result.faces) {
+        face.losses = face_losses(design, result.mirror, face.response);
+        for (std::string& text : loss_warnings(design, result.mirror, face.losses))
+            add_once(result.warnings, std::move(text));
+        if (!result.mirror.rear) continue;
+        result.part.push_back(part_view(design, result.mirror, face.polarisation));
+    }
+    for (std::string& text : part_warnings(design, result.mirror, result.part))
+        add_once(result.warnings, std::move(text));
+    for (std::string& text : part_notes(design)) add_once(result.notes, std::move(text));
+}
+
 std::optional<LightLoad> light_load(const stack::Design& design, const Appraisal& appraisal) {
     if (!design.light.power) return std::nullopt;
     const double w = design.beam_radius;
@@ -258,10 +259,11 @@ Appraisal appraise(const stack::Design& design, const materials::Library& librar
         result.faces.push_back(face_optics(
             result.mirror, {design.light.wavelength, design.light.angle, polarisation}, scope));
     }
+    add_part_and_losses(design, result);
     result.light_load = light_load(design, result);
+    if (scope.neighbourhood) result.around = neighbourhood(design, library, result.mirror);
     warn_of_unknown_absorption(result.mirror, design.light.wavelength, result.warnings);
     note_metals(result.mirror, result.notes);
-    note_shift(design, result.mirror, result.notes);
     warn_of_beam(design, result.warnings);
     warn_of_weak_reflection(result.faces, result.warnings);
     if (scope.noise) note_uncertain_expansion(design, library, result.notes);

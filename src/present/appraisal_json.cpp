@@ -6,6 +6,7 @@
 #include <numeric>
 #include <stdexcept>
 
+#include "present/part_json.hpp"
 #include "present/sources.hpp"
 #include "present/wording.hpp"
 
@@ -112,6 +113,58 @@ Json noise(const assess::Noise& result) {
             {"largest_term", std::move(dominance)}};
 }
 
+/// With null for what was not searched for or is no reflector.
+Json reflection_band(const std::optional<assess::ReflectionBand>& band) {
+    if (!band) return nullptr;
+    const auto edge = [](const assess::BandEdge& found) {
+        const char* states[] = {"found", "beyond the data", "beyond the search"};
+        const bool known = found.state == optics::EdgeState::found;
+        return Json{{"wavelength_m", known ? number(found.wavelength) : Json(nullptr)},
+                    {"state", states[static_cast<int>(found.state)]},
+                    {"searched_to_m", known ? Json(nullptr) : number(found.wavelength)},
+                    {"data_end_of", found.material.empty() ? Json(nullptr) : Json(found.material)},
+                    {"shift_m", number_or_null(found.shift)}};
+    };
+    return {{"short_edge", edge(band->short_edge)},
+            {"long_edge", edge(band->long_edge)},
+            {"centre_wavelength_m", number_or_null(band->centre)},
+            {"relative_half_width", number_or_null(band->relative_half_width)},
+            {"top_reflectance", number(band->top_reflectance)},
+            {"operating_wavelength_inside", band->operating_wavelength_inside},
+            {"centre_shift_m", number_or_null(band->centre_shift)}};
+}
+
+Json reflected(const std::optional<assess::Reflected>& light) {
+    if (!light) return nullptr;
+    const bool dark = !std::isfinite(light->log_transmittance);
+    return {{"reflectance", number(light->reflectance)},
+            {"loss", number(light->loss)},
+            {"transmittance", number(light->transmittance)},
+            {"log_transmittance", dark ? Json(nullptr) : number(light->log_transmittance)},
+            {"absorptance", number(light->absorptance)}};
+}
+
+Json around(const Appraisal& appraisal) {
+    if (!appraisal.around) return nullptr;
+    Json departures = Json::array();
+    for (const assess::Departure& departure : appraisal.around->departures) {
+        const bool missing = !departure.missing.empty();
+        departures.push_back(
+            {{"wavelength_m", number(departure.wavelength)},
+             {"angle_rad", number(departure.angle)},
+             {"not_computed_because", missing ? Json(departure.missing) : Json(nullptr)},
+             {"absorptance_is_lower_limit",
+              missing ? Json(nullptr) : Json(!departure.absorption_known)},
+             {"s", reflected(departure.s)},
+             {"p", reflected(departure.p)},
+             {"mean", reflected(departure.mean)}});
+    }
+    return {{"stop_band_s", reflection_band(appraisal.around->s_band)},
+            {"stop_band_p", reflection_band(appraisal.around->p_band)},
+            {"top_reflectance", number(appraisal.around->top_reflectance)},
+            {"departures", std::move(departures)}};
+}
+
 Json face(const assess::Face& optics, const stack::Mirror& mirror) {
     const optics::Response& r = optics.response;
     Json layers = Json::array();
@@ -151,6 +204,7 @@ Json face(const assess::Face& optics, const stack::Mirror& mirror) {
     document["energy_penetration_depth_m"] = number(optics.energy_penetration_depth);
     document["face_intensity_ratio"] = number(optics.face_intensity);
     document["layers"] = std::move(layers);
+    document["losses"] = losses_json(optics.losses);
     document["noise"] = noise(optics.noise);
     return document;
 }
@@ -190,6 +244,11 @@ std::string appraisal_json(const stack::Design& design, const materials::Library
                            const Appraisal& appraisal) {
     Json faces = Json::array();
     for (const assess::Face& item : appraisal.faces) faces.push_back(face(item, appraisal.mirror));
+    Json mirror{{"substrate", design.mirror.substrate},
+                {"substrate_index", number(appraisal.mirror.substrate_optical.index.value)},
+                {"diameter_m", number_or_null(design.mirror.diameter)},
+                {"thickness_m", number_or_null(design.mirror.thickness)}};
+    add_surface_keys(mirror, design);
     const Json document{
         {"document", "appraisal"},
         {"program", "stillcoat"},
@@ -197,17 +256,15 @@ std::string appraisal_json(const stack::Design& design, const materials::Library
         {"title", design.title},
         {"design_file", design.document.name},
         {"operating_point", operating_point(design, appraisal)},
-        {"mirror",
-         {{"substrate", design.mirror.substrate},
-          {"substrate_index", number(appraisal.mirror.substrate_optical.index.value)},
-          {"diameter_m", number_or_null(design.mirror.diameter)},
-          {"thickness_m", number_or_null(design.mirror.thickness)}}},
+        {"mirror", std::move(mirror)},
         {"coating", coating(design, appraisal)},
         {"values_from_the_design", values_from_the_design(design)},
         {"reflectance", number(mean_over_faces(appraisal, &optics::Response::reflectance))},
         {"transmittance", number(mean_over_faces(appraisal, &optics::Response::transmittance))},
         {"absorptance", number(mean_over_faces(appraisal, &optics::Response::absorptance))},
         {"light_load", light_load(appraisal)},
+        {"part", part_json(design, appraisal)},
+        {"around", around(appraisal)},
         {"faces", std::move(faces)},
         {"warnings", appraisal.warnings},
         {"assumed_or_left_out", appraisal.notes},

@@ -7,7 +7,9 @@
 #include <map>
 #include <numeric>
 
+#include "present/neighbourhood_text.hpp"
 #include "present/noise_text.hpp"
+#include "present/part_text.hpp"
 #include "present/sources.hpp"
 #include "present/wording.hpp"
 #include "stillcoat/core/constants.hpp"
@@ -107,14 +109,15 @@ void power_rows(Page& page, const Appraisal& appraisal) {
                     appraisal.faces.size() > 1 ? " (of s and p the larger)" : ""));
 }
 
-void face_section(Page& page, const Face& face, bool label, bool lower_limit) {
+void face_section(Page& page, const stack::Design& design, const Face& face, bool label,
+                  bool lower_limit) {
     const optics::Response& r = face.response;
     page.heading(label ? "Light, " + polarisation_text(face.polarisation) + " polarisation"
                        : "Light");
     page.row("reflectance", reflectance_text(r));
     page.row("transmittance", transmittance_text(r) + " (into the substrate)");
     page.row("absorptance", (lower_limit ? "at least " : "") + fraction_text(r.absorptance));
-    page.row("scatter", "not stated");
+    loss_rows(page, design, face);
     if (!face.phase) {
         page.row("reflection phase",
                  "not defined: too little is reflected, or the light only just "
@@ -282,7 +285,7 @@ std::string appraisal_text(const stack::Design& design, const materials::Library
     mirror_section(page, design, appraisal);
     const bool lower_limit = absorption_unknown(appraisal);
     for (const Face& face : appraisal.faces) {
-        face_section(page, face, design.light.angle > 0.0, lower_limit);
+        face_section(page, design, face, design.light.angle > 0.0, lower_limit);
     }
     if (appraisal.faces.size() > 1) {
         page.heading("Light, unpolarised (mean of s and p)");
@@ -292,6 +295,8 @@ std::string appraisal_text(const stack::Design& design, const materials::Library
         page.row("absorptance", (lower_limit ? "at least " : "") + fraction_text(mean.absorptance));
     }
     power_rows(page, appraisal);
+    part_section(page, design, appraisal);
+    neighbourhood_section(page, design, appraisal);
     material_section(page, appraisal);
     const assess::Noise& noise = appraisal.faces.front().noise;
     if (!noise.layers.empty()) {

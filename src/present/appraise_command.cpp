@@ -4,9 +4,11 @@
 #include <memory>
 
 #include "present/appraisal_csv.hpp"
+#include "present/appraisal_figure.hpp"
 #include "present/appraisal_json.hpp"
 #include "present/appraisal_text.hpp"
 #include "present/command.hpp"
+#include "present/figure.hpp"
 #include "stillcoat/present/command_line.hpp"
 
 /// `stillcoat appraise`.
@@ -18,7 +20,7 @@ struct AppraiseOptions {
     std::string design;
     std::vector<std::string> materials;
     bool json = false, all_layers = false, strict = false;
-    std::string csv;
+    std::string csv, figure, draw = "noise";
     Output output;
 };
 
@@ -35,6 +37,9 @@ void report_missing_terms(const assess::Noise& noise, bool strict) {
 }
 
 int appraise_command(const std::string& program, const AppraiseOptions& options) {
+    if (!options.figure.empty()) {
+        check_figure_path(options.figure, options.output.path, options.output.existing());
+    }
     materials::Library library = load_library(program, options.materials);
     const stack::Design design = load_design(options.design, library);
     const assess::Appraisal appraisal = assess::appraise(design, library);
@@ -53,6 +58,10 @@ int appraise_command(const std::string& program, const AppraiseOptions& options)
                               {options.output.colour(), options.all_layers});
     }
     options.output.write(text);
+    if (!options.figure.empty()) {
+        draw_appraisal(design, appraisal, options.draw == "field" ? Picture::field : Picture::noise,
+                       options.figure, options.output.existing());
+    }
     return fine;
 }
 
@@ -72,6 +81,14 @@ Command add_appraise(CLI::App& app, const std::string& program) {
         ->check(CLI::IsMember({"noise", "layers", "field"}))
         ->type_name("TABLE")
         ->excludes(json);
+    auto* figure = command
+                       ->add_option("--figure", options->figure,
+                                    "draw into this .svg, .pdf or .png too, the data beside it")
+                       ->type_name("FILE");
+    command->add_option("--draw", options->draw, "what the figure shows: noise or field [noise]")
+        ->check(CLI::IsMember({"noise", "field"}))
+        ->type_name("WHAT")
+        ->needs(figure);
     command->add_flag("--all-layers", options->all_layers, "show every layer of a long stack");
     command->add_flag("--strict", options->strict,
                       "exit code 2 when a noise term cannot be computed");

@@ -31,7 +31,7 @@ void add_folder_option(CLI::App& command, std::vector<std::string>& folders) {
         .add_option("--materials", folders,
                     "folder of material files that add to or replace the library's")
         ->type_name("DIR")
-        ->expected(1);
+        ->allow_extra_args(false);
 }
 
 namespace {

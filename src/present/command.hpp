@@ -24,6 +24,7 @@ Command add_appraise(CLI::App& app, const std::string& program);
 Command add_draft(CLI::App& app, const std::string& program);
 Command add_layers(CLI::App& app, const std::string& program);
 Command add_materials(CLI::App& app, const std::string& program);
+Command add_sweep(CLI::App& app, const std::string& program);
 Command add_units(CLI::App& app);
 
 /// Where a command's result goes.

@@ -60,9 +60,9 @@ int dispatch(const std::string& program, const std::vector<std::string>& argumen
         "Example:\n  stillcoat appraise examples/end-mirror/design.toml\n\n"
         "Exit codes: 0 fine, 1 a requirement is not met, 2 bad input, 3 no answer, 4 our mistake.\n"
         "Work with lasers, vacuum and cryogens follows local rules and licensed practice.");
-    const std::vector<Command> commands{add_draft(app, program), add_appraise(app, program),
-                                        add_layers(app, program), add_materials(app, program),
-                                        add_units(app)};
+    const std::vector<Command> commands{add_draft(app, program),     add_appraise(app, program),
+                                        add_layers(app, program),    add_sweep(app, program),
+                                        add_materials(app, program), add_units(app)};
     if (!arguments.empty() && arguments[0].rfind('-', 0) != 0) {
         std::vector<std::string> names;
         for (const Command& command : commands) names.push_back(command.app->get_name());

@@ -38,6 +38,10 @@ void require_free(const std::string& path, core::Existing existing) {
     }
 }
 
+std::string data_path_of(const std::string& path) {
+    return fs::path(path).replace_extension(".csv").string();
+}
+
 /// Both files, or none that was not there before.
 void write_both(const std::string& path, const std::string& picture, const std::string& data_path,
                 const std::string& data, core::Existing existing) {
@@ -92,7 +96,7 @@ template <typename Picture>
 void draw_picture(const Picture& picture, const std::string& path, core::Existing existing) {
     const std::string data = figure_data_csv(picture);
     const PictureFormat format = format_of(path);
-    const std::string data_path = fs::path(path).replace_extension(".csv").string();
+    const std::string data_path = data_path_of(path);
     require_free(path, existing);
     require_free(data_path, existing);
     const Script script = figure_script(picture, format);
@@ -103,6 +107,21 @@ void draw_picture(const Picture& picture, const std::string& path, core::Existin
 }
 
 }  // namespace
+
+void check_figure_path(const std::string& path, const std::string& result,
+                       core::Existing existing) {
+    format_of(path);
+    if (result != "-" &&
+        (fs::path(result).lexically_normal() == fs::path(data_path_of(path)).lexically_normal() ||
+         fs::path(result).lexically_normal() == fs::path(path).lexically_normal())) {
+        throw core::InputError(
+            fmt::format("--out {} is where the figure and its data go: {} and {}", result, path,
+                        data_path_of(path)),
+            "give one of the two another name");
+    }
+    require_free(path, existing);
+    require_free(data_path_of(path), existing);
+}
 
 void draw(const Figure& figure, const std::string& path, core::Existing existing) {
     draw_picture(figure, path, existing);

@@ -84,6 +84,11 @@ std::string figure_data_csv(const Figure& figure);
 /// One row for each cell of the map: x, y, z.
 std::string figure_data_csv(const Map& map);
 
+/// Refuses what draw would refuse of a path, and a `result` file that the data would overwrite,
+/// before anything is computed. @param result another file of the same command; "-" for none
+/// @throws core::InputError
+void check_figure_path(const std::string& path, const std::string& result, core::Existing existing);
+
 /// Draws into `path`, whose ending .svg, .pdf or .png says the format, and writes the data beside
 /// it with the ending .csv. What stands in the files depends on the figure and on gnuplot's version
 /// and fonts only. A value outside an axis with given limits is cut off there.

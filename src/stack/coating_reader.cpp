@@ -98,23 +98,24 @@ core::Limits admissible::layer_thickness() { return core::between(1e-15, 1.0, "m
 
 void read_blocks(TableReader& reader, const std::string& key, const materials::Library& library,
                  std::vector<LayerInput>& layers) {
+    // "[coating]" and "block" make "[[coating.block]]".
+    const std::string& table = reader.name();
+    const std::string blocks = fmt::format("[{}.{}]]", table.substr(0, table.size() - 1), key);
+    const std::string hint = fmt::format("add {} with layers = [ ... ]", blocks);
     if (!reader.has(key)) {
         reader.find(key);
-        reader.problems().add(reader.node().place(), "the coating has no layers",
-                              fmt::format("add [[coating.{}]] with layers = [ ... ]", key));
+        reader.problems().add(reader.node().place(), "the coating has no layers", hint);
         return;
     }
     std::size_t number = 0;
     const std::size_t before = reader.problems().size();
     for (const Node* node : reader.tables(key)) {
-        TableReader block(*node, fmt::format("[[coating.{}]] {}", key, ++number),
-                          reader.problems());
+        TableReader block(*node, fmt::format("{} {}", blocks, ++number), reader.problems());
         read_block(block, library, layers);
         block.finish();
     }
     if (layers.empty() && reader.problems().size() == before) {
-        reader.problem_at(key, "the coating has no layers",
-                          fmt::format("add [[coating.{}]] with layers = [ ... ]", key));
+        reader.problem_at(key, "the coating has no layers", hint);
     }
 }
 

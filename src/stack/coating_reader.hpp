@@ -18,6 +18,7 @@ Coating read_coating(core::TableReader& reader, double wavelength,
                      const materials::Library& library);
 
 /// The layers of an array of blocks, repeats written out; a missing or empty one is a problem.
+/// @param reader of [coating] or another table that holds blocks
 void read_blocks(core::TableReader& reader, const std::string& key,
                  const materials::Library& library, std::vector<LayerInput>& layers);
 

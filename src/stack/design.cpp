@@ -6,6 +6,7 @@
 #include <cmath>
 
 #include "stack/coating_reader.hpp"
+#include "stack/part_reader.hpp"
 #include "stillcoat/core/constants.hpp"
 #include "stillcoat/core/reader.hpp"
 
@@ -56,9 +57,11 @@ Light read_light(TableReader& document, const materials::Library& library) {
     light.polarisation = polarisation == "p"             ? PolarisationChoice::p
                          : polarisation == "unpolarised" ? PolarisationChoice::unpolarised
                                                          : PolarisationChoice::s;
-    light.medium = reader->text("medium").value_or("vacuum");
-    if (light.medium != "vacuum" && light.medium != "air") {
-        check_material(*reader, "medium", light.medium, library, {"vacuum", "air"});
+    light.medium = read_medium(*reader, library);
+    light.from_rear = reader->choice("from", {"front", "rear"}) == "rear";
+    if (light.from_rear && !document.has("rear_face")) {
+        reader->problem_at("from", "light from the rear needs [rear_face]",
+                           "add [rear_face]; an empty table is a bare rear face");
     }
     light.power = reader->quantity("power", kind::power, power_limits);
     reader->finish();
@@ -81,6 +84,7 @@ MirrorBody read_mirror(TableReader& document, const materials::Library& library)
             fmt::format("{} in [mirror] stands alone", diameter ? "diameter" : "thickness"),
             "give diameter and thickness for a finite mirror, neither for a half-space");
     }
+    read_surface(*reader, mirror);
     reader->finish();
     return mirror;
 }
@@ -218,6 +222,7 @@ Design read_design(core::Document document, materials::Library& library) {
         design.coating = read_coating(*coating, design.light.wavelength, library);
         coating->finish();
     }
+    design.rear_face = read_rear_face(reader, design.mirror, library);
     reader.finish();
     check_effort(design, problems);
     problems.throw_if_any();
@@ -225,6 +230,7 @@ Design read_design(core::Document document, materials::Library& library) {
 }
 
 std::vector<double> frequencies(const Band& band) {
+    if (band.from == band.to) return {band.from};
     const double decades = std::log10(band.to / band.from);
     const int intervals =
         std::max(1, static_cast<int>(std::lround(decades * band.points_per_decade)));

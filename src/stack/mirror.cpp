@@ -126,19 +126,43 @@ class ThicknessStrain {
     std::map<std::string, double> known_;
 };
 
-numerics::Jet<double> incident_index(const Design& design, OpticalLookup& lookup,
-                                     Problems& problems) {
-    const std::string& medium = design.light.medium;
+/// The layer at the operating point; only its material when a problem is known already.
+/// @param reference where the layer's quarter waves are counted
+MirrorLayer operating_layer(const LayerInput& input, const Design& design, OpticalLookup& operating,
+                            OpticalLookup& reference, ThicknessStrain& strain, Problems& problems) {
+    const Where where = [&input] { return input.place(); };
+    MirrorLayer layer{};
+    layer.material = input.material;
+    layer.optical = operating.get(input.material, where, problems);
+    if (!problems.empty()) return layer;
+    layer.reference_thickness = input.thickness.value_or(0.0);
+    if (input.quarter_waves) {
+        const double n = reference.get(input.material, where, problems).index.value;
+        layer.reference_thickness =
+            *input.quarter_waves * design.coating.design_wavelength / (4.0 * n);
+    }
+    layer.thickness = layer.reference_thickness * (1.0 + strain.of(input.material));
+    layer.quarter_waves =
+        4.0 * layer.optical.index.value * layer.thickness / design.light.wavelength;
+    return layer;
+}
+
+/// The index of a medium outside the mirror.
+/// @param table of the design file that names it
+/// @param role what the medium is, for the message
+numerics::Jet<double> medium_index(const Design& design, const std::string& table,
+                                   const std::string& medium, const std::string& role,
+                                   OpticalLookup& lookup, Problems& problems) {
     if (medium == "vacuum") return numerics::Jet<double>(1.0);
     if (medium == "air") return numerics::Jet<double>(materials::index_of_air);
-    const Where where = value_place(design, "light", "medium");
+    const Where where = value_place(design, table, "medium");
     const OpticalConstants constants = lookup.get(medium, where, problems);
     // Bulk absorption over the width of a wave is nothing; a real extinction makes R and T ill
     // defined.
     if (constants.extinction.value > 1e-6) {
         problems.add(where(),
-                     fmt::format("{} absorbs (k = {:.3g}): an absorbing incident medium is refused",
-                                 medium, constants.extinction.value),
+                     fmt::format("{} absorbs (k = {:.3g}): an absorbing {} medium is refused",
+                                 medium, constants.extinction.value, role),
                      "reflectance and transmittance are not defined in it");
     }
     return constants.index;
@@ -191,31 +215,32 @@ Mirror at_operating_point(const Design& design, const Library& library, Ledger& 
     ThicknessStrain strain(design, library, ledger);
     Mirror mirror{};
     mirror.substrate = design.mirror.substrate;
-    mirror.incident_index = incident_index(design, operating, problems);
+    mirror.incident_index =
+        medium_index(design, "light", design.light.medium, "incident", operating, problems);
     mirror.substrate_optical =
         operating.get(mirror.substrate, value_place(design, "mirror", "substrate"), problems);
     double path = 0.0;
     double reference_path = 0.0;
     for (const LayerInput& input : coating.layers) {
         const Where where = [&input] { return input.place(); };
-        MirrorLayer layer{};
-        layer.material = input.material;
-        layer.optical = operating.get(input.material, where, problems);
+        MirrorLayer layer = operating_layer(input, design, operating, reference, strain, problems);
         if (!problems.empty()) continue;
-        layer.reference_thickness = input.thickness.value_or(0.0);
-        if (input.quarter_waves) {
-            const double n = reference.get(input.material, where, problems).index.value;
-            layer.reference_thickness =
-                *input.quarter_waves * coating.design_wavelength / (4.0 * n);
-        }
-        layer.thickness = layer.reference_thickness * (1.0 + strain.of(input.material));
-        layer.quarter_waves =
-            4.0 * layer.optical.index.value * layer.thickness / design.light.wavelength;
         path += layer.optical.index.value * layer.thickness;
         reference_path += reference_colour.get(input.material, where, problems).index.value *
                           layer.reference_thickness;
         mirror.coating_thickness += layer.thickness;
         mirror.layers.push_back(std::move(layer));
+    }
+    if (design.rear_face) {
+        const RearFace& face = *design.rear_face;
+        mirror.rear =
+            MirrorRear{medium_index(design, "rear_face", face.medium, "rear", operating, problems),
+                       design.mirror.thickness.value_or(0.0),
+                       {}};
+        for (const LayerInput& input : face.layers) {
+            mirror.rear->layers.push_back(
+                operating_layer(input, design, operating, reference, strain, problems));
+        }
     }
     problems.throw_if_any();
     mirror.optical_path_ratio = path / reference_path;

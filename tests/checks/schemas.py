@@ -39,5 +39,9 @@ for folder in sorted((root / "examples").glob("*/")):
         print(f"{folder.name}: exit {run.returncode}: {run.stderr}")
         continue
     check("appraisal", json.loads(run.stdout, parse_constant=refuse_constant), folder.name)
+    run = subprocess.run([program, "sweep", "--json", str(design), "--over", "temperature=250K:320K:8", "--show",
+                          "transmittance,total_psd_m2_per_Hz" + ("_s" if "turning" in folder.name else "")],
+                         capture_output=True, text=True)
+    check("sweep", json.loads(run.stdout, parse_constant=refuse_constant), folder.name + ", sweep")
 print(f"{checked} documents checked, {failed} faults")
 sys.exit(1 if failed or checked < 10 else 0)

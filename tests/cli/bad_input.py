@@ -175,10 +175,6 @@ CASES = {
     "property-unknown-and-strict": (change("tantala-ibs", "gold-film"), """\
 thermal, all coherent not computed: dn/dT of gold-film unknown: no value recorded; give it in [material."gold-film"]
        refused because of --strict; nothing was written""", ["appraise", "design.toml", "--strict", "--out", "result.txt"]),
-    "strict-off-normal": (change('"1064 nm"', '"1064 nm"\nangle = "10 deg"\npolarisation = "s"'), """\
-noise not computed: noise is computed for normal incidence only; the optics hold at this angle
-       refused because of --strict; nothing was written""",
-                          ["appraise", "design.toml", "--strict", "--out", "result.txt"]),
     "metal-without-absorption": (change("tantala-ibs", "gold-film").replace('"295 K"', '"124 K"') +
                                  '[material.gold-film]\nrefractive_index = { value = 0.2, source = "x" }\n', """\
 {f}:10:25: extinction coefficient of gold-film at 124 K unknown (its data hold for 283–313 K)
@@ -228,6 +224,42 @@ noise not computed: noise is computed for normal incidence only; the optics hold
      7 | diameter = "1 cm"
        |            ^^^^^^
        give diameter and thickness for a finite mirror, neither for a half-space"""),
+    "rear-face-without-thickness": (GOOD + "[rear_face]\n", """\
+{f}:11:1: [rear_face] stands behind a half-space
+    11 | [rear_face]
+       | ^^^^^^^^^^^
+       give diameter and thickness in [mirror]"""),
+    "roughness-without-band": (change('"fused-silica"', '"fused-silica"\nroughness = { rms = "0.1 nm" }'), """\
+{f}:7:13: band is missing in roughness of [mirror]
+     7 | roughness = { rms = "0.1 nm" }
+       |             ^^^^^^^^^^^^^^^^^^
+       add band = ["1 1/mm", "1000 1/mm"], the spatial frequencies of the rms"""),
+    "roughness-and-scatter": (change('"fused-silica"', '"fused-silica"\n'
+                                     'roughness = { rms = "0.1 nm", band = ["1 1/mm", "1000 1/mm"] }\n'
+                                     'scatter = { value = "3 ppm", source = "x" }'), """\
+{f}:8:1: scatter and roughness in [mirror] contradict each other
+     8 | scatter = { value = "3 ppm", source = "x" }
+       | ^^^^^^^
+       and here: {f}:7:1
+     7 | roughness = { rms = "0.1 nm", band = ["1 1/mm", "1000 1/mm"] }
+       | ^^^^^^^^^
+       scatter is stated, or it follows from the roughness: keep one"""),
+    "unknown-passes": (change('"fused-silica"', '"fused-silica"\ndiameter = "1 cm"\nthickness = "5 mm"')
+                       + '[rear_face]\npasses = "fields"\n', """\
+{f}:14:10: passes in [rear_face] is "fields"
+    14 | passes = "fields"
+       |          ^^^^^^^^
+       it must be one of "intensities", "amplitudes\""""),
+    "light-from-the-left": (change('"1064 nm"', '"1064 nm"\nfrom = "left"'), """\
+{f}:3:8: from in [light] is "left"
+     3 | from = "left"
+       |        ^^^^^^
+       it must be one of "front", "rear\""""),
+    "light-from-a-missing-rear": (change('"1064 nm"', '"1064 nm"\nfrom = "rear"'), """\
+{f}:3:8: light from the rear needs [rear_face]
+     3 | from = "rear"
+       |        ^^^^^^
+       add [rear_face]; an empty table is a bare rear face"""),
     "not-toml": ("this is no TOML\n", """\
 {f}:1:1: not valid TOML: missing key-value separator `=`
      1 | this is no TOML
@@ -370,9 +402,6 @@ Run with --help for more information.""", ["appraise", "design.toml", "--csv", "
     "csv-and-json": (GOOD, """\
 --json excludes --csv
 Run with --help for more information.""", ["appraise", "design.toml", "--csv", "layers", "--json"]),
-    "noise-table-off-normal": (change('"1064 nm"', '"1064 nm"\nangle = "10 deg"\npolarisation = "s"'), """\
-there is no noise table: noise is computed for normal incidence only; the optics hold at this angle""",
-                               ["appraise", "design.toml", "--csv", "noise"]),
     "materials-unknown-name": (GOOD, """\
 unknown material "tantalla-ibs"
        did you mean "tantala-ibs"?""", ["materials", "tantalla-ibs"]),

@@ -3,9 +3,12 @@ import csv
 import io
 import json
 import pathlib
+import signal
 import subprocess
 import sys
 import tempfile
+import time
+import xml.etree.ElementTree
 
 program, root = sys.argv[1], pathlib.Path(sys.argv[2])
 design = root / "examples/end-mirror/design.toml"
@@ -138,7 +141,54 @@ expect(json.loads(run("appraise", "-", "--json", stdin=two.stdout).stdout)["refl
 smallest = run("draft").stdout
 expect("[coating]" in smallest and run("appraise", "-", stdin=smallest).stdout, "the smallest example")
 
-for arguments in (["--help"], *([command, "--help"] for command in ("draft", "appraise", "layers", "materials", "units"))):
+# A sweep that is interrupted keeps what it did and goes on from there to the same bytes.
+with tempfile.TemporaryDirectory() as folder:
+    folder = pathlib.Path(folder)
+    words = ["sweep", design, "--over", "frequency=1Hz:10kHz:3000:log"]
+    whole = run(*words, "--out", folder / "whole.csv")
+    started = subprocess.Popen([program, *map(str, words), "--out", str(folder / "cut.csv")], stderr=subprocess.PIPE, text=True)
+    time.sleep(1.0)
+    started.send_signal(signal.SIGINT)
+    stopped = started.communicate(timeout=60)[1]
+    expect(started.returncode == 3 and "with --resume goes on" in stopped, f"interrupted sweep: {started.returncode}, {stopped}")
+    expect(sorted(p.name for p in folder.iterdir()) == ["cut.csv.unfinished", "whole.csv"], "files of an interrupted sweep")
+    expect("earlier sweep stopped here" in run(*words, "--out", folder / "cut.csv", code=2).stderr, "forgotten --resume")
+    other = ["sweep", design, "--over", "frequency=1Hz:10kHz:30:log", "--out", folder / "cut.csv", "--resume"]
+    expect("belongs to another sweep" in run(*other, code=2).stderr, "--resume of another sweep")
+    changed = folder / "changed.toml"
+    changed.write_text(design.read_text().replace('[environment]\ntemperature = "295 K"', '[environment]\ntemperature = "296 K"'))
+    expect(changed.read_text() != design.read_text(), "the design was not changed")
+    late = run("sweep", changed, *words[2:], "--out", folder / "cut.csv", "--resume", code=2)
+    expect("comes out differently now" in late.stderr, "--resume of a changed design")
+    run(*words, "--out", folder / "cut.csv", "--resume")
+    expect((folder / "cut.csv").read_bytes() == (folder / "whole.csv").read_bytes(), "resumed sweep differs")
+    expect(not (folder / "cut.csv.unfinished").exists(), "unfinished file left behind")
+
+# Figures hold the curves they claim; without gnuplot nothing else fails.
+with tempfile.TemporaryDirectory() as folder:
+    folder = pathlib.Path(folder)
+    run("appraise", design, "--figure", folder / "noise.svg")
+    svg = (folder / "noise.svg").read_text()
+    titles = [e.text for e in xml.etree.ElementTree.fromstring(svg).iter("{http://www.w3.org/2000/svg}title")]
+    for name in ("coating Brownian", "thermal, all coherent", "substrate Brownian", "sum"):
+        expect(name in titles, f"noise figure has no curve {name}: {titles}")
+    shown = list(csv.DictReader(open(folder / "noise.csv")))
+    total_column = next(name for name in shown[0] if name.startswith("sum"))
+    expect(len(shown) == len(table) and all(abs(float(a[total_column]) ** 2 / float(b["total_psd_m2_per_Hz"]) - 1) < 1e-14
+                                            for a, b in zip(shown, table)), "data beside the noise figure")
+    run("appraise", design, "--figure", folder / "field.pdf", "--draw", "field")
+    expect((folder / "field.pdf").read_bytes().startswith(b"%PDF"), "field figure")
+    run("sweep", design, "--over", "wavelength=1000nm:1600nm:61", "--figure", folder / "spectrum.svg")
+    titles = [e.text for e in xml.etree.ElementTree.fromstring((folder / "spectrum.svg").read_text()).iter("{http://www.w3.org/2000/svg}title")]
+    expect({"reflectance", "transmittance", "absorptance"} <= set(titles), f"spectrum: {titles}")
+    run("sweep", design, "--over", "wavelength=1300nm:1500nm:9", "--over", "silica-ibs.thickness=0.98:1.02:5",
+        "--show", "transmittance", "--figure", folder / "map.png")
+    expect(len((folder / "map.csv").read_text().splitlines()) == 46, "map data")
+    bare = subprocess.run([program, "appraise", str(design), "--figure", str(folder / "x.svg")], capture_output=True,
+                          text=True, env={"PATH": str(folder)})
+    expect(bare.returncode == 2 and "gnuplot" in bare.stderr and not (folder / "x.svg").exists(), f"no gnuplot: {bare.stderr}")
+
+for arguments in (["--help"], *([command, "--help"] for command in ("draft", "appraise", "layers", "sweep", "materials", "units"))):
     out = run(*arguments).stdout
     expect("Usage" in out, f"{arguments}: no help")
     expect("xample" in out or arguments[0] == "units", f"{arguments}: no example")

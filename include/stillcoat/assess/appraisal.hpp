@@ -6,6 +6,8 @@
 #include <string>
 #include <vector>
 
+#include "stillcoat/assess/neighbourhood.hpp"
+#include "stillcoat/assess/part_view.hpp"
 #include "stillcoat/materials/library.hpp"
 #include "stillcoat/optics/response.hpp"
 #include "stillcoat/stack/design.hpp"
@@ -65,6 +67,7 @@ struct Face {
     std::vector<double> peak_intensity;          ///< per layer, over the incident one
     std::vector<double> peak_depth;              ///< per layer, below its top [m]
     std::vector<FieldSample> field;
+    FaceLosses losses;
     Noise noise;
 };
 
@@ -79,7 +82,9 @@ struct LightLoad {
 struct Appraisal {
     stack::Mirror mirror;
     std::vector<Face> faces;              ///< one, or s and p for unpolarised light
+    std::vector<PartView> part;           ///< one per face; empty without a rear face
     std::optional<LightLoad> light_load;  ///< absent when the design states no power
+    std::optional<Neighbourhood> around;  ///< absent when not asked for
     std::vector<std::string> warnings;    ///< what the designer should act on
     std::vector<std::string> notes;       ///< what was left out or assumed
     std::vector<std::string> analogies;   ///< values by analogy
@@ -91,7 +96,7 @@ struct Appraisal {
 struct Scope {
     bool field = true;          ///< Face::field
     bool noise = true;          ///< Face::noise, and what is said about it
-    bool neighbourhood = true;  ///< around the operating point
+    bool neighbourhood = true;  ///< Appraisal::around
 };
 
 /// @throws core::InputError when the design cannot be evaluated at all

@@ -23,11 +23,26 @@ struct Light {
     bool polarisation_stated;
     std::string medium;           ///< "vacuum", "air" or a material
     std::optional<double> power;  ///< incident [W]
+    bool from_rear;               ///< the whole part is lit from behind, along the same ray
+};
+
+/// Relief of the coated face. An rms height holds for its band of spatial frequencies only.
+struct Roughness {
+    double rms;       ///< [m]
+    double from, to;  ///< spatial frequencies [1/m]
+};
+
+/// Total integrated scatter of the coated face as the design states it.
+struct StatedScatter {
+    double value;  ///< per incident power, 0 to 1
+    std::string source;
 };
 
 struct MirrorBody {
     std::string substrate;
     std::optional<double> diameter, thickness;  ///< [m]; both or neither, neither: a half-space
+    std::optional<Roughness> roughness;         ///< at most one of roughness and scatter
+    std::optional<StatedScatter> scatter;
 };
 
 struct Band {
@@ -56,6 +71,15 @@ struct Coating {
     std::vector<LayerInput> layers;  ///< from the light side to the substrate, repeats written out
 };
 
+/// How the passes of light through the plate are added up.
+enum class Passes { intensities, amplitudes };
+
+struct RearFace {
+    std::string medium;  ///< "vacuum", "air" or a material
+    Passes passes;
+    std::vector<LayerInput> layers;  ///< from the substrate outwards; empty: a bare face
+};
+
 /// Values of one material that the design file replaces.
 struct Override {
     std::string material;
@@ -71,6 +95,7 @@ struct Design {
     double temperature;  ///< [K]
     Band band;
     Coating coating;
+    std::optional<RearFace> rear_face;  ///< absent: only the coated face is considered
     std::vector<Override> overrides;
 };
 
@@ -78,7 +103,7 @@ struct Design {
 /// @throws core::InputError with every problem of the file
 Design read_design(core::Document document, materials::Library& library);
 
-/// Frequencies of the band, evenly spaced in logarithm, ends included [Hz].
+/// Frequencies of the band, evenly spaced in logarithm, ends included [Hz]; one when the ends meet.
 std::vector<double> frequencies(const Band& band);
 
 }  // namespace stillcoat::stack

@@ -7,6 +7,7 @@
 /// Timoshenko & J. N. Goodier, Theory of Elasticity, §13.4).
 
 #include <map>
+#include <optional>
 #include <string>
 #include <vector>
 
@@ -31,6 +32,13 @@ struct MirrorLayer {
     double quarter_waves;  ///< n d / (λ/4) at the operating point and wavelength of the light
 };
 
+/// The rear face, with the plate between it and the coated face.
+struct MirrorRear {
+    numerics::Jet<double> medium_index;
+    double plate_thickness;           ///< as stated [m]
+    std::vector<MirrorLayer> layers;  ///< from the substrate outwards; empty: a bare face
+};
+
 struct Mirror {
     numerics::Jet<double> incident_index;
     std::vector<MirrorLayer> layers;
@@ -39,6 +47,7 @@ struct Mirror {
     double coating_thickness;  ///< at the operating temperature [m]
     double
         optical_path_ratio;  ///< Σ n d at the operating temperature over that at the reference one
+    std::optional<MirrorRear> rear;  ///< absent when the design states no rear face
 };
 
 /// What was looked up on the way, for the reader of the result.
@@ -70,7 +79,7 @@ class Ledger {
 };
 
 /// @throws core::InputError when an index is unknown at the wavelength or temperature, an absorbing
-///         incident medium is asked for, or a layer would vanish on cooling
+///         medium outside the mirror is asked for, or a layer would vanish on cooling
 Mirror at_operating_point(const Design& design, const materials::Library& library, Ledger& ledger);
 
 }  // namespace stillcoat::stack
