@@ -60,10 +60,30 @@ std::string design_head(const DraftRequest& request, const std::string& title) {
     return text;
 }
 
+/// The tables that take alternatives of the library.
+std::string alternatives_text(const DraftRequest& request) {
+    std::string text;
+    for (const std::string& alternative : request.alternatives) {
+        const std::size_t equal = alternative.find('=');
+        const std::size_t dot = alternative.rfind('.', equal);
+        const bool whole = equal != std::string::npos && dot != std::string::npos && dot > 0 &&
+                           alternative.find_first_of("\"\\\n") == std::string::npos;
+        if (!whole) {
+            throw core::InputError(
+                fmt::format("--alternative: \"{}\" is no MATERIAL.PROPERTY=NAME", alternative),
+                "for example silicon.refractive_index=visible");
+        }
+        text += fmt::format(
+            "\n[material.\"{}\"]\n{} = {{ alternative = \"{}\" }}\n", alternative.substr(0, dot),
+            alternative.substr(dot + 1, equal - dot - 1), alternative.substr(equal + 1));
+    }
+    return text;
+}
+
 std::string reflecting_text(const DraftRequest& request, int pairs, const std::string& comment) {
-    std::string text =
-        design_head(request, fmt::format("Draft: {} pairs of {} and {} on {}", pairs, request.low,
-                                         request.high, request.substrate));
+    std::string text = design_head(request, fmt::format("Draft: {} {} of {} and {} on {}", pairs,
+                                                        pairs == 1 ? "pair" : "pairs", request.low,
+                                                        request.high, request.substrate));
     text += comment;
     if (request.cap != Cap::none) {
         text += "[[coating.block]]               # the cap\nlayers = [\n" +
@@ -74,7 +94,7 @@ std::string reflecting_text(const DraftRequest& request, int pairs, const std::s
                 layer_line(request.high, "1.0") + layer_line(request.low, "1.0") + "]\n\n";
     }
     return text + "[[coating.block]]               # the last high layer, on the substrate\n" +
-           "layers = [\n" + layer_line(request.high, "1.0") + "]\n";
+           "layers = [\n" + layer_line(request.high, "1.0") + "]\n" + alternatives_text(request);
 }
 
 /// The mirror that a text describes, with its response at normal incidence.
@@ -82,18 +102,34 @@ struct Trial {
     stack::Mirror mirror;
     optics::Response response;
 };
-Trial trial(const materials::Library& library, const std::string& text) {
+Trial trial(const materials::Library& library, const std::string& text) try {
     materials::Library own = library;
-    const stack::Design design =
-        stack::read_design(core::parse_document(text, "the drafted design"), own);
+    const stack::Design design = stack::read_design(core::parse_document(text, "draft"), own);
     stack::Ledger unused;
     Trial result{stack::at_operating_point(design, own, unused), {}};
     result.response = optics::response(optical_stack(result.mirror),
                                        {design.light.wavelength, 0.0, optics::Polarisation::s});
     return result;
+} catch (const core::InputError& error) {
+    // Nobody has the file that the places point to.
+    std::vector<core::Problem> problems = error.problems();
+    for (core::Problem& problem : problems) {
+        problem.place = core::Place{};
+        problem.other_place.reset();
+        if (problem.hint.find("alternative = ") != std::string::npos) {
+            problem.hint += "; here: --alternative MATERIAL.PROPERTY=NAME";
+        }
+    }
+    throw core::InputError(std::move(problems));
 }
 
 void check_request(const materials::Library& library, const DraftRequest& request) {
+    for (const std::string* text :
+         {&request.wavelength, &request.beam_radius, &request.temperature, &request.schema}) {
+        if (text->find_first_of("\"\\\n") == std::string::npos) continue;
+        throw core::InputError(fmt::format("\"{}\" cannot stand in a design file", *text),
+                               "leave out quotes and backslashes");
+    }
     require_material(library, "--high", request.high);
     require_material(library, "--low", request.low);
     require_material(library, "--substrate", request.substrate);
@@ -135,9 +171,9 @@ Draft reflecting_draft(const materials::Library& library, const DraftRequest& re
     std::string comment = "# Transmittance into the substrate at normal incidence:";
     for (const auto& item : {draft.fewer, draft.chosen, draft.more}) {
         if (!item) continue;
-        comment +=
-            fmt::format("\n#   {} pairs: {:.4g} ppm{}", item->pairs, item->transmittance * 1e6,
-                        item->pairs == here.pairs ? "   (this design)" : "");
+        comment += fmt::format("\n#   {} pair{}: {:.4g} ppm{}", item->pairs,
+                               item->pairs == 1 ? "" : "s", item->transmittance * 1e6,
+                               item->pairs == here.pairs ? "   (this design)" : "");
     }
     draft.text = reflecting_text(request, here.pairs, comment + "\n");
     return draft;
@@ -186,6 +222,23 @@ std::optional<PhasePair> antireflecting_phases(double incident, double outer, do
     return best;
 }
 
+/// Why there are no real thicknesses: with A = n1² ns − n0 n2², B = n2² − n0 ns, C = n0 ns − n1²
+/// the product ABC must be positive, which bounds n2/n1 by √(ns/n0) from above or below.
+std::string impossible_pair(const DraftRequest& request, const stack::Mirror& mirror,
+                            std::size_t high_layer) {
+    const double n0 = mirror.incident_index.value;
+    const double ns = mirror.substrate_optical.index.value;
+    const double high = mirror.layers[high_layer].optical.index.value;
+    const double low = mirror.layers[high_layer + 1].optical.index.value;
+    const bool at_most = (high * high - n0 * ns) * (n0 * ns - low * low) > 0.0;
+    return fmt::format(
+        "no thicknesses of {} ({:.4f}) outside and {} ({:.4f}) make the reflection of {} ({:.4f}) "
+        "vanish: the ratio of the two indices is {:.4f}, with these it would have to be at {} "
+        "{:.4f}",
+        request.low, low, request.high, high, request.substrate, ns, high / low,
+        at_most ? "most" : "least", std::sqrt(ns / n0));
+}
+
 }  // namespace
 
 Draft antireflecting_draft(const materials::Library& library, const DraftRequest& request) {
@@ -197,20 +250,21 @@ Draft antireflecting_draft(const materials::Library& library, const DraftRequest
         pair.mirror.layers[first].optical.index.value, pair.mirror.substrate_optical.index.value);
     Draft draft;
     if (!phases) {
-        draft.impossible = fmt::format(
-            "no thicknesses of {} on {} make the reflection of {} vanish; other indices do: "
-            "low and high must stand on both sides of the square root of the substrate's index",
-            request.low, request.high, request.substrate);
+        draft.impossible = impossible_pair(request, pair.mirror, first);
         return draft;
     }
-    const auto quarter_waves = [](double phase) {
-        return fmt::format("{:.6f}", phase / (core::pi / 2.0));
+    // Quarter waves are counted at 295 K, the phases hold at the operating temperature: the trial's
+    // layers are one quarter wave there and `quarter_waves` here.
+    const auto quarter_waves = [&](double phase, std::size_t layer) {
+        return fmt::format("{:.6f}",
+                           phase / (core::pi / 2.0) / pair.mirror.layers[layer].quarter_waves);
     };
-    draft.text =
-        design_head(request,
-                    fmt::format("Draft: two layers against reflection on {}", request.substrate)) +
-        "[[coating.block]]\nlayers = [\n" + layer_line(request.low, quarter_waves(phases->outer)) +
-        layer_line(request.high, quarter_waves(phases->inner)) + "]\n";
+    draft.text = design_head(request, fmt::format("Draft: two layers against reflection on {}",
+                                                  request.substrate)) +
+                 "[[coating.block]]\nlayers = [\n" +
+                 layer_line(request.low, quarter_waves(phases->outer, first + 1)) +
+                 layer_line(request.high, quarter_waves(phases->inner, first)) + "]\n" +
+                 alternatives_text(request);
     draft.reflectance = trial(library, draft.text).response.reflectance;
     return draft;
 }

@@ -1,9 +1,11 @@
 #include <fmt/format.h>
 
+#include <algorithm>
 #include <charconv>
 #include <cmath>
 
 #include "assess/sweep_axis.hpp"
+#include "stillcoat/core/constants.hpp"
 
 /// The quantities that a sweep can vary, and how a value is put into a design.
 
@@ -23,7 +25,7 @@ struct Plain {
 const Plain plain_quantities[] = {
     {"wavelength", "wavelength in vacuum", &core::kind::length, 1e-9, 1.0,
      [](stack::Design& d, double v) { d.light.wavelength = v; }},
-    {"angle", "angle of incidence", &core::kind::angle, 0.0, 1.5707,
+    {"angle", "angle of incidence", &core::kind::angle, 0.0, core::pi / 2.0 * 0.99999,
      [](stack::Design& d, double v) { d.light.angle = v; }},
     {"temperature", "temperature", &core::kind::temperature, 1e-3, 1e5,
      [](stack::Design& d, double v) { d.temperature = v; }},
@@ -75,12 +77,36 @@ Target layer_target(const std::string& number, const stack::Design& design) {
     return target;
 }
 
+/// A material that the mirror does not hold would vary without any effect.
+void require_in_mirror(const std::string& material, const stack::Design& design) {
+    std::vector<std::string> held{design.mirror.substrate};
+    if (design.light.medium != "vacuum" && design.light.medium != "air") {
+        held.push_back(design.light.medium);
+    }
+    std::vector<stack::LayerInput> layers = design.coating.layers;
+    if (design.rear_face) {
+        layers.insert(layers.end(), design.rear_face->layers.begin(),
+                      design.rear_face->layers.end());
+    }
+    for (const stack::LayerInput& layer : layers) {
+        if (std::find(held.begin(), held.end(), layer.material) == held.end()) {
+            held.push_back(layer.material);
+        }
+    }
+    if (std::find(held.begin(), held.end(), material) != held.end()) return;
+    throw core::InputError(fmt::format("--over: the mirror holds no {}", material),
+                           fmt::format("it holds {}", fmt::join(held, ", ")));
+}
+
 Target target_of(const std::string& name, const stack::Design& design,
                  const materials::Library& library) {
     for (const Plain& quantity : plain_quantities) {
         if (name != quantity.name) continue;
         Target target{quantity.title, quantity.kind,
                       core::between(quantity.lower, quantity.upper, quantity.kind->si_unit)};
+        if (quantity.kind == &core::kind::angle) {
+            target.limits.words = "from 0 deg to less than 90 deg";
+        }
         target.plain = &quantity;
         return target;
     }
@@ -90,6 +116,7 @@ Target target_of(const std::string& name, const stack::Design& design,
     const std::string what = name.substr(dot + 1);
     if (owner == "layer") return layer_target(what, design);
     if (library.materials.count(owner) == 0) unknown_axis(name, library);
+    require_in_mirror(owner, design);
     if (what == "thickness") {
         Target target{fmt::format("factor on the thickness of {}", owner), &core::kind::number,
                       core::between(1e-3, 1e3, "")};
@@ -121,21 +148,30 @@ Target target_of(const std::string& name, const stack::Design& design,
 double quantity_of(const std::string& text, const Target& target, const std::string& axis) {
     const core::QuantityReading reading = core::read_quantity(text, *target.kind);
     if (!reading.ok) {
+        const bool factor = !target.material.empty() && !target.property;
         throw core::InputError(fmt::format("--over {}: {}", axis, reading.failure.message),
-                               reading.failure.hint);
+                               factor ? "it is a factor on the thickness, such as 0.98; for a "
+                                        "thickness in nm vary layer.N"
+                                      : reading.failure.hint);
     }
     if (target.limits.admit(reading.value)) return reading.value;
     throw core::InputError(fmt::format("--over {}: \"{}\" is out of range", axis, text),
                            "it must be " + target.limits.words);
 }
 
+std::string trimmed(std::string text) {
+    text.erase(0, text.find_first_not_of(' '));
+    text.erase(text.find_last_not_of(' ') + 1);
+    return text;
+}
+
 std::vector<std::string> split(const std::string& text, char mark) {
     std::vector<std::string> parts;
     std::size_t begin = 0;
     for (std::size_t end; (end = text.find(mark, begin)) != std::string::npos; begin = end + 1) {
-        parts.push_back(text.substr(begin, end - begin));
+        parts.push_back(trimmed(text.substr(begin, end - begin)));
     }
-    parts.push_back(text.substr(begin));
+    parts.push_back(trimmed(text.substr(begin)));
     return parts;
 }
 
@@ -165,7 +201,7 @@ SweepAxis read_axis(const std::string& text, const stack::Design& design,
             "for example wavelength=900nm:1300nm:401, or frequency=1Hz:10kHz:81:log");
     }
     SweepAxis axis;
-    axis.name = text.substr(0, equal);
+    axis.name = trimmed(text.substr(0, equal));
     const Target target = target_of(axis.name, design, library);
     if (axis.name == "angle" && !design.light.polarisation_stated) {
         throw core::InputError("--over angle: the design states no polarisation",

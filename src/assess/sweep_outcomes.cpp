@@ -127,11 +127,11 @@ std::vector<Source> sources(const stack::Design& design) {
     std::vector<Source> list;
     for (const FaceResult& result : face_results) {
         if (two_faces(design) && result.has_mean) {
-            list.push_back({{result.key, result.title, result.unit, false},
-                            [get = result.get](const Appraisal& a) {
-                                return std::optional(0.5 *
-                                                     (*get(face_of(a, 0)) + *get(face_of(a, 1))));
-                            }});
+            list.push_back(
+                {{result.key, std::string(result.title) + ", mean of s and p", result.unit, false},
+                 [get = result.get](const Appraisal& a) {
+                     return std::optional(0.5 * (*get(face_of(a, 0)) + *get(face_of(a, 1))));
+                 }});
         }
         for_faces(design, [&](const char* ending, const char* words, std::size_t face) {
             list.push_back(
@@ -164,7 +164,17 @@ std::vector<std::string> suitable_keys(const stack::Design& design,
     std::vector<std::string> keys;
     const bool frequency = is_axis("frequency");
     if (!frequency) keys = {"reflectance", "transmittance", "absorptance"};
-    if (is_axis("wavelength") || is_axis("angle")) return keys;
+    if (!frequency && (is_axis("wavelength") || is_axis("angle"))) return keys;
+    // What moves the mirror but not the light: beam, elasticity, heat, losses.
+    const bool dark = std::all_of(axes.begin(), axes.end(), [](const SweepAxis& axis) {
+        const auto property =
+            materials::property_by_key(axis.name.substr(axis.name.rfind('.') + 1));
+        return axis.name == "beam_radius" ||
+               (property && *property != materials::PropertyId::refractive_index &&
+                *property != materials::PropertyId::extinction_coefficient &&
+                *property != materials::PropertyId::absorption_coefficient);
+    });
+    if (dark) keys.clear();
     for_faces(design, [&](const char* ending, const char*, std::size_t) {
         for (const NoiseResult& result : noise_results) {
             const bool first = result.term == nullptr;
@@ -198,6 +208,9 @@ std::vector<Outcome> chosen_outcomes(const stack::Design& design,
                                    near ? fmt::format("did you mean {}?", *near)
                                         : fmt::format("known: {}", fmt::join(names, ", ")));
         }
+        const bool twice = std::any_of(chosen.begin(), chosen.end(),
+                                       [&](const Outcome& other) { return other.key == key; });
+        if (twice) throw core::InputError(fmt::format("--show: {} stands twice", key), "");
         chosen.push_back(known[static_cast<std::size_t>(found - names.begin())]);
     }
     return chosen;

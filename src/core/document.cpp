@@ -224,7 +224,25 @@ std::string read_text_file(const std::string& path) {
     return text;
 }
 
+void check_line_lengths(const std::string& text, const std::string& name) {
+    int line = 1;
+    std::size_t begin = 0;
+    while (begin < text.size()) {
+        const std::size_t end = std::min(text.find('\n', begin), text.size());
+        if (end - begin > longest_line) {
+            throw InputError({Problem{Place{name, line, 1, 1, ""},
+                                      fmt::format("this line has {} characters; more than {} are "
+                                                  "refused",
+                                                  end - begin, longest_line),
+                                      "write a long list over several lines", std::nullopt}});
+        }
+        begin = end + 1;
+        ++line;
+    }
+}
+
 Document parse_document(const std::string& text, const std::string& name) {
+    check_line_lengths(text, name);
     check_nesting(text, name);
     std::istringstream stream(text);
     try {

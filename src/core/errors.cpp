@@ -161,7 +161,9 @@ std::optional<std::string> nearest_spelling(const std::string& word,
     std::optional<std::string> best;
     std::size_t best_distance = std::max<std::size_t>(2, word.size() / 3) + 1;
     for (const std::string& candidate : candidates) {
-        const std::size_t d = distance(candidate);
+        // "tantla" means "tantala-ibs": the stem alone counts too.
+        const std::size_t d =
+            std::min(distance(candidate), distance(candidate.substr(0, candidate.find('-'))));
         if (d < best_distance) {
             best_distance = d;
             best = candidate;

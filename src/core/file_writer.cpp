@@ -40,7 +40,7 @@ void write_stream(int descriptor, const std::string& content, const std::string&
 /// The permissions of a new file: those of the one that it replaces, or the usual ones.
 mode_t permissions(const std::string& path) {
     struct stat status {};
-    if (::stat(path.c_str(), &status) == 0) return status.st_mode & 07777;
+    if (::stat(path.c_str(), &status) == 0) return status.st_mode & 0777;
     const mode_t mask = ::umask(0);
     ::umask(mask);
     return 0666 & ~mask;
@@ -73,29 +73,44 @@ void write_beside_and_rename(const std::string& path, const std::string& content
 
 }  // namespace
 
+void check_writable(const std::string& path, Existing existing) {
+    if (path == "-") return;
+    namespace fs = std::filesystem;
+    std::error_code error;
+    const fs::file_status status = fs::status(path, error);
+    const bool exists = fs::exists(status);
+    if (!exists && status.type() != fs::file_type::not_found) {
+        throw InputError(path + ": " + error.message(), "give another name");
+    }
+    if (!exists && fs::is_symlink(fs::symlink_status(path, error))) {
+        throw InputError(path + ": is a link to a file that is not there", "give a file name");
+    }
+    if (!exists) {
+        const std::string folder = fs::path(path).parent_path().string();
+        if (::access(folder.empty() ? "." : folder.c_str(), W_OK) != 0) {
+            fail(path, "cannot create", errno);
+        }
+        return;
+    }
+    if (fs::is_directory(status)) throw InputError(path + ": is a directory", "give a file name");
+    if (existing == Existing::keep && fs::is_regular_file(status)) {
+        throw InputError(path + ": exists already and was kept", "give --replace to overwrite it");
+    }
+    if (::access(path.c_str(), W_OK) != 0) fail(path, "cannot replace", errno);
+}
+
 void write_file(const std::string& path, const std::string& content, Existing existing) {
     if (path == "-") {
         write_stream(STDOUT_FILENO, content, "standard output");
         return;
     }
     namespace fs = std::filesystem;
+    check_writable(path, existing);
     std::error_code ignored;
-    const bool exists = fs::exists(path, ignored);
-    const bool link = fs::is_symlink(fs::symlink_status(path, ignored));
-    if (link && !exists) {
-        throw InputError(path + ": is a link to a file that is not there", "give a file name");
-    }
-    if (!exists) {
+    if (!fs::exists(path, ignored)) {
         write_beside_and_rename(path, content, existing);
         return;
     }
-    if (fs::is_directory(path, ignored)) {
-        throw InputError(path + ": is a directory", "give a file name");
-    }
-    if (existing == Existing::keep) {
-        throw InputError(path + ": exists already and was kept", "give --replace to overwrite it");
-    }
-    if (::access(path.c_str(), W_OK) != 0) fail(path, "cannot replace", errno);
     if (fs::is_regular_file(path, ignored)) {
         // A link stays a link: what it points to is replaced.
         write_beside_and_rename(fs::canonical(path).string(), content, existing);

@@ -3,6 +3,7 @@
 #include <fmt/format.h>
 #include <udunits2.h>
 
+#include <algorithm>
 #include <array>
 #include <charconv>
 #include <cmath>
@@ -65,6 +66,24 @@ std::string example_of(const QuantityKind& kind) {
 
 constexpr std::size_t longest_unit = 60;
 
+/// Whether a digit in a unit is an exponent, as in "m2", "K-1", "m^2", or the 1 of "1/m": anything
+/// else, as in "nm 2", would be a factor.
+bool digits_are_exponents(const std::string& unit) {
+    for (std::size_t i = 0; i < unit.size(); ++i) {
+        if (std::isdigit(static_cast<unsigned char>(unit[i])) == 0) continue;
+        if (i == 0 && unit.rfind("1/", 0) == 0) continue;
+        if (i == 0) return false;
+        const char before = unit[i - 1];
+        const bool sign =
+            (before == '-' || before == '+') && i >= 2 &&
+            (std::isalpha(static_cast<unsigned char>(unit[i - 2])) != 0 || unit[i - 2] == '^');
+        if (!sign && before != '^' && std::isalnum(static_cast<unsigned char>(before)) == 0) {
+            return false;
+        }
+    }
+    return true;
+}
+
 /// A unit text begins with a letter, a sign such as %, or "1/"; numbers in front were taken
 /// already.
 bool looks_like_unit(const std::string& unit) {
@@ -76,17 +95,32 @@ bool looks_like_unit(const std::string& unit) {
     }
     const auto first = static_cast<unsigned char>(unit.front());
     if (unit.rfind("1/", 0) == 0) return unit.find('@') == std::string::npos;
+    if (!digits_are_exponents(unit)) return false;
     return (std::isalpha(first) != 0 || first == '%' || first >= 0x80) &&
            unit.find_first_of("@,;\n") == std::string::npos;
 }
 
-/// Whether a unit is made of radians. UDUNITS-2 takes the radian for a pure number, so that "rpm"
+/// The power of the radian in a unit. UDUNITS-2 takes the radian for a pure number, so that "rpm"
 /// or "cycle/s" would be read as hertz times 2π and "5 %" as an angle.
-bool holds_radians(const ut_unit* unit) {
+std::string radians_in(const ut_unit* unit) {
     std::array<char, 256> words{};
     const int length = ut_format(unit, words.data(), words.size(), UT_ASCII | UT_DEFINITION);
-    if (length < 0 || static_cast<std::size_t>(length) >= words.size()) return true;
-    return std::string_view(words.data()).find("rad") != std::string_view::npos;
+    if (length < 0 || static_cast<std::size_t>(length) >= words.size()) return "unknown";
+    const std::string_view text(words.data());
+    const std::size_t at = text.find("rad");
+    if (at == std::string_view::npos) return "";
+    const std::size_t end = std::min(text.find_first_not_of("-0123456789", at + 3), text.size());
+    return std::string(text.substr(at, end - at));
+}
+
+/// Whether a conversion is a factor, or a factor and an offset as from degrees Celsius: UDUNITS-2
+/// also turns seconds into hertz.
+bool is_linear(const cv_converter* converter) {
+    const double at_0 = cv_convert_double(converter, 0.0);
+    const double at_1 = cv_convert_double(converter, 1.0);
+    const double at_2 = cv_convert_double(converter, 2.0);
+    return std::isfinite(at_0) && std::abs((at_2 - at_1) - (at_1 - at_0)) <=
+                                      1e-9 * std::max(std::abs(at_2), std::abs(at_0));
 }
 
 QuantityReading converted(double number, const std::string& unit_text, const QuantityKind& kind) {
@@ -106,7 +140,8 @@ QuantityReading converted(double number, const std::string& unit_text, const Qua
                       example_of(kind) + "; `stillcoat units` lists the usual ones");
     const Unit to(ut_parse(unit_system(), kind.si_unit.c_str(), UT_UTF8));
     const Converter converter(ut_get_converter(from.get(), to.get()));
-    if (!converter || holds_radians(from.get()) != holds_radians(to.get())) {
+    if (!converter || !is_linear(converter.get()) ||
+        radians_in(from.get()) != radians_in(to.get())) {
         return failed(fmt::format("\"{}\" is not a unit of {}", unit_text, kind.name),
                       example_of(kind));
     }

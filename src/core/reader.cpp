@@ -45,8 +45,9 @@ Limits positive(const std::string& unit) {
 }
 
 Limits between(double lower, double upper, const std::string& unit) {
+    const std::string behind = unit.empty() ? "" : " " + unit;
     return {lower, upper, true, true,
-            fmt::format("from {:g} {} to {:g} {}", lower, unit, upper, unit)};
+            fmt::format("from {:g}{} to {:g}{}", lower, behind, upper, behind)};
 }
 
 TableReader::TableReader(const Node& table, std::string name, Problems& problems)

@@ -5,6 +5,7 @@
 #include <algorithm>
 #include <charconv>
 #include <cmath>
+#include <filesystem>
 
 #include "stillcoat/core/document.hpp"
 
@@ -26,7 +27,18 @@ class CellReader {
     std::vector<Cell> row() {
         std::vector<Cell> cells;
         while (!at_end()) {
+            if (cells.empty() && text_[at_] == '#') {
+                at_ = std::min(text_.find('\n', at_), text_.size() - 1) + 1;
+                ++line_;
+                begin_line();
+                continue;
+            }
             cells.push_back(cell());
+            if (cells.size() > most_columns) {
+                throw InputError(
+                    {Problem{cells.back().place, fmt::format("more than {} columns", most_columns),
+                             "larger tables are refused", std::nullopt}});
+            }
             const bool more = !at_end() && text_[at_] == ',';
             if (!at_end()) ++at_;
             if (more) {
@@ -82,7 +94,14 @@ class CellReader {
             } else if (at_ + 1 < text_.size() && text_[at_ + 1] == '"') {
                 result.text += text_[at_++];
             } else {
-                at_ = std::min(text_.find_first_of(",\n", at_), text_.size());
+                const std::size_t end = std::min(text_.find_first_of(",\n", at_), text_.size());
+                const std::size_t rest = text_.find_first_not_of(" \r\t", at_ + 1);
+                if (rest < end) {
+                    throw InputError(
+                        {Problem{result.place, "text behind the closing quote",
+                                 "double a quote that belongs to the cell", std::nullopt}});
+                }
+                at_ = end;
                 return;
             }
         }
@@ -108,11 +127,19 @@ std::optional<std::size_t> TableFile::column(const std::string& wanted) const {
 }
 
 TableFile parse_table(const std::string& text, const std::string& name, Problems& problems) {
+    check_line_lengths(text, name);
     CellReader reader(text, name);
     TableFile table{name, reader.row(), {}};
     if (table.header.empty()) {
         throw InputError(name + ": empty",
                          "a header line with the names of the columns is expected");
+    }
+    if (table.header.size() == 1 &&
+        table.header[0].text.find_first_of(";\t") != std::string::npos) {
+        throw InputError({Problem{table.header[0].place, "the columns are not separated by commas",
+                                  "save the table with commas between the cells and points in the "
+                                  "numbers",
+                                  std::nullopt}});
     }
     while (!reader.at_end()) {
         std::vector<Cell> row = reader.row();
@@ -130,6 +157,12 @@ TableFile parse_table(const std::string& text, const std::string& name, Problems
 }
 
 TableFile read_table(const std::string& path, Problems& problems) {
+    // A pipe would wait for ever.
+    std::error_code ignored;
+    if (std::filesystem::exists(path, ignored) &&
+        !std::filesystem::is_regular_file(path, ignored)) {
+        throw InputError(path + ": is no regular file", "give a CSV file");
+    }
     return parse_table(read_text_file(path), path, problems);
 }
 

@@ -18,4 +18,8 @@ namespace stillcoat::materials {
 std::optional<WavelengthTable> read_curve_csv(core::TableReader& reader, const std::string& key,
                                               PropertyId property);
 
+/// A problem when a material takes its index from a file whose extinction nobody reads: the light's
+/// loss would silently be another one.
+void check_unread_extinction(core::TableReader& material);
+
 }  // namespace stillcoat::materials

@@ -8,6 +8,7 @@
 #include <optional>
 
 #include "materials/curve_csv.hpp"
+#include "materials/dispersion.hpp"
 
 namespace stillcoat::materials {
 namespace {
@@ -237,6 +238,30 @@ Cauchy read_cauchy(TableReader& reader) {
     return {1.0, 0.0, 0.0};
 }
 
+/// A smooth curve through values that jump swings far beyond them: refused.
+void check_swing(TableReader& reader, const std::string& key, const WavelengthTable& table) {
+    constexpr int samples = 16;
+    constexpr double allowed = 0.25;  // of the span of the values
+    const auto [low, high] = std::minmax_element(table.value.begin(), table.value.end());
+    const double margin = allowed * (*high - *low) + 1e-9 * std::abs(*high);
+    Entry entry;
+    entry.curve = table;
+    for (std::size_t i = 0; i + 1 < table.wavelength.size(); ++i) {
+        const double step = (table.wavelength[i + 1] - table.wavelength[i]) / samples;
+        for (int j = 1; j < samples; ++j) {
+            const double wavelength = table.wavelength[i] + j * step;
+            const double value = optical_value(entry, wavelength);
+            if (value >= *low - margin && value <= *high + margin) continue;
+            reader.problem_at(
+                key,
+                fmt::format("the curve through {} in {} swings to {:.4g} at {:.6g} nm", key,
+                            reader.name(), value, wavelength * 1e9),
+                "a value next to it may be wrong, or points are missing there");
+            return;
+        }
+    }
+}
+
 /// The datum in its form; `scale` becomes the factor from its unit to SI.
 Curve read_form(TableReader& reader, const EntryContext& context, const std::string& form,
                 double& scale) {
@@ -251,11 +276,15 @@ Curve read_form(TableReader& reader, const EntryContext& context, const std::str
     if (form == "wavelength_nm" && optical) {
         auto [nanometres, value] = read_table(reader, form, context.property, 1.0);
         for (double& x : nanometres) x *= 1e-9;
-        return WavelengthTable{std::move(nanometres), std::move(value)};
+        WavelengthTable table{std::move(nanometres), std::move(value)};
+        check_swing(reader, form, table);
+        return table;
     }
     if (form == "wavelength_csv" && optical) {
         auto curve = read_curve_csv(reader, form, context.property);
-        return curve ? Curve{std::move(*curve)} : Curve{Scalar{1.0}};
+        if (!curve) return Scalar{1.0};
+        check_swing(reader, form, *curve);
+        return std::move(*curve);
     }
     if (form == "value_at_1_Hz" && is_loss(context.property))
         return read_power_law(reader, context.property);

@@ -5,6 +5,7 @@
 #include <algorithm>
 #include <set>
 
+#include "materials/curve_csv.hpp"
 #include "materials/curve_reader.hpp"
 #include "materials/range_reader.hpp"
 #include "materials/width_reader.hpp"
@@ -38,6 +39,8 @@ void check_sources(TableReader& reader, const std::vector<std::string>& sources,
     }
 }
 
+}  // namespace
+
 std::vector<std::string> read_sources(TableReader& reader, const EntryContext& context) {
     if (context.from_design) {
         const std::string source = reader.required_text("source");
@@ -55,6 +58,8 @@ std::vector<std::string> read_sources(TableReader& reader, const EntryContext& c
     }
     return sources;
 }
+
+namespace {
 
 Beyond read_beyond(const Node& node, const std::string& name, const EntryContext& context,
                    double unit_scale, core::Problems& problems) {
@@ -125,6 +130,27 @@ ColdTable read_cold(const Node& node, const std::string& name, const EntryContex
     return cold;
 }
 
+void check_loss_forms(TableReader& reader) {
+    for (const char* part : {"loss_angle_bulk", "loss_angle_shear"}) {
+        if (reader.has("loss_angle") && reader.has(part)) {
+            reader.contradiction(
+                part, "loss_angle",
+                "give loss_angle for both, or loss_angle_bulk with loss_angle_shear");
+        }
+    }
+    if (reader.has("loss_angle")) return;
+    if (reader.has("loss_angle_bulk") != reader.has("loss_angle_shear")) {
+        const bool bulk = reader.has("loss_angle_bulk");
+        // A factor on one of them leaves the library's other one.
+        const Node* given = reader.node().find(bulk ? "loss_angle_bulk" : "loss_angle_shear");
+        if (given->find("times") != nullptr) return;
+        reader.problem_at(bulk ? "loss_angle_bulk" : "loss_angle_shear",
+                          fmt::format("{} in {} stands alone",
+                                      bulk ? "loss_angle_bulk" : "loss_angle_shear", reader.name()),
+                          "bulk and shear loss belong together: give both");
+    }
+}
+
 }  // namespace
 
 Entry read_entry(TableReader& reader, const EntryContext& context) {
@@ -170,6 +196,15 @@ Entry read_entry(TableReader& reader, const EntryContext& context) {
         }
     }
     return entry;
+}
+
+void check_exclusive_forms(TableReader& reader) {
+    check_unread_extinction(reader);
+    check_loss_forms(reader);
+    if (reader.has("extinction_coefficient") && reader.has("absorption_coefficient")) {
+        reader.contradiction("extinction_coefficient", "absorption_coefficient",
+                             "each follows from the other: keep one of the two");
+    }
 }
 
 Property read_property(const Node& table, const std::string& name, const EntryContext& context,

@@ -4,7 +4,6 @@
 
 #include "materials/evaluator.hpp"
 #include "materials/interpolation.hpp"
-#include "stillcoat/core/constants.hpp"
 
 namespace stillcoat::materials {
 namespace {
@@ -30,18 +29,8 @@ Value evaluate(const Library& library, const std::string& material, PropertyId p
     }
     Walk walk(library);
     const Evaluator evaluator(walk, conditions);
-    if (property == PropertyId::extinction_coefficient) {
-        const auto& properties = library.at(material).properties;
-        const bool per_length = properties.count(property) == 0 &&
-                                properties.count(PropertyId::absorption_coefficient) != 0;
-        if (per_length) {
-            Value value = evaluator.property(material, PropertyId::absorption_coefficient);
-            const double lengths = conditions.wavelength / (4.0 * core::pi);
-            if (value.number) *value.number *= lengths;
-            value.width = scaled(value.width, lengths);
-            return value;
-        }
-    }
+    library.at(material);
+    if (property == PropertyId::extinction_coefficient) return evaluator.extinction(material);
     return evaluator.property(material, property);
 }
 

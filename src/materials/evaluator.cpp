@@ -7,6 +7,8 @@
 
 #include "materials/dispersion.hpp"
 #include "materials/interpolation.hpp"
+#include "materials/mixture_value.hpp"
+#include "stillcoat/core/constants.hpp"
 #include "stillcoat/materials/debye.hpp"
 
 namespace stillcoat::materials {
@@ -58,6 +60,11 @@ bool is_admissible(PropertyId id, double number) {
            (number < limits.upper || (limits.upper_itself && number == limits.upper));
 }
 
+bool is_per_length(const Library& library, const std::string& material) {
+    return library.property(material, PropertyId::extinction_coefficient) == nullptr &&
+           library.property(material, PropertyId::absorption_coefficient) != nullptr;
+}
+
 Width scaled(const Width& width, double factor) {
     Width other = width;
     if (width.form == Width::Form::absolute) other.value *= std::abs(factor);
@@ -87,20 +94,18 @@ bool is_continued(const Entry& entry, double temperature) {
 
 const Property* Walk::enter(const std::string& material, PropertyId id, std::string& reason) {
     const std::string& title = info(id).title;
-    const auto known = library_.materials.find(material);
-    if (known == library_.materials.end()) {
+    const Material* substance = library_.find(material);
+    if (substance == nullptr) {
         reason = fmt::format("{} refers to the unknown material \"{}\"", title, material);
         return nullptr;
     }
-    const Material& substance = known->second;
-    const auto found = substance.properties.find(id);
-    if (found == substance.properties.end()) {
-        const auto why = substance.unknown.find(id);
+    const Property* property = library_.property(material, id);
+    if (property == nullptr) {
+        const auto why = substance->unknown.find(id);
         reason = fmt::format("{} of {} unknown{}", title, material,
-                             why == substance.unknown.end() ? "" : ": " + why->second);
+                             why == substance->unknown.end() ? "" : ": " + why->second);
         return nullptr;
     }
-    const Property* property = &found->second;
     const auto end = path_.begin() + depth_;
     if (std::find(path_.begin(), end, property) != end) {
         reason = fmt::format("{} of {} refers to other materials in a circle", title, material);
@@ -122,6 +127,16 @@ Value Evaluator::property(const std::string& material, PropertyId id) const {
     Value value = entry({found->entry, material, id});
     walk_.leave();
     return checked(std::move(value), material, id, conditions_);
+}
+
+Value Evaluator::extinction(const std::string& material) const {
+    if (!is_per_length(walk_.library(), material))
+        return property(material, PropertyId::extinction_coefficient);
+    Value value = property(material, PropertyId::absorption_coefficient);
+    const double lengths = conditions_.wavelength / (4.0 * core::pi);
+    if (value.number) *value.number *= lengths;
+    value.width = scaled(value.width, lengths);
+    return value;
 }
 
 Value Evaluator::entry(const Subject& subject) const {
@@ -160,6 +175,9 @@ Value Evaluator::plain(const Subject& subject, double temperature) const {
     const Entry& datum = subject.datum;
     if (const auto* other = std::get_if<SameAs>(&datum.curve))
         return same(subject, *other, temperature);
+    if (const auto* mixture = std::get_if<Mixed>(&datum.curve))
+        return mixed_value(at(temperature), *mixture,
+                           {subject.material, subject.id, &datum, Part::datum});
     Value value;
     value.entry = &datum;
     value.bases.push_back({subject.material, subject.id, &datum, Part::datum});
@@ -191,7 +209,7 @@ Value Evaluator::same(const Subject& subject, const SameAs& other, double temper
     std::vector<Basis> bases{{subject.material, subject.id, &datum, Part::datum}};
     add_bases(bases, value.bases);
     value.bases = std::move(bases);
-    if (value.analogy.empty()) {
+    if (value.analogy.empty() && !other.own) {
         value.analogy = fmt::format("{} of {} at {:g} K: as {}", info(subject.id).title,
                                     subject.material, temperature, other.material);
     }
@@ -275,6 +293,7 @@ Value Evaluator::beyond(const Subject& subject) const {
     if (!lit) known.wavelength = nearest(*datum.wavelength, conditions_.wavelength);
     Value value = Evaluator(walk_, known).plain(subject, reference);
     if (!value.number) return value;
+    if (!lit) value.derivatives.reset();
     std::string how = "held constant";
     if (!warm && rule.rule != Beyond::Rule::constant) {
         const double factor = rule_factor(subject, reference, value, how);

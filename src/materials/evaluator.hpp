@@ -19,6 +19,7 @@ class Walk {
     /// The property of a material, entered until leave(); null with the reason when there is none.
     const Property* enter(const std::string& material, PropertyId id, std::string& reason);
     void leave() { --depth_; }
+    const Library& library() const { return library_; }
 
   private:
     static constexpr int most_lookups = 10'000;
@@ -33,6 +34,11 @@ class Evaluator {
     Evaluator(Walk& walk, const Conditions& conditions) : walk_(walk), conditions_(conditions) {}
 
     Value property(const std::string& material, PropertyId id) const;
+    /// The extinction coefficient, from the absorption coefficient when only that is given.
+    Value extinction(const std::string& material) const;
+
+    Walk& walk() const { return walk_; }
+    const Conditions& conditions() const { return conditions_; }
 
   private:
     /// An entry and whose it is, for messages and bases.
@@ -64,6 +70,9 @@ Value missing_value(std::string reason);
 
 /// Whether a number is finite and within the limits of its property.
 bool is_admissible(PropertyId id, double number);
+
+/// Whether the extinction of a material follows from its absorption coefficient.
+bool is_per_length(const Library& library, const std::string& material);
 
 Width scaled(const Width& width, double factor);
 

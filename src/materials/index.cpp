@@ -8,6 +8,7 @@
 #include "materials/dispersion.hpp"
 #include "materials/evaluator.hpp"
 #include "materials/interpolation.hpp"
+#include "materials/mixture_value.hpp"
 #include "stillcoat/core/constants.hpp"
 #include "stillcoat/materials/evaluation.hpp"
 
@@ -88,6 +89,9 @@ class IndexLookup {
         if (const auto* other = std::get_if<SameAs>(&datum.curve)) {
             value = same(datum, *other, temperature, std::move(value.bases));
             if (own.form != Width::Form::not_stated) value.width = own;
+        } else if (const auto* mixture = std::get_if<Mixed>(&datum.curve)) {
+            const Evaluator evaluator(walk_, {temperature, wavelength_, 1.0});
+            value = mixed_index(evaluator, *mixture, value.bases.front());
         } else {
             value.index = dispersion(datum, wavelength_, temperature);
             value.width = own;
@@ -145,21 +149,33 @@ class IndexLookup {
 
 }  // namespace
 
+IndexValue index_on_walk(const Evaluator& evaluator, const std::string& material) {
+    Walk& walk = evaluator.walk();
+    const Conditions& conditions = evaluator.conditions();
+    return IndexLookup(walk, walk.library(), conditions.wavelength, conditions.temperature)
+        .of(material);
+}
+
 IndexValue index_at(const Library& library, const std::string& material, double wavelength,
                     double temperature) {
     Walk walk(library);
-    return IndexLookup(walk, library, wavelength, temperature).of(material);
+    return index_on_walk(Evaluator(walk, {temperature, wavelength, 1.0}), material);
 }
 
 Jet<double> with_dispersion(const Value& extinction, bool per_length, double wavelength) {
     const double k = *extinction.number;
     const double omega = 2.0 * core::pi * core::speed_of_light / wavelength;
     if (per_length) return {k, -k / omega, 2.0 * k / (omega * omega)};
+    // A factor of same_as or of a rule scales the curve as a whole; a curve through 0 has no scale.
+    if (extinction.derivatives) {
+        const Jet<double>& curve = *extinction.derivatives;
+        if (curve.value == 0.0) return {k};
+        return {k, k / curve.value * curve.first, k / curve.value * curve.second};
+    }
     const Entry* entry = extinction.entry;
     const bool table = entry != nullptr && std::holds_alternative<WavelengthTable>(entry->curve) &&
                        (!entry->wavelength || entry->wavelength->contains(wavelength));
     if (!table) return {k};
-    // A factor of same_as or of a rule scales the curve as a whole; a curve through 0 has no scale.
     const Jet<double> curve = dispersion(*entry, wavelength, 295.0);
     if (curve.value == 0.0) return {k};
     const double factor = k / curve.value;

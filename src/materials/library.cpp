@@ -8,6 +8,8 @@
 
 #include "materials/entry_reader.hpp"
 #include "materials/links.hpp"
+#include "materials/mixture_reader.hpp"
+#include "materials/mixture_value.hpp"
 
 namespace stillcoat::materials {
 namespace {
@@ -45,105 +47,6 @@ std::vector<std::string> property_keys() {
     return keys;
 }
 
-void check_loss_forms(TableReader& reader) {
-    for (const char* part : {"loss_angle_bulk", "loss_angle_shear"}) {
-        if (reader.has("loss_angle") && reader.has(part)) {
-            reader.contradiction(
-                part, "loss_angle",
-                "give loss_angle for both, or loss_angle_bulk with loss_angle_shear");
-        }
-    }
-    if (reader.has("loss_angle")) return;
-    if (reader.has("loss_angle_bulk") != reader.has("loss_angle_shear")) {
-        const bool bulk = reader.has("loss_angle_bulk");
-        reader.problem_at(bulk ? "loss_angle_bulk" : "loss_angle_shear",
-                          fmt::format("{} in {} stands alone",
-                                      bulk ? "loss_angle_bulk" : "loss_angle_shear", reader.name()),
-                          "bulk and shear loss belong together: give both");
-    }
-}
-
-/// Suggestions cost a comparison with every name: only so many are made.
-constexpr int most_suggestions = 20;
-
-/// Adds nothing for a material that exists.
-template <typename Report>
-void check_targets(const Library& library, const std::vector<Link>& links, int& suggestions,
-                   Report&& report) {
-    for (const auto& [target, property] : links) {
-        if (library.materials.count(target) != 0) continue;
-        std::optional<std::string> near;
-        if (suggestions++ < most_suggestions)
-            near = core::nearest_spelling(target, library.names());
-        report(target, near ? fmt::format("did you mean \"{}\"?", *near) : "");
-    }
-}
-
-/// The properties that cannot stand together in one table.
-void check_exclusive_forms(TableReader& reader) {
-    check_loss_forms(reader);
-    if (reader.has("extinction_coefficient") && reader.has("absorption_coefficient")) {
-        reader.contradiction("extinction_coefficient", "absorption_coefficient",
-                             "each follows from the other: keep one of the two");
-    }
-}
-
-/// Takes the named alternative of a property as its entry.
-void choose_alternative(Material& material, PropertyId id, const Node& table,
-                        const std::string& title, core::Problems& problems) {
-    TableReader choice(table, title, problems);
-    const std::string wanted = choice.text("alternative").value_or("");
-    choice.finish();
-    const auto known = material.properties.find(id);
-    std::vector<std::string> names;
-    if (known != material.properties.end()) {
-        for (const Alternative& alternative : known->second.alternatives) {
-            names.push_back(alternative.name);
-            if (alternative.name != wanted) continue;
-            Entry entry = alternative.entry;
-            known->second.entry = std::move(entry);
-            return;
-        }
-    }
-    if (wanted.empty()) return;
-    choice.problem_at(
-        "alternative", fmt::format("{} has no alternative \"{}\"", title, wanted),
-        names.empty() ? "it has none" : fmt::format("known: {}", fmt::join(names, ", ")));
-}
-
-/// Two forms of one thing exclude each other: the design's replaces the library's.
-void drop_other_forms(Material& material, PropertyId id) {
-    if (id == PropertyId::loss_angle) {
-        material.properties.erase(PropertyId::loss_angle_bulk);
-        material.properties.erase(PropertyId::loss_angle_shear);
-    } else if (is_loss(id)) {
-        material.properties.erase(PropertyId::loss_angle);
-    }
-    if (id == PropertyId::extinction_coefficient) {
-        material.properties.erase(PropertyId::absorption_coefficient);
-    } else if (id == PropertyId::absorption_coefficient) {
-        material.properties.erase(PropertyId::extinction_coefficient);
-    }
-}
-
-/// What a replaced property now refers to must exist and must not lead back to it.
-void check_override_links(const Library& library, const std::string& name, PropertyId id,
-                          const std::string& title, TableReader& reader) {
-    const auto& properties = library.materials.at(name).properties;
-    const auto changed = properties.find(id);
-    if (changed == properties.end()) return;
-    const std::string& key = info(id).key;
-    int suggestions = 0;
-    check_targets(
-        library, links_of(name, id, changed->second.entry), suggestions,
-        [&](const std::string& target, const std::string& hint) {
-            reader.problem_at(
-                key, fmt::format("{} refers to the unknown material \"{}\"", title, target), hint);
-        });
-    const std::string fault = LinkCheck(library).fault(name, id);
-    if (!fault.empty()) reader.problem_at(key, title + " " + fault);
-}
-
 std::vector<fs::path> toml_files(const std::string& folder) {
     std::error_code error;
     if (!fs::is_directory(folder, error)) {
@@ -168,15 +71,34 @@ std::vector<fs::path> toml_files(const std::string& folder) {
 }  // namespace
 
 const Material& Library::at(const std::string& name) const {
-    const auto found = materials.find(name);
-    if (found == materials.end()) throw std::logic_error("no material " + name);
-    return found->second;
+    const Material* found = find(name);
+    if (found == nullptr) throw std::logic_error("no material " + name);
+    return *found;
 }
 
 std::vector<std::string> Library::names() const {
     std::vector<std::string> list;
     for (const auto& [name, material] : materials) list.push_back(name);
     return list;
+}
+
+const Material* Library::find(const std::string& name) const {
+    const auto found = materials.find(name);
+    if (found != materials.end()) return &found->second;
+    const auto scaled = kept.find(name);
+    return scaled == kept.end() ? nullptr : find(scaled->second.name);
+}
+
+const Property* Library::property(const std::string& name, PropertyId id) const {
+    const auto original = kept.find(name);
+    if (original != kept.end()) {
+        const auto found = original->second.properties.find(id);
+        if (found != original->second.properties.end()) return &found->second;
+    }
+    const Material* material = find(name);
+    if (material == nullptr) return nullptr;
+    const auto found = material->properties.find(id);
+    return found == material->properties.end() ? nullptr : &found->second;
 }
 
 std::optional<Material> read_material(const core::Document& document, const Library& library,
@@ -209,7 +131,15 @@ std::optional<Material> read_material(const core::Document& document, const Libr
         material.properties[about.id] =
             read_property(*node, "[" + about.key + "]", {&library, about.id, false}, problems);
     }
+    if (const Node* node = reader.table("mixture"); node != nullptr)
+        read_mixture(*node, material, library, problems);
     reader.finish();
+    // Names stand in CSV cells, in keys and on command lines.
+    if (material.name.find_first_not_of("abcdefghijklmnopqrstuvwxyzABCDEFGHIJKLMNOPQRSTUVWXYZ"
+                                        "0123456789._-") != std::string::npos) {
+        reader.problem_at("name", fmt::format("name \"{}\" holds other characters", material.name),
+                          "letters, digits, point, hyphen and underscore are allowed");
+    }
     const std::string stem = fs::path(document.name).stem().string();
     if (!material.name.empty() && material.name != stem) {
         reader.problem_at(
@@ -221,6 +151,7 @@ std::optional<Material> read_material(const core::Document& document, const Libr
 }
 
 void add_references(Library& library, const std::string& folder, core::Problems& problems) {
+    library.references.insert(mixture_references().begin(), mixture_references().end());
     const fs::path file = fs::path(folder) / "references.toml";
     std::error_code error;
     if (!fs::exists(file, error)) return;
@@ -241,11 +172,38 @@ void add_folder(Library& library, const std::string& folder, core::Problems& pro
     }
 }
 
+namespace {
+
+/// The constituents of a mixture must exist and must not lead back to it: said once, not for each
+/// property that follows from them.
+void check_constituents(const Library& library, const Material& material, LinkCheck& check,
+                        int& suggestions, core::Problems& problems) {
+    const core::Place place{material.file, 0, 0, 1, ""};
+    std::string fault;
+    for (const auto& [id, property] : material.properties) {
+        if (std::holds_alternative<Mixed>(property.entry.curve) && fault.empty())
+            fault = check.fault(material.name, id);
+    }
+    if (!fault.empty()) problems.add(place, "[mixture] " + fault);
+    const std::vector<Link> links{{material.mixture->first, PropertyId::density},
+                                  {material.mixture->second, PropertyId::density}};
+    check_targets(
+        library, links, suggestions, [&](const std::string& target, const std::string& hint) {
+            problems.add(place,
+                         fmt::format("[mixture] refers to the unknown material \"{}\"", target),
+                         hint);
+        });
+}
+
+}  // namespace
+
 void check_links(const Library& library, core::Problems& problems) {
     LinkCheck check(library);
     int suggestions = 0;
     for (const auto& [name, material] : library.materials) {
+        if (material.mixture) check_constituents(library, material, check, suggestions, problems);
         for (const auto& [id, property] : material.properties) {
+            if (std::holds_alternative<Mixed>(property.entry.curve)) continue;
             const core::Place place{material.file, 0, 0, 1, ""};
             const std::string& key = info(id).key;
             const auto report = [&](const std::string& target, const std::string& hint) {
@@ -260,51 +218,6 @@ void check_links(const Library& library, core::Problems& problems) {
             if (!fault.empty()) problems.add(place, key + " " + fault);
         }
     }
-}
-
-void override_properties(Library& library, const std::string& name, const Node& table,
-                         core::Problems& problems) {
-    TableReader reader(table, fmt::format("[material.\"{}\"]", name), problems);
-    Material& material = library.materials.at(name);
-    check_exclusive_forms(reader);
-    for (const PropertyInfo& about : property_table()) {
-        const Node* node = reader.find(about.key);
-        if (node == nullptr) continue;
-        if (node->type != Node::Type::table) {
-            const bool pure = about.kind->si_unit == "1";
-            reader.problem_at(
-                about.key, fmt::format("{} in {} must be a table", about.key, reader.name()),
-                fmt::format("for example {} = {{ value = {}, source = \"...\" }}", about.key,
-                            is_loss(about.id) ? "3e-4"
-                            : pure            ? "0.2"
-                                              : "\"" + about.kind->example + "\""));
-            continue;
-        }
-        const std::string title = fmt::format("{} of {}", about.key, name);
-        if (node->find("alternative") == nullptr) {
-            material.properties[about.id] =
-                read_property(*node, title, {&library, about.id, true}, problems);
-        } else {
-            choose_alternative(material, about.id, *node, title, problems);
-        }
-        check_override_links(library, name, about.id, title, reader);
-        material.unknown.erase(about.id);
-        drop_other_forms(material, about.id);
-    }
-    reader.finish();
-}
-
-void replace_value(Library& library, const std::string& name, PropertyId property, double value,
-                   const std::string& source) {
-    Material& material = library.materials.at(name);
-    Entry entry;
-    entry.curve = Scalar{value};
-    entry.sources = {source};
-    entry.nature = entry.status = "stated in the design file";
-    entry.from_design = true;
-    material.properties[property] = Property{std::move(entry), {}};
-    material.unknown.erase(property);
-    drop_other_forms(material, property);
 }
 
 }  // namespace stillcoat::materials

@@ -4,12 +4,20 @@
 
 #include <algorithm>
 
+#include "materials/mixture_value.hpp"
+
 namespace stillcoat::materials {
 
 std::vector<Link> links_of(const std::string& material, PropertyId property, const Entry& entry) {
     std::vector<Link> links;
     if (const auto* same = std::get_if<SameAs>(&entry.curve))
         links.emplace_back(same->material, property);
+    if (const auto* mixture = std::get_if<Mixed>(&entry.curve)) {
+        for (const PropertyId needed : needed_for_mixture(property)) {
+            links.emplace_back(mixture->first, needed);
+            links.emplace_back(mixture->second, needed);
+        }
+    }
     if (entry.beyond && entry.beyond->rule == Beyond::Rule::follows)
         links.emplace_back(entry.beyond->material, property);
     if (entry.beyond && entry.beyond->rule == Beyond::Rule::heat_capacity)
@@ -17,12 +25,23 @@ std::vector<Link> links_of(const std::string& material, PropertyId property, con
     return links;
 }
 
+void check_targets(
+    const Library& library, const std::vector<Link>& links, int& suggestions,
+    const std::function<void(const std::string& target, const std::string& hint)>& report) {
+    constexpr int most_suggestions = 20;
+    for (const auto& [target, property] : links) {
+        if (library.find(target) != nullptr) continue;
+        std::optional<std::string> near;
+        if (suggestions++ < most_suggestions)
+            near = core::nearest_spelling(target, library.names());
+        report(target, near ? fmt::format("did you mean \"{}\"?", *near) : "");
+    }
+}
+
 LinkCheck::Step LinkCheck::step_to(const Link& link) const {
-    const auto material = library_.materials.find(link.first);
-    if (material == library_.materials.end()) return {link, {}};
-    const auto property = material->second.properties.find(link.second);
-    if (property == material->second.properties.end()) return {link, {}};
-    return {link, links_of(link.first, link.second, property->second.entry)};
+    const Property* property = library_.property(link.first, link.second);
+    if (property == nullptr) return {link, {}};
+    return {link, links_of(link.first, link.second, property->entry)};
 }
 
 void LinkCheck::visit(const Link& start) {

@@ -1,6 +1,7 @@
 #pragma once
 /// References from a property of one material to other properties and materials.
 
+#include <functional>
 #include <map>
 #include <string>
 #include <utility>
@@ -15,6 +16,12 @@ using Link = std::pair<std::string, PropertyId>;
 
 /// What an entry of a material refers to by same_as and by its rule beyond the data.
 std::vector<Link> links_of(const std::string& material, PropertyId property, const Entry& entry);
+
+/// Reports each link to a material that does not exist, with a hint. @param suggestions counts the
+/// hints of a run, which cost a comparison with every name
+void check_targets(
+    const Library& library, const std::vector<Link>& links, int& suggestions,
+    const std::function<void(const std::string& target, const std::string& hint)>& report);
 
 /// Finds references that run in a circle or through too many properties. Each property is visited
 /// once for all questions together, without recursion.

@@ -212,8 +212,11 @@ Json face(const assess::Face& optics, const stack::Mirror& mirror) {
 Json values_from_the_design(const stack::Design& design) {
     Json list = Json::array();
     for (const stack::Override& values : design.overrides) {
-        for (const std::string& key : values.keys) {
-            list.push_back({{"material", values.material}, {"property", key}});
+        for (const stack::ReplacedValue& value : values.values) {
+            list.push_back({{"material", values.material},
+                            {"property", value.key},
+                            {"alternative",
+                             value.alternative.empty() ? Json(nullptr) : Json(value.alternative)}});
         }
     }
     return list;

@@ -88,7 +88,13 @@ void mirror_section(Page& page, const stack::Design& design, const Appraisal& ap
                  design.coating.reference_temperature, design.coating.design_wavelength * 1e9));
     std::vector<std::string> replaced;
     for (const stack::Override& values : design.overrides) {
-        replaced.push_back(fmt::format("{} of {}", fmt::join(values.keys, ", "), values.material));
+        std::vector<std::string> what;
+        for (const stack::ReplacedValue& value : values.values) {
+            what.push_back(value.alternative.empty() ? value.key
+                                                     : fmt::format("{} (alternative \"{}\")",
+                                                                   value.key, value.alternative));
+        }
+        replaced.push_back(fmt::format("{} of {}", fmt::join(what, ", "), values.material));
     }
     if (!replaced.empty()) {
         page.row("values from the design", fmt::format("{}", fmt::join(replaced, "; ")));
@@ -114,7 +120,7 @@ void face_section(Page& page, const stack::Design& design, const Face& face, boo
     const optics::Response& r = face.response;
     page.heading(label ? "Light, " + polarisation_text(face.polarisation) + " polarisation"
                        : "Light");
-    page.row("reflectance", reflectance_text(r));
+    page.row("reflectance", (lower_limit ? "at most " : "") + reflectance_text(r));
     page.row("transmittance", transmittance_text(r) + " (into the substrate)");
     page.row("absorptance", (lower_limit ? "at least " : "") + fraction_text(r.absorptance));
     loss_rows(page, design, face);
@@ -142,15 +148,20 @@ void face_section(Page& page, const stack::Design& design, const Face& face, boo
                  face.face_intensity, *peak, layer + 1, length_text(face.peak_depth[layer])));
 }
 
+/// Which of two faces a line is about; nothing when there is one.
+std::string light_words(const Appraisal& appraisal, const Face& face) {
+    if (appraisal.faces.size() == 1) return "";
+    return ", " + polarisation_text(face.polarisation) + " polarisation";
+}
+
 std::string percent(double share) { return fmt::format("{:.2f}", share * 100.0); }
 
-void material_section(Page& page, const Appraisal& appraisal) {
+void material_section(Page& page, const Appraisal& appraisal, const Face& face) {
     struct Sum {
         int layers = 0;
         double thickness = 0.0, absorptance = 0.0, energy = 0.0, peak = 0.0, noise = 0.0;
         bool absorption_known = true;
     };
-    const Face& face = appraisal.faces.front();
     const std::vector<double> shares = brownian_shares(face.noise);
     std::map<std::string, Sum> sums;
     std::vector<std::string> order;
@@ -166,8 +177,7 @@ void material_section(Page& page, const Appraisal& appraisal) {
         s.absorption_known = layer.optical.extinction_known;
         if (!shares.empty()) s.noise += shares[j];
     }
-    page.heading(appraisal.faces.size() > 1 ? "Materials of the coating (s polarisation)"
-                                            : "Materials of the coating");
+    page.heading("Materials of the coating" + light_words(appraisal, face));
     std::vector<std::vector<std::string>> rows;
     const double energy = sum(face.stored_energy);
     for (const std::string& name : order) {
@@ -209,27 +219,28 @@ void layer_section(Page& page, const Appraisal& appraisal, const PageOptions& op
     page.table({"no", "material", "nm", "quarter waves", "index", "absorbs ppm", "energy %",
                 "|E|² max", "Brownian %"},
                rows, 2);
+    if (appraisal.faces.size() > 1) {
+        page.line("  the same for p polarisation: --csv layers");
+    }
     if (!all) {
         page.line(fmt::format("  … {} more layers: --all-layers, or --csv layers",
                               count - outermost_on_page - innermost_on_page));
     }
 }
 
-/// Which of two faces a line is about; nothing when there is one.
-std::string light_words(const Appraisal& appraisal, const Face& face) {
-    if (appraisal.faces.size() == 1) return "";
-    return ", " + polarisation_text(face.polarisation) + " polarisation";
-}
-
 /// The answer in two lines, for those who read no further.
 void short_section(Page& page, const Appraisal& appraisal) {
     page.heading("In short");
     const optics::Response mean = mean_response(appraisal);
+    const bool lower_limit = absorption_unknown(appraisal);
     page.item(fmt::format(
-        "reflects {}, transmits {}, absorbs {}{}{}", reflectance_text(mean),
-        transmittance_text(mean), absorption_unknown(appraisal) ? "at least " : "",
+        "reflects {}{}, transmits {}, absorbs {}{}{}", lower_limit ? "at most " : "",
+        reflectance_text(mean), transmittance_text(mean), lower_limit ? "at least " : "",
         fraction_text(mean.absorptance), appraisal.faces.size() > 1 ? " (unpolarised)" : ""));
     for (const Face& face : appraisal.faces) {
+        // Of a coating that lets the light pass, the noise of what it reflects is no summary.
+        constexpr double mirror_from = 0.01;
+        if (face.response.reflectance < mirror_from) continue;
         const std::string movement = movement_text(face.noise);
         const std::string light =
             appraisal.faces.size() == 1
@@ -297,7 +308,7 @@ std::string appraisal_text(const stack::Design& design, const materials::Library
     power_rows(page, appraisal);
     part_section(page, design, appraisal);
     neighbourhood_section(page, design, appraisal);
-    material_section(page, appraisal);
+    for (const Face& face : appraisal.faces) material_section(page, appraisal, face);
     const assess::Noise& noise = appraisal.faces.front().noise;
     if (!noise.layers.empty()) {
         page.line(fmt::format("  Brownian %: share of the coating's Brownian noise power at {}",

@@ -37,11 +37,13 @@ void report_missing_terms(const assess::Noise& noise, bool strict) {
 }
 
 int appraise_command(const std::string& program, const AppraiseOptions& options) {
-    if (!options.figure.empty()) {
-        check_figure_path(options.figure, options.output.path, options.output.existing());
-    }
     materials::Library library = load_library(program, options.materials);
     const stack::Design design = load_design(options.design, library);
+    options.output.check();
+    if (!options.figure.empty()) {
+        check_figure_path(options.figure, files_of(design, options.output),
+                          options.output.existing());
+    }
     const assess::Appraisal appraisal = assess::appraise(design, library);
     // What is missing is a matter of the materials, so the first face speaks for both.
     report_missing_terms(appraisal.faces.front().noise, options.strict);

@@ -16,6 +16,8 @@ core::Existing Output::existing() const {
 
 void Output::write(const std::string& text) const { core::write_file(path, text, existing()); }
 
+void Output::check() const { core::check_writable(path, existing()); }
+
 bool Output::colour() const {
     return path == "-" && ::isatty(STDOUT_FILENO) == 1 && std::getenv("NO_COLOR") == nullptr;
 }
@@ -55,13 +57,20 @@ std::string own_folder(const std::string& program, const std::string& name,
 
 }  // namespace
 
+std::vector<std::string> material_folders(const std::string& program,
+                                          const std::vector<std::string>& folders) {
+    std::vector<std::string> all{own_folder(program, "materials", STILLCOAT_BUILD_MATERIALS)};
+    all.insert(all.end(), folders.begin(), folders.end());
+    return all;
+}
+
 materials::Library load_library(const std::string& program,
                                 const std::vector<std::string>& folders) {
     materials::Library library;
     core::Problems problems;
-    materials::add_folder(library, own_folder(program, "materials", STILLCOAT_BUILD_MATERIALS),
-                          problems);
-    for (const std::string& folder : folders) materials::add_folder(library, folder, problems);
+    for (const std::string& folder : material_folders(program, folders)) {
+        materials::add_folder(library, folder, problems);
+    }
     // A file that could not be read would be missed by all that refer to it.
     problems.throw_if_any();
     materials::check_links(library, problems);
@@ -79,6 +88,12 @@ stack::Design load_design(const std::string& path, materials::Library& library) 
         path == "-" ? core::parse_document(core::read_text_file("/dev/stdin"), "standard input")
                     : core::read_document(path);
     return stack::read_design(std::move(document), library);
+}
+
+std::vector<std::string> files_of(const stack::Design& design, const Output& output) {
+    std::vector<std::string> files{design.document.name, output.path};
+    for (const std::string& file : stack::files_beside(design)) files.push_back(file);
+    return files;
 }
 
 double quantity_option(const std::string& option, const std::string& text,

@@ -34,6 +34,8 @@ struct Output {
 
     core::Existing existing() const;
     void write(const std::string& text) const;
+    /// Refuses before any work what write would refuse. @throws core::InputError
+    void check() const;
     /// Colour only where a person reads it, and not where NO_COLOR (no-color.org) forbids it.
     bool colour() const;
 };
@@ -41,6 +43,10 @@ void add_output_options(CLI::App& command, Output& output);
 
 /// The option --materials of a command.
 void add_folder_option(CLI::App& command, std::vector<std::string>& folders);
+
+/// The folder of materials that belongs to the program, and those of the user.
+std::vector<std::string> material_folders(const std::string& program,
+                                          const std::vector<std::string>& folders);
 
 /// The library that belongs to the program with the folders of the user.
 /// @throws core::InputError with every problem of every file
@@ -52,6 +58,9 @@ std::string schema_path(const std::string& program, const std::string& document)
 
 /// Reads a design; "-" is standard input.
 stack::Design load_design(const std::string& path, materials::Library& library);
+
+/// The files that a command reads and writes, so that a figure does not overwrite one of them.
+std::vector<std::string> files_of(const stack::Design& design, const Output& output);
 
 /// The SI value of an option, greater than 0. @throws core::InputError naming the option
 double quantity_option(const std::string& option, const std::string& text,

@@ -17,7 +17,7 @@ struct DraftOptions {
     std::string high, low, substrate, wavelength, transmittance, cap = "none";
     std::string beam_radius = "2 cm", temperature = "295 K";
     bool antireflecting = false;
-    std::vector<std::string> materials;
+    std::vector<std::string> materials, alternatives;
     Output output;
 };
 
@@ -25,7 +25,9 @@ struct DraftOptions {
 bool asks_for_the_example(const DraftOptions& options) {
     const bool anything = options.antireflecting || !options.high.empty() || !options.low.empty() ||
                           !options.substrate.empty() || !options.wavelength.empty() ||
-                          !options.transmittance.empty();
+                          !options.transmittance.empty() || !options.alternatives.empty() ||
+                          options.cap != "none" || options.beam_radius != "2 cm" ||
+                          options.temperature != "295 K";
     if (!anything) return true;
     std::vector<std::string> missing;
     if (options.high.empty()) missing.push_back("--high");
@@ -47,8 +49,9 @@ void report(const assess::Draft& draft) {
     }
     for (const auto& item : {draft.fewer, draft.chosen, draft.more}) {
         if (!item) continue;
-        fmt::print(stderr, "{} pairs transmit {}{}\n", item->pairs,
-                   fraction_text(item->transmittance),
+        fmt::print(stderr, "{} {} {}{}\n",
+                   count_text(static_cast<std::size_t>(item->pairs), "pair"),
+                   item->pairs == 1 ? "transmits" : "transmit", fraction_text(item->transmittance),
                    item->pairs == draft.chosen->pairs ? "  <- drafted" : "");
     }
 }
@@ -80,7 +83,8 @@ int draft_command(const std::string& program, const DraftOptions& options) {
                                        options.beam_radius,
                                        options.temperature,
                                        cap,
-                                       schema};
+                                       schema,
+                                       options.alternatives};
     const assess::Draft draft =
         options.antireflecting ? assess::antireflecting_draft(library, request)
                                : assess::reflecting_draft(
@@ -125,6 +129,11 @@ Command add_draft(CLI::App& app, const std::string& program) {
     command->add_option("--beam-radius", options->beam_radius, "1/e² intensity radius [2 cm]")
         ->type_name("\"w mm\"");
     command->add_option("--temperature", options->temperature, "[295 K]")->type_name("\"T K\"");
+    command
+        ->add_option("--alternative", options->alternatives,
+                     "take a named alternative of the library, silicon.refractive_index=visible")
+        ->type_name("MATERIAL.PROPERTY=NAME")
+        ->allow_extra_args(false);
     add_folder_option(*command, options->materials);
     add_output_options(*command, options->output);
     command->footer(

@@ -26,21 +26,7 @@ PictureFormat format_of(const std::string& path) {
         "for example noise.svg");
 }
 
-/// What would make writing fail for sure, before any work is done.
-void require_free(const std::string& path, core::Existing existing) {
-    std::error_code ignored;
-    if (fs::is_directory(path, ignored)) {
-        throw core::InputError(path + ": is a directory", "give a file name");
-    }
-    if (existing == core::Existing::keep && fs::exists(path, ignored)) {
-        throw core::InputError(path + ": exists already and was kept",
-                               "give --replace to overwrite it");
-    }
-}
-
-std::string data_path_of(const std::string& path) {
-    return fs::path(path).replace_extension(".csv").string();
-}
+std::string data_path_of(const std::string& path) { return path + ".csv"; }
 
 /// Both files, or none that was not there before.
 void write_both(const std::string& path, const std::string& picture, const std::string& data_path,
@@ -97,8 +83,8 @@ void draw_picture(const Picture& picture, const std::string& path, core::Existin
     const std::string data = figure_data_csv(picture);
     const PictureFormat format = format_of(path);
     const std::string data_path = data_path_of(path);
-    require_free(path, existing);
-    require_free(data_path, existing);
+    core::check_writable(path, existing);
+    core::check_writable(data_path, existing);
     const Script script = figure_script(picture, format);
     std::string content = gnuplot_output(script.text);
     if (format == PictureFormat::svg) content = named_svg(content, picture.title, script.names);
@@ -108,19 +94,20 @@ void draw_picture(const Picture& picture, const std::string& path, core::Existin
 
 }  // namespace
 
-void check_figure_path(const std::string& path, const std::string& result,
+void check_figure_path(const std::string& path, const std::vector<std::string>& others,
                        core::Existing existing) {
     format_of(path);
-    if (result != "-" &&
-        (fs::path(result).lexically_normal() == fs::path(data_path_of(path)).lexically_normal() ||
-         fs::path(result).lexically_normal() == fs::path(path).lexically_normal())) {
-        throw core::InputError(
-            fmt::format("--out {} is where the figure and its data go: {} and {}", result, path,
-                        data_path_of(path)),
-            "give one of the two another name");
+    for (const std::string& own : {path, data_path_of(path)}) {
+        for (const std::string& other : others) {
+            std::error_code ignored;
+            if (other.empty() || other == "-") continue;
+            if (fs::weakly_canonical(own, ignored) != fs::weakly_canonical(other, ignored))
+                continue;
+            throw core::InputError(fmt::format("{}: the figure would overwrite {}", own, other),
+                                   "give the figure another name");
+        }
+        core::check_writable(own, existing);
     }
-    require_free(path, existing);
-    require_free(data_path_of(path), existing);
 }
 
 void draw(const Figure& figure, const std::string& path, core::Existing existing) {

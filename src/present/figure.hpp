@@ -84,14 +84,15 @@ std::string figure_data_csv(const Figure& figure);
 /// One row for each cell of the map: x, y, z.
 std::string figure_data_csv(const Map& map);
 
-/// Refuses what draw would refuse of a path, and a `result` file that the data would overwrite,
-/// before anything is computed. @param result another file of the same command; "-" for none
+/// Refuses, before anything is computed, what draw would refuse of a path and what would overwrite
+/// another file of the same command. @param others inputs and results; "-" and "" are none
 /// @throws core::InputError
-void check_figure_path(const std::string& path, const std::string& result, core::Existing existing);
+void check_figure_path(const std::string& path, const std::vector<std::string>& others,
+                       core::Existing existing);
 
 /// Draws into `path`, whose ending .svg, .pdf or .png says the format, and writes the data beside
-/// it with the ending .csv. What stands in the files depends on the figure and on gnuplot's version
-/// and fonts only. A value outside an axis with given limits is cut off there.
+/// it under its name with .csv behind. What stands in the files depends on the figure and on
+/// gnuplot's version and fonts only. A value outside an axis with given limits is cut off there.
 /// @throws core::InputError another ending, "-", a file that is to be kept (both files are looked
 ///     for before gnuplot starts), gnuplot missing or failing, a file that cannot be written.
 /// @throws std::logic_error values that are not finite, no curve or more than most_curves, columns

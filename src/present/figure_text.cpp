@@ -122,6 +122,10 @@ std::string drawable_text(const std::string& text) {
         const bool known = std::any_of(
             std::begin(blocks), std::end(blocks),
             [&](const Block& block) { return code >= block.first && code <= block.last; });
+        // gnuplot leaves ">" as it is, and XML does not allow this end of a section in a text.
+        const bool ends_section = character == ">" && result.size() >= 2 &&
+                                  result.compare(result.size() - 2, 2, "]]") == 0;
+        if (ends_section) result.push_back(' ');
         result += known ? character : "□";
     }
     return result;

@@ -4,6 +4,7 @@
 #include <memory>
 
 #include "present/command.hpp"
+#include "present/material_template.hpp"
 #include "present/materials_text.hpp"
 #include "stillcoat/present/command_line.hpp"
 
@@ -29,11 +30,16 @@ void require_material(const materials::Library& library, const std::string& name
 struct MaterialsOptions {
     std::string name, property, temperature = "295 K", wavelength = "1064 nm", frequency = "100 Hz",
                                 check;
+    bool wants_template = false;
     std::vector<std::string> materials;
     Output output;
 };
 
 int materials_command(const std::string& program, const MaterialsOptions& options) {
+    if (options.wants_template) {
+        options.output.write(material_template());
+        return fine;
+    }
     const materials::Library library = load_library(program, options.materials);
     const bool colour = options.output.colour();
     if (!options.check.empty()) {
@@ -97,10 +103,13 @@ Command add_materials(CLI::App& app, const std::string& program) {
     command->add_option("--wavelength", options->wavelength, "[1064 nm]")->type_name("\"λ nm\"");
     command->add_option("--frequency", options->frequency, "[100 Hz]")->type_name("\"f Hz\"");
     command->add_option("--check", options->check, "check a material file")->type_name("FILE");
+    command->add_flag("--template", options->wants_template, "a material file to fill in")
+        ->excludes("name", "property", "--check");
     add_folder_option(*command, options->materials);
     add_output_options(*command, options->output);
     command->footer(
         "Examples:\n  stillcoat materials tantala-ibs\n"
+        "  stillcoat materials --template --out my-film.toml\n"
         "  stillcoat materials silicon thermal_expansion --temperature \"123.5 K\"");
 
     return {command, [=] { return materials_command(program, *options); }};

@@ -16,6 +16,12 @@ std::string in_unit(double value, const core::QuantityKind& kind) {
                        kind.si_unit == "1" ? "" : kind.si_unit);
 }
 
+std::string mixture_text(const materials::Mixed& mixture) {
+    const double percent = 100.0 * mixture.fraction;
+    return fmt::format("{:.6g} % {} and {:.6g} % {} by volume", 100.0 - percent, mixture.first,
+                       percent, mixture.second);
+}
+
 std::string table_text(const std::vector<double>& x, const std::vector<double>& y, double scale,
                        const std::string& axis_unit, const core::QuantityKind& kind) {
     std::string text;
@@ -48,6 +54,7 @@ struct CurveText {
         return fmt::format("as {}{}", c.material,
                            c.factor == 1.0 ? "" : fmt::format(", times {:g}", c.factor));
     }
+    std::string operator()(const materials::Mixed& c) const { return "from " + mixture_text(c); }
 };
 
 std::string limits_text(const Entry& entry) {
@@ -61,6 +68,8 @@ std::string limits_text(const Entry& entry) {
     add(entry.wavelength, 1e9, "nm");
     add(entry.frequency, 1.0, "Hz");
     if (entry.continued_to) text += fmt::format("; continued to {:g} K", *entry.continued_to);
+    if (text.empty() && std::holds_alternative<materials::Mixed>(entry.curve))
+        return "what the data of both hold for";
     return text.empty() ? "no limit stated" : text;
 }
 
@@ -191,6 +200,7 @@ std::string material_page(const materials::Library& library, const std::string& 
     page.row("file", material.file);
     if (!material.composition.empty()) page.row("composition", material.composition);
     if (!material.remark.empty()) page.row("remark", material.remark);
+    if (material.mixture) page.row("mixture", mixture_text(*material.mixture));
     for (const auto& [id, property] : material.properties) {
         const PropertyInfo& about = materials::info(id);
         page.heading(about.title + "  (" + about.key + ")");

@@ -74,9 +74,10 @@ void power_shares(Page& page, const Appraisal& appraisal, const PartView& view) 
     const std::string remark = known ? "" : " (plate taken as clear)";
     const std::string least = when(coatings_incomplete(appraisal.mirror), "at least ");
     page.row("reflectance", near_one_text(r.reflectance, r.loss) + remark);
-    page.row("transmittance", transmittance_text(r.transmittance, r.log_transmittance,
-                                                 r.reflectance + r.absorptance) +
-                                  " (through both faces)" + remark);
+    page.row("transmittance", fmt::format("{} (through both faces{})",
+                                          transmittance_text(r.transmittance, r.log_transmittance,
+                                                             r.reflectance + r.absorptance),
+                                          known ? "" : "; plate taken as clear"));
     if (!known) {
         page.row("absorptance", "not known: " + view.absorptance_missing);
         return;
@@ -118,8 +119,9 @@ void loss_rows(Page& page, const stack::Design& design, const assess::Face& face
     const FaceLosses& losses = face.losses;
     scatter_row(page, design, losses);
     const bool low = losses.absorptance_is_lower_limit || losses.scatter_is_lower_limit;
-    const std::string remark =
-        losses.scatter ? " (scatter exceeds what is reflected)" : " (scatter not stated)";
+    const std::string remark = losses.scatter            ? " (scatter exceeds what is reflected)"
+                               : design.mirror.roughness ? " (scatter not computed)"
+                                                         : " (scatter not stated)";
     page.row("loss T + A + S", losses.total
                                    ? when(low, "at least ") + fraction_text(*losses.total)
                                    : "at least " + fraction_text(face.response.loss) + remark);

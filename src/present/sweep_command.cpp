@@ -10,6 +10,7 @@
 #include "present/command.hpp"
 #include "present/sweep_figure.hpp"
 #include "present/sweep_output.hpp"
+#include "present/sweep_resume.hpp"
 #include "present/wording.hpp"
 #include "stillcoat/present/command_line.hpp"
 
@@ -23,7 +24,7 @@ namespace fs = std::filesystem;
 struct SweepOptions {
     std::string design;
     std::vector<std::string> over, show, materials;
-    std::string frequency = "100 Hz", figure;
+    std::string frequency, figure;
     bool json = false, resume = false;
     Output output;
 };
@@ -85,29 +86,59 @@ assess::SweepPlan read_plan(const SweepOptions& options, const stack::Design& de
             fmt::format("at most {} are computed: take fewer", assess::most_sweep_points));
     }
     plan.outcomes = assess::chosen_outcomes(design, options.show, plan.axes);
-    plan.frequency = quantity_option("--frequency", options.frequency, core::kind::frequency);
+    const bool varies = std::any_of(plan.axes.begin(), plan.axes.end(),
+                                    [](const auto& axis) { return axis.name == "frequency"; });
+    if (varies && !options.frequency.empty()) {
+        throw core::InputError("--frequency is given, and --over varies it",
+                               "leave one of the two out");
+    }
+    plan.frequency = options.frequency.empty()
+                         ? 100.0
+                         : quantity_option("--frequency", options.frequency, core::kind::frequency);
     return plan;
 }
 
-/// The rows that an earlier run left, checked by computing one of them again.
-SweepRows earlier_rows(const SweepOptions& options, const stack::Design& design,
-                       const materials::Library& library, const assess::SweepPlan& plan) {
-    if (!options.resume) return SweepRows(plan.size());
-    const std::string file = unfinished_path(options.output.path);
-    SweepRows rows = read_unfinished_sweep(core::read_text_file(file), file, plan);
-    const auto first =
-        std::find_if(rows.begin(), rows.end(), [](const auto& row) { return row.has_value(); });
-    if (first == rows.end()) return rows;
-    const auto point = static_cast<std::size_t>(first - rows.begin());
-    const assess::SweepRow again = assess::sweep_row(design, library, plan, point);
-    if (again.values == (*first)->values && again.lack == (*first)->lack) return rows;
-    throw core::InputError(
-        fmt::format("{}: its first point comes out differently now", file),
-        "the design or a material has changed: start the sweep without --resume");
+/// Every file that the result rests on.
+std::vector<std::string> inputs_of(const std::string& program, const SweepOptions& options,
+                                   const stack::Design& design) {
+    std::vector<std::string> files = stack::files_beside(design);
+    if (options.design != "-") files.push_back(options.design);
+    for (const std::string& folder : material_folders(program, options.materials)) {
+        std::vector<std::string> inside;
+        for (const fs::directory_entry& item : fs::directory_iterator(folder)) {
+            const std::string ending = item.path().extension().string();
+            if (item.is_regular_file() && (ending == ".toml" || ending == ".csv")) {
+                inside.push_back(item.path().string());
+            }
+        }
+        std::sort(inside.begin(), inside.end());
+        files.insert(files.end(), inside.begin(), inside.end());
+    }
+    return files;
 }
 
-/// Says how many points lack values and why the first one does; all of all: nothing to show.
-void report_gaps(const SweepRows& rows) {
+/// The rows that an earlier run left.
+SweepRows earlier_rows(const SweepOptions& options, const assess::SweepPlan& plan,
+                       const std::string& inputs) {
+    if (!options.resume) return SweepRows(plan.size());
+    const std::string file = unfinished_path(options.output.path);
+    return read_unfinished_sweep(core::read_text_file(file), file, plan, inputs);
+}
+
+/// What holds where the sweep ends; an appraisal there says more.
+void report_remarks(const assess::SweepRemarks& remarks) {
+    for (const std::string& warning : remarks.warnings) {
+        fmt::print(stderr, "warning: {}\n", core::printable(warning));
+    }
+    if (remarks.analogies.empty()) return;
+    fmt::print(stderr,
+               "note: {} by analogy at the ends of the sweep; `stillcoat appraise` there, or "
+               "--json, lists them\n",
+               count_text(remarks.analogies.size(), "value"));
+}
+
+/// Says how many points lack values and why the first one does; whether there is any value at all.
+bool report_gaps(const SweepRows& rows) {
     std::size_t lacking = 0;
     bool any_value = false;
     std::string reason;
@@ -116,23 +147,25 @@ void report_gaps(const SweepRows& rows) {
         if (row->lack.empty()) continue;
         if (lacking++ == 0) reason = row->lack;
     }
-    if (!any_value) throw core::InputError("no point has a value: " + reason, "");
-    if (lacking == 0) return;
+    if (!any_value) {
+        fmt::print(stderr, "no point has a value: {}\n", core::printable(reason));
+        return false;
+    }
+    if (lacking == 0) return true;
     fmt::print(stderr, "warning: {} without every value, the first because {}\n",
                count_text(lacking, "point"), core::printable(reason));
+    return true;
 }
 
 void check_options(const SweepOptions& options) {
     const bool to_file = options.output.path != "-";
-    if (options.resume && !to_file) {
-        throw core::InputError("--resume needs --out FILE",
+    if (options.resume && (!to_file || options.design == "-")) {
+        throw core::InputError("--resume needs a design file and --out FILE",
                                "an interrupted sweep is kept beside its file");
     }
-    if (to_file && !options.output.replace && fs::exists(options.output.path)) {
-        throw core::InputError(options.output.path + ": exists already and was kept",
-                               "give --replace to overwrite it");
-    }
-    if (to_file && !options.resume && fs::exists(unfinished_path(options.output.path))) {
+    options.output.check();
+    std::error_code ignored;
+    if (to_file && !options.resume && fs::exists(unfinished_path(options.output.path), ignored)) {
         throw core::InputError(
             unfinished_path(options.output.path) + ": an earlier sweep stopped here",
             "give --resume to go on with it, or remove the file");
@@ -140,17 +173,22 @@ void check_options(const SweepOptions& options) {
 }
 
 /// Keeps what was done; returns the exit code.
-int keep_unfinished(const SweepOptions& options, const assess::SweepPlan& plan,
+int keep_unfinished(const SweepOptions& options, const stack::Design& design,
+                    const assess::SweepPlan& plan, const std::string& inputs,
                     const SweepRows& rows) {
     const auto done =
         std::count_if(rows.begin(), rows.end(), [](const auto& row) { return row.has_value(); });
     if (options.output.path == "-") {
-        options.output.write(sweep_csv(plan, rows));
-        fmt::print(stderr, "\nstopped after {} of {} points\n", done, rows.size());
+        options.output.write(options.json ? sweep_json(design, plan, rows, {})
+                                          : sweep_csv(plan, rows));
+        fmt::print(stderr,
+                   "\nstopped after {} of {} points, which were printed; with --out FILE they are "
+                   "kept for --resume\n",
+                   done, rows.size());
         return no_answer;
     }
     const std::string file = unfinished_path(options.output.path);
-    core::write_file(file, unfinished_sweep(plan, rows), core::Existing::replace);
+    core::write_file(file, unfinished_sweep(plan, inputs, rows), core::Existing::replace);
     fmt::print(stderr,
                "\nstopped after {} of {} points, kept in {}\n       the same command with --resume "
                "goes on\n",
@@ -164,8 +202,10 @@ int sweep_command(const std::string& program, const SweepOptions& options) {
     const stack::Design design = load_design(options.design, library);
     const assess::SweepPlan plan = read_plan(options, design, library);
     if (!options.figure.empty())
-        check_sweep_figure(plan, options.figure, options.output.path, options.output.existing());
-    SweepRows rows = earlier_rows(options, design, library, plan);
+        check_sweep_figure(plan, options.figure, files_of(design, options.output),
+                           options.output.existing());
+    const std::string inputs = fingerprint(inputs_of(program, options, design));
+    SweepRows rows = earlier_rows(options, plan, inputs);
     bool complete = false;
     {
         const InterruptGuard guard;
@@ -174,10 +214,13 @@ int sweep_command(const std::string& program, const SweepOptions& options) {
             return interrupted == 0;
         });
     }
-    if (!complete) return keep_unfinished(options, plan, rows);
+    if (!complete) return keep_unfinished(options, design, plan, inputs, rows);
     show_progress(rows.size(), rows.size());
-    report_gaps(rows);
-    options.output.write(options.json ? sweep_json(design, plan, rows) : sweep_csv(plan, rows));
+    if (!report_gaps(rows)) return no_answer;
+    const assess::SweepRemarks remarks = assess::sweep_remarks(design, library, plan);
+    options.output.write(options.json ? sweep_json(design, plan, rows, remarks)
+                                      : sweep_csv(plan, rows));
+    report_remarks(remarks);
     if (options.resume) fs::remove(unfinished_path(options.output.path));
     if (!options.figure.empty()) {
         draw_sweep(design, plan, rows, options.figure, options.output.existing());
@@ -205,7 +248,8 @@ Command add_sweep(CLI::App& app, const std::string& program) {
         ->allow_extra_args(false);
     command
         ->add_option("--show", options->show,
-                     "results, separated by commas; any other word lists them")
+                     "results, separated by commas; for unpolarised light also with _s and _p; any "
+                     "other word lists them")
         ->type_name("KEYS")
         ->delimiter(',')
         ->allow_extra_args(false);

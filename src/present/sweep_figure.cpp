@@ -7,6 +7,7 @@
 #include <filesystem>
 
 #include "present/figure.hpp"
+#include "present/wording.hpp"
 #include "stillcoat/core/constants.hpp"
 
 namespace stillcoat::present {
@@ -99,12 +100,14 @@ std::vector<Group> grouped(const assess::SweepPlan& plan, const SweepRows& rows)
 }
 
 /// The words of an axis: the only curve's name, or what the unit says.
-Axis value_axis(const Group& group) {
+Axis value_axis(const Group& group, const std::string& where) {
     const std::string title = group.curves.size() == 1 ? group.curves[0].name
                               : group.unit == "m/√Hz"  ? "displacement"
                               : group.unit.empty()     ? "share of the light"
                                                        : "result";
-    return Axis{with_unit(title, group.unit), spans_decades(group.all), {}, {}};
+    const bool noise = group.unit == "m/√Hz";
+    return Axis{
+        with_unit(noise ? title + where : title, group.unit), spans_decades(group.all), {}, {}};
 }
 
 /// Where the design itself stands.
@@ -113,6 +116,8 @@ std::optional<double> own_value(const stack::Design& design, const std::string& 
     if (name == "angle") return design.light.angle;
     if (name == "temperature") return design.temperature;
     if (name == "beam_radius") return design.beam_radius;
+    const std::size_t dot = name.rfind('.');
+    if (dot != std::string::npos && name.substr(dot) == ".thickness") return 1.0;
     return std::nullopt;
 }
 
@@ -132,11 +137,13 @@ void draw_curves(const stack::Design& design, const assess::SweepPlan& plan, con
     Figure figure;
     figure.title = design.title;
     figure.x = drawn_axis(plan.axes[0]);
-    figure.y = value_axis(groups[0]);
+    const bool over_frequency = plan.axes[0].name == "frequency";
+    const std::string where = over_frequency ? "" : " at " + frequency_text(plan.frequency);
+    figure.y = value_axis(groups[0], where);
     figure.curves = std::move(groups[0].curves);
     if (groups.size() > 1) {
         figure.second.emplace();
-        figure.second->axis = value_axis(groups[1]);
+        figure.second->axis = value_axis(groups[1], where);
         figure.second->curves = std::move(groups[1].curves);
     }
     const auto own = own_value(design, plan.axes[0].name);
@@ -161,23 +168,26 @@ void draw_map(const stack::Design& design, const assess::SweepPlan& plan, const 
     for (const auto& row : rows) {
         if (row->values[0]) values.push_back(drawn(outcome, *row->values[0]));
     }
-    map.z = Axis{with_unit(outcome.title, drawn_unit(outcome)), spans_decades(values), {}, {}};
-    if (values.size() != rows.size() && !map.z.logarithmic) {
-        throw core::InputError("the map has gaps: some points have no value",
+    const bool over_frequency =
+        plan.axes[0].name == "frequency" || plan.axes[1].name == "frequency";
+    const std::string where = outcome.of_noise && !over_frequency
+                                  ? " at " + frequency_text(plan.frequency)
+                                  : std::string();
+    map.z =
+        Axis{with_unit(outcome.title + where, drawn_unit(outcome)), spans_decades(values), {}, {}};
+    if (values.size() != rows.size()) {
+        throw core::InputError("no figure: some points of the map have no value",
                                "narrow the ranges of --over");
     }
-    // On a logarithmic scale a value of 0 leaves the gap that a missing one needs.
-    for (const auto& row : rows) {
-        map.z_values.push_back(row->values[0] ? drawn(outcome, *row->values[0]) : 0.0);
-    }
+    map.z_values = std::move(values);
     draw(map, path, existing);
 }
 
 }  // namespace
 
 void check_sweep_figure(const assess::SweepPlan& plan, const std::string& path,
-                        const std::string& result, core::Existing existing) {
-    check_figure_path(path, result, existing);
+                        const std::vector<std::string>& others, core::Existing existing) {
+    check_figure_path(path, others, existing);
     if (plan.axes.size() == 2 && plan.outcomes.size() != 1) {
         throw core::InputError(
             fmt::format("a map shows one result, here are {}", plan.outcomes.size()),

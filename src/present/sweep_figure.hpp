@@ -9,9 +9,10 @@
 namespace stillcoat::present {
 
 /// Refuses, before anything is computed, what cannot be drawn or written.
-/// @param result where the table goes, @throws core::InputError
+/// @param others files of the same command that must not be overwritten
+/// @throws core::InputError
 void check_sweep_figure(const assess::SweepPlan& plan, const std::string& path,
-                        const std::string& result, core::Existing existing);
+                        const std::vector<std::string>& others, core::Existing existing);
 
 /// Spectral densities are drawn as amplitudes; axes become logarithmic where values span more than
 /// a factor of 100. Points without a value leave gaps.

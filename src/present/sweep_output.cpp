@@ -21,20 +21,6 @@ Json values_of(const assess::SweepRow& row) {
     return list;
 }
 
-/// What makes two sweeps the same.
-Json plan_of(const assess::SweepPlan& plan) {
-    Json axes = Json::array();
-    for (const assess::SweepAxis& axis : plan.axes) {
-        axes.push_back({{"name", axis.name}, {"values", axis.values}});
-    }
-    Json keys = Json::array();
-    for (const assess::Outcome& outcome : plan.outcomes) keys.push_back(outcome.key);
-    return {{"version", STILLCOAT_VERSION},
-            {"over", std::move(axes)},
-            {"show", std::move(keys)},
-            {"noise_frequency_Hz", plan.frequency}};
-}
-
 }  // namespace
 
 std::string unit_ending(const std::string& unit) {
@@ -67,7 +53,7 @@ std::string sweep_csv(const assess::SweepPlan& plan, const SweepRows& rows) {
 }
 
 std::string sweep_json(const stack::Design& design, const assess::SweepPlan& plan,
-                       const SweepRows& rows) {
+                       const SweepRows& rows, const assess::SweepRemarks& remarks) {
     Json axes = Json::array();
     for (const assess::SweepAxis& axis : plan.axes) {
         axes.push_back({{"name", axis.name},
@@ -100,51 +86,10 @@ std::string sweep_json(const stack::Design& design, const assess::SweepPlan& pla
                         {"over", std::move(axes)},
                         {"show", std::move(shown)},
                         {"complete", points.size() == rows.size()},
+                        {"warnings_at_the_ends", remarks.warnings},
+                        {"values_by_analogy_at_the_ends", remarks.analogies},
                         {"points", std::move(points)}};
     return document.dump(2, ' ', false, Json::error_handler_t::replace) + "\n";
-}
-
-std::string unfinished_sweep(const assess::SweepPlan& plan, const SweepRows& rows) {
-    Json done = Json::array();
-    for (std::size_t point = 0; point < rows.size(); ++point) {
-        if (rows[point]) done.push_back({point, values_of(*rows[point]), rows[point]->lack});
-    }
-    const Json document{{"document", "unfinished sweep"}, {"plan", plan_of(plan)}, {"done", done}};
-    return document.dump(-1, ' ', false, Json::error_handler_t::replace) + "\n";
-}
-
-SweepRows read_unfinished_sweep(const std::string& text, const std::string& file,
-                                const assess::SweepPlan& plan) {
-    const auto refuse = [&](const std::string& what) {
-        throw core::InputError(fmt::format("{}: {}", file, what),
-                               "start the sweep without --resume, or remove the file");
-    };
-    SweepRows rows(plan.size());
-    const Json document = Json::parse(text, nullptr, false);
-    try {
-        if (document.is_discarded() || document.at("document") != "unfinished sweep") {
-            refuse("is no unfinished sweep");
-        }
-        // Through text, so that both sides have passed the same rounding.
-        if (document.at("plan").dump() != Json::parse(plan_of(plan).dump()).dump()) {
-            refuse("belongs to another sweep");
-        }
-        for (const Json& item : document.at("done")) {
-            assess::SweepRow row;
-            for (const Json& value : item.at(1)) {
-                row.values.push_back(value.is_null() ? std::nullopt
-                                                     : std::optional(value.get<double>()));
-            }
-            row.lack = item.at(2).get<std::string>();
-            if (row.values.size() != plan.outcomes.size()) refuse("is damaged");
-            rows.at(item.at(0).get<std::size_t>()) = std::move(row);
-        }
-    } catch (const Json::exception&) {
-        refuse("is damaged");
-    } catch (const std::out_of_range&) {
-        refuse("is damaged");
-    }
-    return rows;
 }
 
 }  // namespace stillcoat::present

@@ -1,5 +1,5 @@
 #pragma once
-/// A sweep as CSV and JSON, and the file that keeps an unfinished one.
+/// A sweep as CSV and JSON.
 
 #include <optional>
 #include <string>
@@ -18,16 +18,7 @@ std::string unit_ending(const std::string& unit);
 /// is an empty cell.
 std::string sweep_csv(const assess::SweepPlan& plan, const SweepRows& rows);
 
-/// @param design_file as given on the command line
 std::string sweep_json(const stack::Design& design, const assess::SweepPlan& plan,
-                       const SweepRows& rows);
-
-/// What is done of a sweep, to go on with.
-std::string unfinished_sweep(const assess::SweepPlan& plan, const SweepRows& rows);
-
-/// The rows of such a text. @param file for messages
-/// @throws core::InputError when it is none, or belongs to another sweep
-SweepRows read_unfinished_sweep(const std::string& text, const std::string& file,
-                                const assess::SweepPlan& plan);
+                       const SweepRows& rows, const assess::SweepRemarks& remarks);
 
 }  // namespace stillcoat::present

@@ -43,6 +43,11 @@ void read_block(TableReader& reader, const materials::Library& library,
         const std::string name = fmt::format("layer {} of {}", ++count, reader.name());
         const bool inner = node->find("layers") != nullptr || node->find("repeat") != nullptr;
         TableReader entry(*node, inner ? "the block " + name : name, reader.problems());
+        if (inner && entry.has("material") && !entry.has("layers")) {
+            entry.problem_at("material", entry.name() + " repeats, so it needs layers of its own",
+                             "write { repeat = 4, layers = [ { material = ... } ] }");
+            return;
+        }
         if (inner) {
             read_block(entry, library, block);
         } else {
@@ -60,11 +65,6 @@ void read_block(TableReader& reader, const materials::Library& library,
         return;
     }
     for (int i = 0; i < repeat; ++i) layers.insert(layers.end(), block.begin(), block.end());
-}
-
-/// A file named in a design stands beside it.
-std::string beside(const std::string& design, const std::string& file) {
-    return (std::filesystem::path(design).parent_path() / file).string();
 }
 
 /// The layers in the file that `table` names, beside the design file.
@@ -95,6 +95,10 @@ void read_table_key(TableReader& reader, const materials::Library& library, Coat
 
 // An atom is 1e-10 m; above a metre no layer is one.
 core::Limits admissible::layer_thickness() { return core::between(1e-15, 1.0, "m"); }
+
+std::string beside(const std::string& design, const std::string& file) {
+    return (std::filesystem::path(design).parent_path() / file).string();
+}
 
 void read_blocks(TableReader& reader, const std::string& key, const materials::Library& library,
                  std::vector<LayerInput>& layers) {

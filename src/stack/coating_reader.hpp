@@ -22,6 +22,9 @@ Coating read_coating(core::TableReader& reader, double wavelength,
 void read_blocks(core::TableReader& reader, const std::string& key,
                  const materials::Library& library, std::vector<LayerInput>& layers);
 
+/// The path of a file that a design names: it stands beside it.
+std::string beside(const std::string& design, const std::string& file);
+
 /// What to do about a name that is none of `names`.
 std::string known_materials_hint(const std::string& name, const std::vector<std::string>& names);
 

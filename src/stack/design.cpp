@@ -154,7 +154,10 @@ void read_overrides(TableReader& document, Design& design, materials::Library& l
         }
         materials::override_properties(library, name, entry.value, document.problems());
         Override replaced{name, {}};
-        for (const core::Entry& value : entry.value.entries) replaced.keys.push_back(value.key);
+        for (const core::Entry& value : entry.value.entries) {
+            const Node* alternative = value.value.find("alternative");
+            replaced.values.push_back({value.key, alternative != nullptr ? alternative->text : ""});
+        }
         design.overrides.push_back(std::move(replaced));
     }
 }
@@ -227,6 +230,22 @@ Design read_design(core::Document document, materials::Library& library) {
     check_effort(design, problems);
     problems.throw_if_any();
     return design;
+}
+
+std::vector<std::string> files_beside(const Design& design) {
+    std::vector<std::string> files;
+    if (!design.coating.table.empty()) {
+        files.push_back(beside(design.document.name, design.coating.table));
+    }
+    const Node* materials = design.document.root.find("material");
+    if (materials == nullptr) return files;
+    for (const core::Entry& material : materials->entries) {
+        for (const core::Entry& property : material.value.entries) {
+            const Node* curve = property.value.find("wavelength_csv");
+            if (curve != nullptr) files.push_back(beside(design.document.name, curve->text));
+        }
+    }
+    return files;
 }
 
 std::vector<double> frequencies(const Band& band) {

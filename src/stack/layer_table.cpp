@@ -12,10 +12,18 @@ constexpr int nanometre = -9;  // power of ten
 
 /// The number column, when there is one, must count from 1: a table that was cut or sorted is
 /// found.
-void check_number(const core::Cell& cell, std::size_t expected, core::Problems& problems) {
-    if (cell.text == std::to_string(expected)) return;
+bool check_number(const core::Cell& cell, std::size_t expected, core::Problems& problems) {
+    if (cell.text == std::to_string(expected)) return true;
     problems.add(cell.place, fmt::format("layer {} is numbered \"{}\"", expected, cell.text),
                  "layers count from 1, the outermost; leave the column out if it does not matter");
+    return false;
+}
+
+/// The limits of a layer in the unit of the column.
+core::Limits in_nanometres() {
+    core::Limits limits = admissible::layer_thickness();
+    limits.words = "from 1e-6 nm to 1e9 nm";
+    return limits;
 }
 
 void check_known(const core::Cell& cell, const materials::Library& library,
@@ -63,6 +71,7 @@ std::vector<LayerInput> read_layer_table(const std::string& path, const material
                              problems)) {
         return layers;
     }
+    if (table.rows.empty() && !problems.empty()) return layers;
     if (table.rows.empty() || table.rows.size() > most_layers) {
         problems.add(table.header.front().place,
                      table.rows.empty()
@@ -74,13 +83,16 @@ std::vector<LayerInput> read_layer_table(const std::string& path, const material
     const std::size_t material = *table.column("material");
     const std::size_t thickness = *table.column("thickness_nm");
     const auto number = table.column("number");
+    bool counted = true;  // the first break of the numbers says it all
     for (const std::vector<core::Cell>& row : table.rows) {
-        if (number) check_number(row[*number], layers.size() + 1, problems);
+        if (number && counted) {
+            counted = check_number(row[*number], layers.size() + 1, problems);
+        }
         check_known(row[material], library, problems);
-        layers.push_back({row[material].text, std::nullopt,
-                          core::number_in(row[thickness], nanometre, admissible::layer_thickness(),
-                                          "thickness_nm", problems),
-                          nullptr, row[material].place});
+        layers.push_back(
+            {row[material].text, std::nullopt,
+             core::number_in(row[thickness], nanometre, in_nanometres(), "thickness_nm", problems),
+             nullptr, row[material].place});
     }
     return layers;
 }

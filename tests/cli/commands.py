@@ -135,9 +135,13 @@ for cap in ("none", "quarter-wave", "half-wave"):
         expect(document["transmittance"] <= limit, f"draft {cap} {target}: misses its transmittance")
         counts = [line for line in drafted.stderr.splitlines() if "pairs transmit" in line]
         expect(len(counts) in (2, 3) and "<- drafted" in counts[-2], f"draft {cap} {target}: {drafted.stderr}")
-two = run("draft", "--high", "tantala-ibs", "--low", "silica-ibs", "--substrate", "silicon",
-          "--wavelength", "1397 nm", "--antireflecting")
-expect(json.loads(run("appraise", "-", "--json", stdin=two.stdout).stdout)["reflectance"] < 1e-9, "two layers reflect")
+for temperature in ("295 K", "124 K"):
+    two = run("draft", "--high", "tantala-ibs", "--low", "silica-ibs", "--substrate", "silicon",
+              "--wavelength", "1397 nm", "--antireflecting", "--temperature", temperature)
+    expect(json.loads(run("appraise", "-", "--json", stdin=two.stdout).stdout)["reflectance"] < 1e-9, "two layers reflect")
+never = run("draft", "--high", "amorphous-silicon", "--low", "silica-ibs", "--substrate", "silicon",
+            "--wavelength", "1550 nm", "--antireflecting", code=3)
+expect("would have to be at most" in never.stderr, f"impossible pair: {never.stderr}")
 smallest = run("draft").stdout
 expect("[coating]" in smallest and run("appraise", "-", stdin=smallest).stdout, "the smallest example")
 
@@ -147,7 +151,7 @@ with tempfile.TemporaryDirectory() as folder:
     words = ["sweep", design, "--over", "frequency=1Hz:10kHz:3000:log"]
     whole = run(*words, "--out", folder / "whole.csv")
     started = subprocess.Popen([program, *map(str, words), "--out", str(folder / "cut.csv")], stderr=subprocess.PIPE, text=True)
-    time.sleep(1.0)
+    time.sleep(0.6)
     started.send_signal(signal.SIGINT)
     stopped = started.communicate(timeout=60)[1]
     expect(started.returncode == 3 and "with --resume goes on" in stopped, f"interrupted sweep: {started.returncode}, {stopped}")
@@ -159,7 +163,7 @@ with tempfile.TemporaryDirectory() as folder:
     changed.write_text(design.read_text().replace('[environment]\ntemperature = "295 K"', '[environment]\ntemperature = "296 K"'))
     expect(changed.read_text() != design.read_text(), "the design was not changed")
     late = run("sweep", changed, *words[2:], "--out", folder / "cut.csv", "--resume", code=2)
-    expect("comes out differently now" in late.stderr, "--resume of a changed design")
+    expect("has changed" in late.stderr, "--resume of a changed design")
     run(*words, "--out", folder / "cut.csv", "--resume")
     expect((folder / "cut.csv").read_bytes() == (folder / "whole.csv").read_bytes(), "resumed sweep differs")
     expect(not (folder / "cut.csv.unfinished").exists(), "unfinished file left behind")
@@ -172,7 +176,7 @@ with tempfile.TemporaryDirectory() as folder:
     titles = [e.text for e in xml.etree.ElementTree.fromstring(svg).iter("{http://www.w3.org/2000/svg}title")]
     for name in ("coating Brownian", "thermal, all coherent", "substrate Brownian", "sum"):
         expect(name in titles, f"noise figure has no curve {name}: {titles}")
-    shown = list(csv.DictReader(open(folder / "noise.csv")))
+    shown = list(csv.DictReader(open(folder / "noise.svg.csv")))
     total_column = next(name for name in shown[0] if name.startswith("sum"))
     expect(len(shown) == len(table) and all(abs(float(a[total_column]) ** 2 / float(b["total_psd_m2_per_Hz"]) - 1) < 1e-14
                                             for a, b in zip(shown, table)), "data beside the noise figure")
@@ -183,7 +187,7 @@ with tempfile.TemporaryDirectory() as folder:
     expect({"reflectance", "transmittance", "absorptance"} <= set(titles), f"spectrum: {titles}")
     run("sweep", design, "--over", "wavelength=1300nm:1500nm:9", "--over", "silica-ibs.thickness=0.98:1.02:5",
         "--show", "transmittance", "--figure", folder / "map.png")
-    expect(len((folder / "map.csv").read_text().splitlines()) == 46, "map data")
+    expect(len((folder / "map.png.csv").read_text().splitlines()) == 46, "map data")
     bare = subprocess.run([program, "appraise", str(design), "--figure", str(folder / "x.svg")], capture_output=True,
                           text=True, env={"PATH": str(folder)})
     expect(bare.returncode == 2 and "gnuplot" in bare.stderr and not (folder / "x.svg").exists(), f"no gnuplot: {bare.stderr}")
@@ -196,6 +200,68 @@ expect(run("--help", "units").stdout == run("units").stdout and "GPa" in run("un
 expect("stillcoat 0" in run("--version").stdout, "version")
 expect("17.8" in run("materials", "silicon").stdout, "a material's page shows its table")
 expect("9.23" in run("materials", "silicon", "thermal_expansion", "--temperature", "124 K").stdout, "a property")
+
+# A material file to fill in is accepted as it stands, filled in, and with each form of a datum.
+with tempfile.TemporaryDirectory() as folder:
+    folder = pathlib.Path(folder)
+    run("materials", "--template", "--out", folder / "my-film.toml")
+    template = (folder / "my-film.toml").read_text()
+    expect(run("materials", "--template").stdout == template, "the template differs from its file")
+    expect("not in references.toml" in run("materials", "--check", folder / "my-film.toml", code=2).stderr,
+           "the template without its references")
+    head = template.split("# 2. ")[1].split("# 3. ")[0].splitlines()[1:]
+    (folder / "references.toml").write_text("\n".join(line[1:].strip() for line in head) + "\n")
+    (folder / "n.csv").write_text("wavelength_nm,refractive_index\n600,2.12\n1550,2.06\n")
+    expect("no problems, 1 property table" in run("materials", "--check", folder / "my-film.toml").stdout, "the template")
+    uncommented = "\n".join(line[1:] if line[:1] == "#" and line[1:2].strip() else line for line in template.splitlines())
+    def without(text, *tables):
+        parts = text.split("\n[")
+        return "\n[".join(part for part in parts if part.split("]")[0] not in tables)
+    for left_out, count in ((("loss_angle_bulk", "loss_angle_shear", "absorption_coefficient", "unknown", "mixture"), 12),
+                            (("loss_angle", "extinction_coefficient", "unknown", "mixture"), 13),
+                            (("loss_angle", "extinction_coefficient", "photoelastic_p11", "refractive_index"), 12)):
+        (folder / "my-film.toml").write_text(without(uncommented, *left_out))
+        said = run("materials", "--check", folder / "my-film.toml").stdout
+        expect(f"no problems, {count} property tables" in said, f"the template without {left_out}: {said}")
+    forms = template.split("in one of these forms")[1].split("# Its width")[0]
+    index = template.split("\nwavelength_nm = [600, 800")[0] + "\n"
+    rest = template.split("2.06]\n", 1)[1]
+    for form in ("value = 2.10", 'same_as = "tantala-ibs"\nfactor = 1.02', "wavelength_nm = [600, 1100]\nvalues = [2.1, 2.0]",
+                 'wavelength_csv = "n.csv"', "sellmeier_strength = [1.1]\nsellmeier_resonance_um = [0.09]",
+                 "cauchy = [2.05, 0.015, 0.0]"):
+        expect(form.split("\n")[0] in forms, f"the template does not name {form}")
+        text = index + form + "\n" + rest.replace("[600, 1550]", "[600, 1100]")
+        (folder / "my-film.toml").write_text(text.replace('medium = "vacuum"', "") if "same_as" in form else text)
+        run("materials", "--check", folder / "my-film.toml")
+
+    # A mixture as a user's file, in a design.
+    (folder / "my-film.toml").write_text("""name = "my-film"
+title = "silica with a quarter of titania"
+form = "film"
+composition = "SiO2 and TiO2"
+[mixture]
+of = ["silica-ibs", "titania-ibs"]
+volume_fraction = 0.25
+source = ["bench-note"]
+""")
+    expect("no problems, 8 property tables" in run("materials", "--check", folder / "my-film.toml").stdout, "a mixture")
+    page = run("materials", "my-film", "--materials", folder).stdout
+    expect("75 % silica-ibs and 25 % titania-ibs by volume" in page and "Bruggeman, Ann. Phys. 416" in page, page)
+    page = run("materials", "my-film", "youngs_modulus", "--materials", folder).stdout
+    expect("R. Hill, Proc. Phys. Soc." in page and "Young's modulus of titania-ibs" in page, page)
+    (folder / "designs").mkdir()
+    mixed = folder / "designs/mixed.toml"
+    mixed.write_text(design.read_text().replace("titania-tantala-ibs", "my-film"))
+    page = " ".join(run("appraise", mixed, "--materials", folder).stdout.split())
+    expect("a mixture's loss angle follows from no rule: give it" in page and "P. S. Turner" in page, page)
+
+# The library's value times a factor: both sources stand in the result.
+factor = design.read_text() + '[material."silica-ibs"]\nyoungs_modulus = { times = 1.1, source = "witness sample (invented)" }\n'
+changed = " ".join(run("appraise", "-", stdin=factor).stdout.split())
+expect("witness sample (invented): Young's modulus of silica-ibs (the library's times 1.1" in changed
+       and "Young's modulus of silica-ibs (library)" in changed, changed)
+expect("unknown material" not in changed and "as silica-ibs (library)" not in changed, "the kept name in the wrong place")
+expect("(library)" not in run("materials").stdout, "the kept name is listed")
 
 print("\n".join(faults) or "all command lines as expected")
 sys.exit(1 if faults else 0)

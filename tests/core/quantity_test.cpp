@@ -50,6 +50,17 @@ TEST(Quantity, WithAWrongKindOfUnitIsRefused) {
         expect_refused("5 " + std::string(unit), kind::frequency,
                        "\"" + std::string(unit) + "\" is not a unit of frequency");
     }
+    expect_refused("333 1/m", kind::length, "\"1/m\" is not a unit of length");
+    for (const char* text : {"1064 nm 2", "1064 nm (2)", "1064 nm.2", "1064 2nm"}) {
+        EXPECT_FALSE(read_quantity(text, kind::length).ok) << text;
+    }
+    for (const char* text : {"0.1 sr", "0.1 rad2", "1 rad.sr"}) {
+        EXPECT_FALSE(read_quantity(text, kind::angle).ok) << text;
+    }
+    EXPECT_DOUBLE_EQ(value("5 W m-1 K-1", kind::thermal_conductivity), 5.0);
+    EXPECT_DOUBLE_EQ(value("5 kg m^-3", kind::density), 5.0);
+    expect_refused("1 s", kind::frequency, "\"s\" is not a unit of frequency");
+    expect_refused("1 K", kind::per_kelvin, "\"K\" is not a unit of change per kelvin");
     expect_refused("1 turn", kind::number, "\"turn\" is not a unit of pure number");
     expect_refused("5 %", kind::angle, "\"%\" is not a unit of angle");
     expect_refused("5 nm2", kind::length, "\"nm2\" is not a unit of length");

@@ -73,19 +73,22 @@ TEST_F(CurveFile, GivesIndexAndExtinctionWithinItsWavelengths) {
 TEST_F(CurveFile, SaysWhereItCannotBeRead) {
     const std::string header = "wavelength_nm,refractive_index\n";
     EXPECT_EQ(read(header + "900,2.1\n1000,abc\n", index_),
-              Words{"run.csv:3:6 \"abc\" is not a number"});
+              Words{"run.csv:3:6 \"abc\" is not a number for refractive_index"});
     EXPECT_EQ(read(header + "900,2.1\n\n900,2.1\n", index_),
               Words{"run.csv:4:1 wavelengths must increase from line to line"});
     EXPECT_EQ(read(header + "900,2.1\n1000, -2\n", index_),
               Words{"run.csv:3:7 refractive_index is -2"});
     EXPECT_EQ(read(header + "900,2.1,3\n", index_),
-              Words{"run.csv:2:9 this line has 3 cells, the first one 2"});
+              Words{"run.csv:2:1 3 cells where the header has 2"});
     EXPECT_EQ(read(header + "900,nan\n1000,2\n", index_),
-              Words{"run.csv:2:5 refractive_index is nan"});
+              Words{"run.csv:2:5 \"nan\" is not a number for refractive_index"});
     EXPECT_EQ(read("wavelength,refractive_index\n", index_),
-              Words{"run.csv:1:1 unknown column \"wavelength\""});
-    EXPECT_EQ(read("wavelength_nm,extinction_coefficient\n", index_),
-              Words{"run.csv:1:1 column refractive_index is missing"});
+              (Words{"run.csv:1:1 unknown column \"wavelength\"",
+                     "run.csv:1:1 there is no column \"wavelength_nm\""}));
+    EXPECT_EQ(
+        read("wavelength_nm,extinction_coefficient\n", index_),
+        (Words{"design.toml:1:20 the column extinction_coefficient of run.csv would not be read",
+               "run.csv:1:1 there is no column \"refractive_index\""}));
     EXPECT_EQ(read(header + "900,2.1\n", index_).size(), 1u);
     EXPECT_EQ(read("", index_).size(), 1u);
     EXPECT_EQ(read("",
@@ -108,6 +111,21 @@ TEST_F(CurveFile, NeedsAMediumAndAnOpticalProperty) {
                    "medium in refractive_index of film is \"unstated\"");
     test::mentions(read(csv, "density = { wavelength_csv = \"run.csv\", source = \"run 7\" }"),
                    "wavelength_csv is no form of density");
+}
+
+TEST_F(CurveFile, DoesNotLoseAColumnThatNobodyReads) {
+    test::mentions(read("wavelength_nm,refractive_index,extinction_coefficient\n900,2.1,1e-5\n"
+                        "1000,2.0,1e-5\n",
+                        index_),
+                   "the column extinction_coefficient of run.csv would not be read");
+}
+
+TEST_F(CurveFile, RefusesACurveThatSwings) {
+    const std::string jump =
+        "wavelength_nm,refractive_index\n900,2.07\n1000,2.06\n1060,2.055\n1061,2.50\n1070,2.05\n"
+        "1200,2.04\n";
+    test::mentions(read(jump, index_),
+                   "the curve through wavelength_csv in refractive_index of film");
 }
 
 }  // namespace

@@ -226,7 +226,7 @@ TEST(IndexFormula, IsCheckedTypeByType) {
 
 TEST(MaterialFile, NamesOnlyTheFirstOfManyUnknownSources) {
     std::string sources;
-    for (int i = 0; i < 2000; ++i) sources += "\"unknown" + std::to_string(i) + "\", ";
+    for (int i = 0; i < 2000; ++i) sources += "\"unknown" + std::to_string(i) + "\",\n";
     const auto list = problems_of(
         "[density]\nvalue = 2\nunit = \"g/cm3\"\nat_temperature_K = 295\nuncertainty = 1\n"
         "source = [" +

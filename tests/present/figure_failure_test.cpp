@@ -47,13 +47,13 @@ TEST_F(FigureFailure, AFileThatIsKeptIsSeenBeforeGnuplotStarts) {
     pretend_gnuplot(": > '" + file("started") + "'; echo picture");
     std::ofstream(file("a.svg")) << "mine";
     expect_part(refusal(line(), file("a.svg"), Existing::keep), "a.svg: exists already");
-    EXPECT_FALSE(fs::exists(file("a.csv")));
-    std::ofstream(file("b.csv")) << "mine";
-    expect_part(refusal(line(), file("b.pdf"), Existing::keep), "b.csv: exists already");
+    EXPECT_FALSE(fs::exists(file("a.svg.csv")));
+    std::ofstream(file("b.pdf.csv")) << "mine";
+    expect_part(refusal(line(), file("b.pdf"), Existing::keep), "b.pdf.csv: exists already");
     EXPECT_FALSE(fs::exists(file("b.pdf")));
     fs::create_directory(file("c.png"));
     expect_part(refusal(line(), file("c.png"), Existing::replace), "is a directory");
-    EXPECT_EQ(content_of(file("a.svg")) + content_of(file("b.csv")), "minemine");
+    EXPECT_EQ(content_of(file("a.svg")) + content_of(file("b.pdf.csv")), "minemine");
     EXPECT_FALSE(fs::exists(file("started")));
     EXPECT_EQ(refusal(line(), file("a.svg"), Existing::replace), "");
     EXPECT_TRUE(fs::exists(file("started")));
@@ -94,7 +94,7 @@ TEST_F(FigureFailure, WhenThePictureCannotBeWrittenTheDataAreNotLeft) {
     // gnuplot's run is when somebody else takes the name.
     pretend_gnuplot(": > '" + file("a.svg") + "'; echo picture");
     expect_part(refusal(line(), file("a.svg"), Existing::keep), "exists already");
-    EXPECT_FALSE(fs::exists(file("a.csv")));
+    EXPECT_FALSE(fs::exists(file("a.svg.csv")));
     pretend_gnuplot("echo picture");
     expect_part(refusal(line(), file("none/b.svg"), Existing::keep), "cannot create");
     EXPECT_FALSE(fs::exists(file("none")));

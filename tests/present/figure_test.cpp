@@ -31,7 +31,7 @@ std::string drawn(const Picture& picture, const fs::path& folder) {
     const std::string svg = content_of(path("a.svg"));
     EXPECT_TRUE(is_well_formed(svg));
     EXPECT_NE(svg.find("width=\"325\""), std::string::npos);  // 8.6 cm at 96 dots per inch
-    EXPECT_EQ(content_of(path("a.csv")), figure_data_csv(picture));
+    EXPECT_EQ(content_of(path("a.svg.csv")), figure_data_csv(picture));
     return svg;
 }
 
@@ -254,6 +254,13 @@ TEST_F(Drawing, TheSameFigureGivesTheSameBytes) {
         draw(noise_figure(4), file("a" + ending), Existing::replace);
         EXPECT_NE(first, content_of(file("a" + ending))) << ending;
     }
+}
+
+TEST_F(Drawing, ATitleCannotBreakTheSvg) {
+    Figure figure = plain_figure({curve("a]]>b", {1.0, 2.0}, {1.0, 2.0})});
+    figure.title = "x ]]> y <g> & \"]]>\"";
+    draw(figure, file("a.svg"), core::Existing::replace);
+    EXPECT_TRUE(is_well_formed(content_of(file("a.svg"))));
 }
 
 TEST_F(Drawing, DataReadBackAsTheSameDoubles) {

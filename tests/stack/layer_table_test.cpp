@@ -96,7 +96,7 @@ TEST_F(LayerTable, RefusesWhatItCannotReadAndSaysWhere) {
         "t.csv:2:1: unknown material \"silica-ib\"\n     2 | silica-ib,10\n       | ^^^^^^^^^\n"
         "       did you mean \"silica-ibs\"? `stillcoat materials` lists all\n"
         "t.csv:3:13: thickness_nm is -1\n     3 | tantala-ibs,-1\n       |             ^^\n"
-        "       it must be from 1e-15 m to 1 m\n"
+        "       it must be from 1e-6 nm to 1e9 nm\n"
         "t.csv:4:12: \"ten\" is not a number for thickness_nm\n     4 | silica-ibs,ten\n"
         "       |            ^^^\n       a decimal number such as 241.3 is expected");
     EXPECT_EQ(

@@ -4,6 +4,7 @@
 
 #include <optional>
 #include <string>
+#include <vector>
 
 #include "stillcoat/materials/library.hpp"
 
@@ -19,6 +20,8 @@ struct DraftRequest {
     std::string temperature;           ///< "295 K"
     Cap cap = Cap::none;               ///< of the low index, on the light's side
     std::string schema;                ///< path for editors; empty: no such line
+    /// Alternatives of the library to take, "silicon.refractive_index=visible".
+    std::vector<std::string> alternatives{};
 };
 
 /// What a number of pairs reaches.

@@ -75,4 +75,11 @@ bool run_sweep(const stack::Design& design, const materials::Library& library,
                const SweepPlan& plan, std::vector<std::optional<SweepRow>>& rows,
                const std::function<bool(std::size_t)>& report);
 
+/// What an appraisal warns of, and which values are by analogy, at the corners of a sweep.
+struct SweepRemarks {
+    std::vector<std::string> warnings, analogies;
+};
+SweepRemarks sweep_remarks(const stack::Design& design, const materials::Library& library,
+                           const SweepPlan& plan);
+
 }  // namespace stillcoat::assess

@@ -14,6 +14,7 @@ namespace stillcoat::core {
 
 inline constexpr std::uintmax_t largest_file_bytes = 8'000'000;
 inline constexpr int deepest_nesting = 64;
+inline constexpr std::size_t longest_line = 20'000;  ///< bytes
 
 struct Entry;
 
@@ -56,8 +57,12 @@ struct Document {
 /// @throws InputError when it is missing, a directory, unreadable or larger than the limit.
 std::string read_text_file(const std::string& path);
 
+/// @throws InputError when a line is longer than the limit, for which the readers would need time
+/// or memory with the square of its length.
+void check_line_lengths(const std::string& text, const std::string& name);
+
 /// The document in `text`; `name` stands in messages.
-/// @throws InputError when the text is not TOML or nests deeper than the limit.
+/// @throws InputError when the text is not TOML, nests deeper or has a longer line than the limit.
 Document parse_document(const std::string& text, const std::string& name);
 
 /// read_text_file and parse_document in one.

@@ -13,4 +13,9 @@ enum class Existing { keep, replace };
 /// @throws InputError when the file exists and is to be kept, or cannot be written.
 void write_file(const std::string& path, const std::string& content, Existing existing);
 
+/// What would make write_file fail for sure, found before any work is done: a folder that is not
+/// there or not writable, a file that is to be kept, a directory.
+/// @throws InputError
+void check_writable(const std::string& path, Existing existing);
+
 }  // namespace stillcoat::core

@@ -1,6 +1,7 @@
 #pragma once
 /// Tables in CSV files: comma-separated, one header line whose names end with their units.
-/// Format: RFC 4180 (Y. Shafranovich, 2005), with either line ending; empty lines are skipped.
+/// Format: RFC 4180 (Y. Shafranovich, 2005), with either line ending; empty lines
+/// and lines that begin with # are skipped.
 
 #include <optional>
 #include <string>
@@ -10,6 +11,8 @@
 #include "stillcoat/core/reader.hpp"
 
 namespace stillcoat::core {
+
+inline constexpr std::size_t most_columns = 100;
 
 struct Cell {
     std::string text;  ///< without its quotes and the blanks around it

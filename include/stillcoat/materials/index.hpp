@@ -28,7 +28,9 @@ struct IndexValue {
 /// An entry with a temperature of its own (at_temperature_K), a same_as too, is carried from there
 /// by ∫(dn/dT)dT. Where dn/dT is unknown the index stays what it is within the entry's range of
 /// temperature, with a note, and is missing outside it. An entry without a temperature of its own
-/// holds in its range of temperature, or by its rule `constant` beyond it.
+/// holds in its range of temperature, or by its rule `constant` beyond it. That of a mixture
+/// follows from its constituents at the same temperature; a constituent whose extinction is unknown
+/// counts as transparent there, with a note.
 /// @param wavelength vacuum [m], within the entry's range; nothing is continued in wavelength
 /// @param temperature [K]
 IndexValue index_at(const Library& library, const std::string& material, double wavelength,
@@ -36,8 +38,8 @@ IndexValue index_at(const Library& library, const std::string& material, double 
 
 /// An extinction coefficient with its derivatives with respect to angular frequency [s, s²]; its
 /// value is that of `extinction`, whatever factor or rule went into it. The derivatives are those
-/// of its table in wavelength, of k = aλ/4π, or 0 for a single number and for a table outside its
-/// wavelengths.
+/// of its table in wavelength, of k = aλ/4π, of the rule of a mixture, or 0 for a single number and
+/// for a table outside its wavelengths.
 /// @param extinction a value with a number
 /// @param per_length it was derived from an absorption coefficient
 /// @param wavelength vacuum [m], the one at which `extinction` was evaluated

@@ -98,9 +98,16 @@ struct Cauchy {
 struct SameAs {
     std::string material;
     double factor;
+    bool own = false;  ///< the material's own datum in the library, which a design file multiplies
 };
-using Curve =
-    std::variant<Scalar, TemperatureTable, WavelengthTable, PowerLaw, Sellmeier, Cauchy, SameAs>;
+/// Follows from two other materials by the rule of its property, see mixture.hpp.
+struct Mixed {
+    std::string first, second;
+    double fraction;                             ///< volume fraction of the second, from 0 to 1
+    std::optional<double> fraction_uncertainty;  ///< standard uncertainty; absent: taken as exact
+};
+using Curve = std::variant<Scalar, TemperatureTable, WavelengthTable, PowerLaw, Sellmeier, Cauchy,
+                           SameAs, Mixed>;
 
 /// References from property to property that are followed at most.
 inline constexpr int deepest_reference = 64;
@@ -151,7 +158,7 @@ struct Entry {
     std::optional<double> continued_to;
     std::optional<Beyond> beyond;
     std::optional<ColdTable> cold;
-    bool from_design = false;  ///< stated in a design file
+    bool from_design = false;  ///< a value of its own in a design file
 };
 
 struct Alternative {

@@ -7,6 +7,7 @@
 
 #include "stillcoat/materials/property.hpp"
 #include "stillcoat/materials/provenance.hpp"
+#include "stillcoat/numerics/jet.hpp"
 
 namespace stillcoat::materials {
 
@@ -23,6 +24,9 @@ struct Value {
     const Entry* entry = nullptr;  ///< the datum of the number; of a same_as the other material's
     std::vector<Basis> bases;      ///< all data that had a say, each once; empty without a number
     std::string analogy;           ///< how the rule beyond the data gave it; empty within the range
+    /// Of an extinction coefficient that follows from two others: with its derivatives with respect
+    /// to angular frequency, up to a factor; see with_dispersion.
+    std::optional<numerics::Jet<double>> derivatives;
     Width width;  ///< in the unit of the number; of a same_as its own when stated, else the other's
     bool from_cold_table = false;  ///< the entry's cold table was used, at least in part
     /// A loss angle outside the frequencies that the data in `bases` state (see frequencies_of).

@@ -81,9 +81,13 @@ struct RearFace {
 };
 
 /// Values of one material that the design file replaces.
+struct ReplacedValue {
+    std::string key;          ///< "loss_angle"
+    std::string alternative;  ///< name of the library's alternative; empty: a value of its own
+};
 struct Override {
     std::string material;
-    std::vector<std::string> keys;  ///< "loss_angle"
+    std::vector<ReplacedValue> values;
 };
 
 struct Design {
@@ -102,6 +106,9 @@ struct Design {
 /// Reads a design; values of [material] tables replace those of `library`.
 /// @throws core::InputError with every problem of the file
 Design read_design(core::Document document, materials::Library& library);
+
+/// The table of layers and the curves that a design names, as paths.
+std::vector<std::string> files_beside(const Design& design);
 
 /// Frequencies of the band, evenly spaced in logarithm, ends included [Hz]; one when the ends meet.
 std::vector<double> frequencies(const Band& band);
