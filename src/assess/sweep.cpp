@@ -16,6 +16,12 @@ namespace {
 
 /// Why a result of a mirror is absent.
 std::string lack_of(const Appraisal& appraisal) {
+    for (const PartView& view : appraisal.part) {
+        if (!view.missing.empty()) return "the whole part is not computed: " + view.missing;
+        if (!view.absorptance_missing.empty()) {
+            return "absorptance of the whole part not known: " + view.absorptance_missing;
+        }
+    }
     for (const Face& face : appraisal.faces) {
         for (const NoiseTerm& term : face.noise.terms) {
             if (!term.missing.empty()) return term.title + " not computed: " + term.missing;

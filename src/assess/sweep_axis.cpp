@@ -186,6 +186,15 @@ std::size_t count_of(const std::string& text, const std::string& axis) {
                            fmt::format("a whole number from 2 to {}", most_sweep_points));
 }
 
+void multiply_thickness(std::vector<stack::LayerInput>& layers, const std::string& material,
+                        double factor) {
+    for (stack::LayerInput& layer : layers) {
+        if (layer.material != material) continue;
+        if (layer.quarter_waves) *layer.quarter_waves *= factor;
+        if (layer.thickness) *layer.thickness *= factor;
+    }
+}
+
 }  // namespace
 
 SweepAxis read_axis(const std::string& text, const stack::Design& design,
@@ -246,11 +255,8 @@ void put_value(const SweepAxis& axis, double value, const materials::Library& li
         materials::replace_value(*own, target.material, *target.property, value,
                                  "varied by the sweep");
     } else {
-        for (stack::LayerInput& layer : design.coating.layers) {
-            if (layer.material != target.material) continue;
-            if (layer.quarter_waves) *layer.quarter_waves *= value;
-            if (layer.thickness) *layer.thickness *= value;
-        }
+        multiply_thickness(design.coating.layers, target.material, value);
+        if (design.rear_face) multiply_thickness(design.rear_face->layers, target.material, value);
     }
 }
 

@@ -113,6 +113,31 @@ void for_faces(const stack::Design& design, Each&& each) {
     each("_p", ", p", std::size_t{1});
 }
 
+/// A result of the whole part, which a design with a rear face has.
+struct PartResult {
+    const char* key;
+    const char* title;
+    double optics::PartResponse::*member;
+    bool needs_absorption;
+};
+const PartResult part_results[] = {
+    {"part_reflectance", "reflectance of the whole part", &optics::PartResponse::reflectance,
+     false},
+    {"part_transmittance", "transmittance of the whole part", &optics::PartResponse::transmittance,
+     false},
+    {"part_absorptance", "absorptance of the whole part", &optics::PartResponse::absorptance, true},
+};
+
+std::optional<double> part_value(const PartResult& result, const Appraisal& appraisal,
+                                 std::size_t wanted) {
+    if (appraisal.part.empty()) return std::nullopt;
+    const PartView& view = appraisal.part[std::min(wanted, appraisal.part.size() - 1)];
+    if (!view.response || (result.needs_absorption && !view.absorptance_missing.empty())) {
+        return std::nullopt;
+    }
+    return (*view.response).*result.member;
+}
+
 /// At normal incidence one face stands for both.
 const Face& face_of(const Appraisal& appraisal, std::size_t wanted) {
     return appraisal.faces[std::min(wanted, appraisal.faces.size() - 1)];
@@ -139,6 +164,16 @@ std::vector<Source> sources(const stack::Design& design) {
                   false},
                  [get = result.get, face](const Appraisal& a) { return get(face_of(a, face)); }});
         });
+    }
+    if (design.rear_face) {
+        for (const PartResult& result : part_results) {
+            for_faces(design, [&](const char* ending, const char* words, std::size_t face) {
+                list.push_back(
+                    {{std::string(result.key) + ending, std::string(result.title) + words, "1",
+                      false},
+                     [&result, face](const Appraisal& a) { return part_value(result, a, face); }});
+            });
+        }
     }
     list.push_back({{"coating_thickness_m", "thickness of the coating", "m", false},
                     [](const Appraisal& a) { return std::optional(a.mirror.coating_thickness); }});

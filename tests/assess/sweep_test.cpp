@@ -122,6 +122,37 @@ TEST(Sweep, OverAnglesShowsBothPolarisationsAndTheirMean) {
     EXPECT_EQ(refusal("angle=0deg:60deg:3"), "--over angle: the design states no polarisation");
 }
 
+TEST(Sweep, ShowsTheWholePartAndVariesBothItsCoatings) {
+    const std::string part =
+        "[rear_face]\n[[rear_face.block]]\nlayers = [ { material = \"silica-ibs\", quarter_waves = "
+        "1 "
+        "} ]\n";
+    std::string text = mirror_text(quarter_wave_pairs, part);
+    const std::string body = "[mirror]\n";
+    text.insert(text.find(body) + body.size(), "diameter = \"5 cm\"\nthickness = \"1 cm\"\n");
+    const auto read = test::read_design(text);
+    const Rows rows =
+        swept(read, plan_of(read, {"silica-ibs.thickness=0.9:1.1:3"},
+                            {"part_reflectance", "part_transmittance", "reflectance"}));
+    for (std::size_t i = 0; i < 3; ++i) {
+        test::ReadDesign changed = read;
+        const double factor = 0.9 + 0.1 * static_cast<double>(i);
+        for (auto* layers : {&changed.design.coating.layers, &changed.design.rear_face->layers}) {
+            for (stack::LayerInput& layer : *layers) {
+                if (layer.material == "silica-ibs") *layer.quarter_waves *= factor;
+            }
+        }
+        const assess::Appraisal one = appraised(changed);
+        ASSERT_TRUE(one.part.at(0).response.has_value());
+        EXPECT_NEAR(*rows[i]->values[0], one.part[0].response->reflectance, 1e-12);
+        EXPECT_NEAR(*rows[i]->values[1] / one.part[0].response->transmittance, 1.0, 1e-9);
+    }
+    EXPECT_NE(rows[0]->values[0], rows[0]->values[2]);
+    const auto without = test::read_design(mirror_text(quarter_wave_pairs));
+    EXPECT_THROW(assess::chosen_outcomes(without.design, {"part_reflectance"}, {}),
+                 core::InputError);
+}
+
 TEST(Sweep, LeavesOutWhatIsNotKnownAndSaysWhy) {
     const auto read = test::read_design(mirror_text(quarter_wave_pairs));
     const Rows rows = swept(read, plan_of(read, {"wavelength=1064nm:30um:2"}, {"transmittance"}));

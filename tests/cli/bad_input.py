@@ -28,6 +28,9 @@ def change(old, new):
     return GOOD.replace(old, new)
 
 
+TABLE = change("""[[coating.block]]
+layers = [ { material = "tantala-ibs", quarter_waves = 1.0 } ]""", """[coating]
+table = "t.csv\"""")
 LAYER = 'layers = [ { material = "tantala-ibs", quarter_waves = 1.0 } ]'
 CASES = {
     "missing-unit": (change('"1 mm"', '"1"'), """\
@@ -434,6 +437,109 @@ density = { times = 2, source = "x" }
     "template-of-a-material": (GOOD, """\
 name excludes --template
 Run with --help for more information.""", ["materials", "silicon", "--template"]),
+    "table-semicolons": ({"design.toml": TABLE, "t.csv": "material;thickness_nm\nsilica-ibs;100,5\n"}, """\
+t.csv:1:1: the columns are not separated by commas
+     1 | material;thickness_nm
+       | ^^^^^^^^^^^^^^^^^^^^^
+       save the table with commas between the cells and points in the numbers"""),
+    "table-unknown-material": ({"design.toml": TABLE, "t.csv": "material,thickness_nm\nsilica,100\n"}, """\
+t.csv:2:1: unknown material "silica"
+     2 | silica,100
+       | ^^^^^^
+       did you mean "silica-ibs"? `stillcoat materials` lists all"""),
+    "table-short-row": ({"design.toml": TABLE, "t.csv": "number,material,thickness_nm\n1,silica-ibs\n"}, """\
+t.csv:2:1: 2 cells where the header has 3
+     2 | 1,silica-ibs
+       | ^
+       quote a cell that holds a comma"""),
+    "table-negative": ({"design.toml": TABLE, "t.csv": "material,thickness_nm\nsilica-ibs,-3\n"}, """\
+t.csv:2:12: thickness_nm is -3
+     2 | silica-ibs,-3
+       |            ^^
+       it must be from 1e-6 nm to 1e9 nm"""),
+    "table-no-number": ({"design.toml": TABLE, "t.csv": 'material,thickness_nm\nsilica-ibs,"100.5 nm"\n'}, """\
+t.csv:2:12: "100.5 nm" is not a number for thickness_nm
+     2 | silica-ibs,"100.5 nm"
+       |            ^^^^^^^^
+       a decimal number such as 241.3 is expected"""),
+    "table-text-behind-quote": ({"design.toml": TABLE, "t.csv": 'material,thickness_nm\n"silica-ibs"x,100\n'}, """\
+t.csv:2:1: text behind the closing quote
+     2 | "silica-ibs"x,100
+       | ^
+       double a quote that belongs to the cell"""),
+    "table-unknown-column": ({"design.toml": TABLE, "t.csv": "material,thicknes_nm\nsilica-ibs,100\n"}, """\
+t.csv:1:1: there is no column "thickness_nm"
+     1 | material,thicknes_nm
+       | ^^^^^^^^
+       needed: material, thickness_nm
+t.csv:1:10: unknown column "thicknes_nm"
+     1 | material,thicknes_nm
+       |          ^^^^^^^^^^^
+       did you mean thickness_nm?
+2 problems"""),
+    "table-row-lost": ({"design.toml": TABLE, "t.csv": "number,material,thickness_nm\n1,silica-ibs,100\n3,silica-ibs,100\n"}, """\
+t.csv:3:1: layer 2 is numbered "3"
+     3 | 3,silica-ibs,100
+       | ^
+       layers count from 1, the outermost; leave the column out if it does not matter"""),
+    "curve-column-unread": ({"design.toml": GOOD + """[material.tantala-ibs]
+refractive_index = { wavelength_csv = "n.csv", medium = "vacuum", source = "x" }
+""", "n.csv": "wavelength_nm,refractive_index,extinction_coefficient\n900,2.1,1e-5\n1200,2.0,1e-5\n"}, """\
+{f}:12:20: the column extinction_coefficient of n.csv would not be read
+    12 | refractive_index = { wavelength_csv = "n.csv", medium = "vacuum", source = "x" }
+       |                    ^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^
+       add extinction_coefficient = { wavelength_csv = "n.csv", ... }, or take the column out"""),
+    "sweep-unknown-quantity": (GOOD, """\
+--over: unknown quantity "wavelenght"
+       did you mean wavelength? known: wavelength, angle, temperature, beam_radius, frequency, layer.N, MATERIAL.thickness, MATERIAL.PROPERTY""", ["sweep", "design.toml", "--over", "wavelenght=1um:2um:3"]),
+    "sweep-one-end": (GOOD, """\
+--over: "wavelength=1um:3" is no NAME=FROM:TO:COUNT
+       for example wavelength=900nm:1300nm:401, or frequency=1Hz:10kHz:81:log""", ["sweep", "design.toml", "--over", "wavelength=1um:3"]),
+    "sweep-other-material": (GOOD, """\
+--over: the mirror holds no hafnia-ibs
+       it holds fused-silica, tantala-ibs""", ["sweep", "design.toml", "--over", "hafnia-ibs.loss_angle=1e-4:2e-4:3"]),
+    "sweep-factor-as-length": (GOOD, """\
+--over tantala-ibs.thickness: "nm" is not a unit of pure number
+       it is a factor on the thickness, such as 0.98; for a thickness in nm vary layer.N""", ["sweep", "design.toml", "--over", "tantala-ibs.thickness=100nm:200nm:3"]),
+    "sweep-right-angle": (GOOD, """\
+--over angle: the design states no polarisation
+       add polarisation = "s", "p" or "unpolarised" to [light]""", ["sweep", "design.toml", "--over", "angle=80deg:95deg:3"]),
+    "sweep-unknown-result": (GOOD, """\
+--show: unknown result "transmitance"
+       did you mean transmittance?""", ["sweep", "design.toml", "--over", "wavelength=1um:2um:3", "--show", "transmitance"]),
+    "sweep-resume-nothing": (GOOD, """\
+--resume needs a design file and --out FILE
+       an interrupted sweep is kept beside its file""", ["sweep", "design.toml", "--over", "wavelength=1um:2um:3", "--resume"]),
+    "sweep-map-of-three": (GOOD, """\
+a map shows one result, here are 2
+       choose one with --show, for example --show transmittance""", ["sweep", "design.toml", "--over", "wavelength=1um:2um:3", "--over", "beam_radius=1mm:2mm:3",
+                                        "--show", "loss,transmittance", "--figure", "m.svg"]),
+    "sweep-into-no-folder": (GOOD, """\
+none/x.csv: cannot create: No such file or directory
+       nothing was written""", ["sweep", "design.toml", "--over", "wavelength=1um:2um:3", "--out", "none/x.csv"]),
+    "figure-ending": (GOOD, """\
+noise.jpg: a figure goes into a file whose name ends in .svg, .pdf or .png
+       for example noise.svg""", ["appraise", "design.toml", "--figure", "noise.jpg"]),
+    "figure-over-input": ({"design.toml": TABLE, "x.svg.csv": "material,thickness_nm\nsilica-ibs,100\n",
+                           "t.csv": "material,thickness_nm\nsilica-ibs,100\n"}, """\
+x.svg.csv: the figure would overwrite x.svg.csv
+       give the figure another name""",
+                          ["sweep", "design.toml", "--over", "wavelength=1um:2um:3", "--out", "x.svg.csv", "--replace", "--figure", "x.svg"]),
+    "draft-without-target": (None, """\
+missing: --transmittance (or --antireflecting)
+       without any option the smallest example is written""", ["draft", "--high", "tantala-ibs", "--low", "silica-ibs", "--substrate", "fused-silica",
+                                          "--wavelength", "1064 nm"]),
+    "draft-indices-exchanged": (None, """\
+the high index (silica-ibs: 1.4530) is not above the low one (tantala-ibs: 2.0500)
+       exchange --high and --low, or choose other materials""", ["draft", "--high", "silica-ibs", "--low", "tantala-ibs", "--substrate", "fused-silica",
+                                             "--wavelength", "1064 nm", "--transmittance", "5 ppm"]),
+    "draft-needs-alternative": (None, """\
+refractive index of silicon is known for 1100–5600 nm only, not at 1064 nm
+       its alternative reaches there: [material."silicon"] refractive_index = { alternative = "visible" }; here: --alternative MATERIAL.PROPERTY=NAME""", ["draft", "--high", "tantala-ibs", "--low", "silica-ibs", "--substrate", "silicon",
+                                             "--wavelength", "1064 nm", "--transmittance", "5 ppm"]),
+    "layers-no-file": (None, """\
+none.toml: no such file
+       check the name and folder""", ["layers", "none.toml"]),
     "full-disk": (GOOD, "/dev/full: cannot write: No space left on device\n       what it holds now is not complete",
                   ["appraise", "design.toml", "--replace", "--out", "/dev/full"]),
     "unknown-command": (GOOD, """\
@@ -517,6 +623,9 @@ def run(program, name):
             file.mkdir()
         elif content == "/proc/self/mem":
             target = content
+        elif isinstance(content, dict):
+            for path, text in content.items():
+                (pathlib.Path(folder) / path).write_text(text)
         elif content is not None:
             file.write_text(content)
         before = sorted(os.listdir(folder))

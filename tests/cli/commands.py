@@ -180,6 +180,9 @@ with tempfile.TemporaryDirectory() as folder:
     total_column = next(name for name in shown[0] if name.startswith("sum"))
     expect(len(shown) == len(table) and all(abs(float(a[total_column]) ** 2 / float(b["total_psd_m2_per_Hz"]) - 1) < 1e-14
                                             for a, b in zip(shown, table)), "data beside the noise figure")
+    run("appraise", design, "--figure", folder / "field.svg", "--draw", "field")
+    titles = [e.text for e in xml.etree.ElementTree.fromstring((folder / "field.svg").read_text()).iter("{http://www.w3.org/2000/svg}title")]
+    expect({"|E|²", "refractive index"} <= set(titles), f"field: {titles}")
     run("appraise", design, "--figure", folder / "field.pdf", "--draw", "field")
     expect((folder / "field.pdf").read_bytes().startswith(b"%PDF"), "field figure")
     run("sweep", design, "--over", "wavelength=1000nm:1600nm:61", "--figure", folder / "spectrum.svg")
