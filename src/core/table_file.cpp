@@ -224,6 +224,17 @@ std::optional<double> number_in(const Cell& cell, int power, const Limits& limit
     return value;
 }
 
+namespace {
+
+/// The digits with a point behind the first `before`; none when that is all of them.
+std::string with_point(const std::string& digits, int before) {
+    const auto split = static_cast<std::size_t>(before);
+    if (split >= digits.size()) return digits;
+    return fmt::format("{}.{}", digits.substr(0, split), digits.substr(split));
+}
+
+}  // namespace
+
 std::string shifted_decimal(double value, int power) {
     // Shortest digits and exponent of the double itself, then the point is moved.
     std::string shortest = fmt::format("{}", value);
@@ -246,13 +257,13 @@ std::string shifted_decimal(double value, int power) {
     const int size = static_cast<int>(digits.size());
     std::string text;
     if (exponent < -7 || exponent > 15) {
-        text = fmt::format("{}e{}", digits.insert(1, size > 1 ? "." : ""), exponent);
+        text = fmt::format("{}e{}", with_point(digits, 1), exponent);
     } else if (exponent < 0) {
         text = "0." + std::string(static_cast<std::size_t>(-exponent - 1), '0') + digits;
     } else if (exponent >= size - 1) {
         text = digits + std::string(static_cast<std::size_t>(exponent - size + 1), '0');
     } else {
-        text = digits.insert(static_cast<std::size_t>(exponent) + 1, ".");
+        text = with_point(digits, exponent + 1);
     }
     return (negative ? "-" : "") + text;
 }

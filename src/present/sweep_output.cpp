@@ -33,10 +33,9 @@ std::string unit_ending(const std::string& unit) {
 }
 
 std::string sweep_csv(const assess::SweepPlan& plan, const SweepRows& rows) {
-    std::string text;
-    for (const assess::SweepAxis& axis : plan.axes) {
-        text += (text.empty() ? "" : ",") + axis_column(axis);
-    }
+    std::vector<std::string> names;
+    for (const assess::SweepAxis& axis : plan.axes) names.push_back(axis_column(axis));
+    std::string text = fmt::format("{}", fmt::join(names, ","));
     for (const assess::Outcome& outcome : plan.outcomes) text += "," + outcome.key;
     text += "\n";
     for (std::size_t point = 0; point < rows.size(); ++point) {
