@@ -38,28 +38,31 @@ void add_folder_option(CLI::App& command, std::vector<std::string>& folders) {
 
 namespace {
 
-/// A folder of data that belongs to this program: beside an installed program, else `built`, that
-/// of the source tree that it was built from.
-std::string own_folder(const std::string& program, const std::string& name,
-                       const std::string& built) {
+/// Where an installed program has a folder of its data.
+fs::path installed_folder(const std::string& program, const std::string& name) {
     std::error_code error;
     const fs::path real = fs::read_symlink("/proc/self/exe", error);
     const fs::path self = error ? fs::path(program) : real;
-    const fs::path installed =
-        (self.parent_path() / STILLCOAT_DATA_FROM_PROGRAM / name).lexically_normal();
+    return (self.parent_path() / STILLCOAT_DATA_FROM_PROGRAM / name).lexically_normal();
+}
+
+/// The folder of materials that belongs to this program: beside an installed program, else in the
+/// source tree that it was built from.
+std::string own_materials(const std::string& program) {
+    std::error_code error;
+    const fs::path installed = installed_folder(program, "materials");
     if (fs::is_directory(installed, error)) return installed.string();
-    if (fs::is_directory(built, error)) return built;
-    throw core::InputError(
-        fmt::format("the folder of {} is missing: neither {} nor {}", name, installed.string(),
-                    built),
-        name == "materials" ? "reinstall, or name folders with --materials" : "reinstall");
+    if (fs::is_directory(STILLCOAT_BUILD_MATERIALS, error)) return STILLCOAT_BUILD_MATERIALS;
+    throw core::InputError(fmt::format("the materials folder is missing: neither {} nor {}",
+                                       installed.string(), STILLCOAT_BUILD_MATERIALS),
+                           "reinstall, or name folders with --materials");
 }
 
 }  // namespace
 
 std::vector<std::string> material_folders(const std::string& program,
                                           const std::vector<std::string>& folders) {
-    std::vector<std::string> all{own_folder(program, "materials", STILLCOAT_BUILD_MATERIALS)};
+    std::vector<std::string> all{own_materials(program)};
     all.insert(all.end(), folders.begin(), folders.end());
     return all;
 }
@@ -79,8 +82,9 @@ materials::Library load_library(const std::string& program,
 }
 
 std::string schema_path(const std::string& program, const std::string& document) {
-    return own_folder(program, "schemas", STILLCOAT_BUILD_SCHEMAS) + "/" + document +
-           ".schema.json";
+    std::error_code error;
+    const fs::path file = installed_folder(program, "schemas") / (document + ".schema.json");
+    return fs::exists(file, error) ? file.string() : "";
 }
 
 stack::Design load_design(const std::string& path, materials::Library& library) {

@@ -53,7 +53,8 @@ std::vector<std::string> material_folders(const std::string& program,
 materials::Library load_library(const std::string& program,
                                 const std::vector<std::string>& folders);
 
-/// Where the schema of a kind of document is: "design", "material".
+/// Where an installed program has the schema of a kind of document ("design", "material"); empty
+/// for one that runs from its build folder, whose paths mean nothing elsewhere.
 std::string schema_path(const std::string& program, const std::string& document);
 
 /// Reads a design; "-" is standard input.

@@ -13,3 +13,6 @@ case "$listing" in
     *) echo "the installed program did not use its own materials:"; echo "$listing" | head -5; exit 1 ;;
 esac
 test -f "$prefix/moved/share/stillcoat/schemas/appraisal.schema.json"
+# A draft of the installed program leads editors to the schema beside it.
+first=$("$prefix/moved/bin/stillcoat" draft | head -n 1)
+test -f "${first#\#:schema }"
