@@ -210,6 +210,7 @@ std::vector<std::string> suitable_keys(const stack::Design& design,
                 *property != materials::PropertyId::absorption_coefficient);
     });
     if (dark) keys.clear();
+    if (is_axis("temperature")) keys = {"transmittance"};
     for_faces(design, [&](const char* ending, const char*, std::size_t) {
         for (const NoiseResult& result : noise_results) {
             const bool first = result.term == nullptr;

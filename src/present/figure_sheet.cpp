@@ -50,7 +50,8 @@ const Stroke grid_stroke{"#dddddd", 0.4};
 double widest(const std::vector<Tic>& tics) {
     double width = 0.0;
     for (const Tic& tic : tics) width = std::max(width, label_width(tic.label));
-    return width * font_size;
+    constexpr double wider_fonts = 1.06;
+    return width * font_size * wider_fonts;
 }
 
 double height_of(const std::vector<std::string>& lines) {

@@ -101,10 +101,10 @@ std::vector<Group> grouped(const assess::SweepPlan& plan, const SweepRows& rows)
 
 /// The words of an axis: the only curve's name, or what the unit says.
 Axis value_axis(const Group& group, const std::string& where) {
-    const std::string title = group.curves.size() == 1 ? group.curves[0].name
-                              : group.unit == "m/√Hz"  ? "displacement"
-                              : group.unit.empty()     ? "share of the light"
-                                                       : "result";
+    const std::string title = group.unit == "m/√Hz"      ? "displacement"
+                              : group.curves.size() == 1 ? group.curves[0].name
+                              : group.unit.empty()       ? "share of the light"
+                                                         : "result";
     const bool noise = group.unit == "m/√Hz";
     return Axis{
         with_unit(noise ? title + where : title, group.unit), spans_decades(group.all), {}, {}};
