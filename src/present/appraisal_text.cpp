@@ -192,7 +192,8 @@ void material_section(Page& page, const Appraisal& appraisal, const Face& face) 
                rows);
 }
 
-void layer_section(Page& page, const Appraisal& appraisal, const PageOptions& options) {
+void layer_section(Page& page, const stack::Design& design, const Appraisal& appraisal,
+                   const PageOptions& options) {
     const Face& face = appraisal.faces.front();
     const std::vector<double> shares = brownian_shares(face.noise);
     const std::size_t count = appraisal.mirror.layers.size();
@@ -219,6 +220,12 @@ void layer_section(Page& page, const Appraisal& appraisal, const PageOptions& op
     page.table({"no", "material", "nm", "quarter waves", "index", "absorbs ppm", "energy %",
                 "|E|² max", "Brownian %"},
                rows, 2);
+    if (design.coating.design_wavelength != design.light.wavelength) {
+        page.line(
+            fmt::format("  quarter waves here are those of the light, {:g} nm; `stillcoat layers` "
+                        "counts them at {:g} nm",
+                        design.light.wavelength * 1e9, design.coating.design_wavelength * 1e9));
+    }
     if (appraisal.faces.size() > 1) {
         page.line("  the same for p polarisation: --csv layers");
     }
@@ -314,7 +321,7 @@ std::string appraisal_text(const stack::Design& design, const materials::Library
         page.line(fmt::format("  Brownian %: share of the coating's Brownian noise power at {}",
                               frequency_text(noise.layer_frequency)));
     }
-    layer_section(page, appraisal, options);
+    layer_section(page, design, appraisal, options);
     for (const Face& face : appraisal.faces) {
         noise_section(page, appraisal.mirror, face.noise, light_words(appraisal, face));
     }
