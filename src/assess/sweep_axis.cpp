@@ -235,8 +235,8 @@ SweepAxis read_axis(const std::string& text, const stack::Design& design,
         const double share = static_cast<double>(i) / static_cast<double>(count - 1);
         const double value =
             logarithmic ? from * std::pow(to / from, share) : from + (to - from) * share;
-        // Thirteen digits, so that 1201 nm is not printed as 1201.0000000000002 nm.
-        axis.values.push_back(std::stod(fmt::format("{:.13g}", i + 1 == count ? to : value)));
+        // Fifteen digits, so that 1201 nm is not printed as 1201.0000000000002 nm.
+        axis.values.push_back(std::stod(fmt::format("{:.15g}", i + 1 == count ? to : value)));
     }
     return axis;
 }

@@ -246,4 +246,55 @@ TEST(Appraisal, OfASiliconMirrorHasNoExpansionNoiseWhereSiliconDoesNotExpand) {
     EXPECT_LT(at("123.5 K"), 1e-12 * at("140 K"));
 }
 
+bool says(const std::vector<std::string>& list, const std::string& part) {
+    return std::any_of(list.begin(), list.end(), [&](const std::string& text) {
+        return text.find(part) != std::string::npos;
+    });
+}
+
+TEST(Appraisal, WarnsOfTheLightThatMissesTheFaceAtAnyAngle) {
+    // R = 1.5 w. At normal incidence exp(−2 (R/w)²) = 1.1 %; at 1 rad the integral of the oblique
+    // Gaussian over the face was taken numerically: 13.45 %.
+    const auto with_angle = [](const std::string& light) {
+        std::string text = mirror_text(quarter_wave_pairs, "", light);
+        const std::string body = "[mirror]\n";
+        text.insert(text.find(body) + body.size(), "diameter = \"18 cm\"\nthickness = \"10 cm\"\n");
+        return appraised(text);
+    };
+    const std::string straight = "wavelength = \"1064 nm\"";
+    EXPECT_TRUE(says(with_angle(straight).warnings, "1.1 % of the light power misses"));
+    EXPECT_TRUE(says(with_angle(straight + "\nangle = \"1 rad\"\npolarisation = \"s\"").warnings,
+                     "13 % of the light power misses"));
+}
+
+TEST(Appraisal, SaysWhichValuesOfTheDesignChangeNothingOrStateNoRange) {
+    const assess::Appraisal result = appraised(mirror_text(
+        quarter_wave_pairs,
+        "[material.hafnia-ibs]\ndensity = { value = \"9 g/cm3\", source = \"x\" }\n"
+        "[material.tantala-ibs]\nyoungs_modulus = { value = \"130 GPa\", source = \"x\" }\n"));
+    EXPECT_TRUE(says(result.warnings, "[material.\"hafnia-ibs\"] changes nothing"));
+    EXPECT_FALSE(says(result.warnings, "[material.\"tantala-ibs\"] changes nothing"));
+    EXPECT_TRUE(says(result.notes, "as they stand: Young's modulus of tantala-ibs"));
+}
+
+TEST(Appraisal, HasNoTotalWithoutATermAndNoPhaseWithoutLight) {
+    const std::string same =
+        "[[coating.block]]\nlayers = [ { material = \"fused-silica\", thickness = \"100 nm\" } ]\n";
+    const std::string clear =
+        "[material.fused-silica]\nextinction_coefficient = { value = 0, source = \"x\" }\n"
+        "loss_angle = { value_at_1_Hz = 1e-9, exponent = 3, source = \"x\" }\n";
+    const assess::Appraisal result =
+        appraised(mirror_text(same, clear, "wavelength = \"1064 nm\"\nmedium = \"fused-silica\""));
+    EXPECT_FALSE(result.faces[0].phase.has_value());
+    const assess::Noise& noise = result.faces[0].noise;
+    EXPECT_FALSE(noise.complete);
+    EXPECT_EQ(term(noise, "coating_brownian").missing,
+              "the face reflects nothing, so no phase is read");
+    // The loss law exceeds 1 within the band, so no frequency of it is answered.
+    EXPECT_NE(term(noise, "substrate_brownian").missing.find("comes out as"), std::string::npos);
+    for (const assess::NoiseTerm& one : noise.terms) {
+        EXPECT_EQ(one.in_total, !one.spot_psd.empty()) << one.key;
+    }
+}
+
 }  // namespace
