@@ -33,7 +33,7 @@ OpticalStack stack_of(const json& entry) {
 TEST(ObliqueReadout, WeightsAreThoseOfExactDifferencesOnUniaxialSlices) {
     std::ifstream file(std::string(STILLCOAT_TEST_DATA) + "/readout_reference.json");
     const json document = json::parse(file);
-    WorstError worst_strain, worst_in_plane, worst_index;
+    WorstError worst_strain, worst_in_plane, worst_index, worst_relative;
     int count = 0;
     for (const json& entry : document.at("cases")) {
         const OpticalStack stack = stack_of(entry);
@@ -49,9 +49,10 @@ TEST(ObliqueReadout, WeightsAreThoseOfExactDifferencesOnUniaxialSlices) {
             // Relative to the weight, and where it is small beside the 1 of the moving face, to 1.
             const auto see = [&](WorstError& worst, double value, const char* key) {
                 const double exact = place.at(key);
-                worst.see(
-                    std::abs(value - exact) / std::max(1.0, std::abs(exact)),
-                    entry.at("name").get<std::string>() + ", layer " + place.at("layer").dump());
+                const std::string where =
+                    entry.at("name").get<std::string>() + ", layer " + place.at("layer").dump();
+                worst.see(std::abs(value - exact) / std::max(1.0, std::abs(exact)), where);
+                if (exact != 0.0) worst_relative.see(std::abs(value / exact - 1.0), where);
             };
             see(worst_strain, strain_weight(layer, depth), "strain_weight");
             see(worst_in_plane, in_plane_weight(layer, depth), "in_plane_weight");
@@ -63,6 +64,8 @@ TEST(ObliqueReadout, WeightsAreThoseOfExactDifferencesOnUniaxialSlices) {
     worst_strain.print("g at oblique incidence");
     worst_in_plane.print("g∥ at oblique incidence");
     worst_index.print("h at oblique incidence");
+    worst_relative.print("any of them relative to itself, however small");
+    EXPECT_LE(worst_relative.error(), 1.5e-11);
     EXPECT_LE(worst_strain.error(), 3e-14);
     EXPECT_LE(worst_in_plane.error(), 3e-14);
     EXPECT_LE(worst_index.error(), 2e-13);
