@@ -30,19 +30,19 @@ is the exact input, depth_m the same depth counted from the face. p12 belongs to
 Usage: optics_reference.py [--output FILE] | --sample N | --verify
 """
 import argparse
-import json
 import os
 import sys
+from functools import partial
 
-from mpmath import mp, mpf
+from mpmath import mp
 
 sys.dont_write_bytecode = True  # the source folder stays clean when this runs as a test
 from optics_reference_cases import all_cases
 from optics_reference_laws import broken_laws
 from optics_reference_model import results, weights
+from reference_file import check_sample, write_cases
 
 WORKING_DIGITS = 80
-PRINTED_DIGITS = 25
 DATA = os.path.join(os.path.dirname(os.path.abspath(__file__)), "..", "data",
                     "optics_reference.json")
 
@@ -54,57 +54,14 @@ def completed(case, places):
     return finished
 
 
-def text(value):
-    """JSON in which doubles keep their shortest exact form and mp numbers have 25 digits."""
-    if isinstance(value, mpf):
-        return mp.nstr(value, PRINTED_DIGITS, min_fixed=0, max_fixed=0)
-    if isinstance(value, dict):
-        return "{" + ", ".join(f"{json.dumps(k)}: {text(v)}" for k, v in value.items()) + "}"
-    if isinstance(value, list):
-        return "[" + ", ".join(text(v) for v in value) + "]"
-    return json.dumps(value)
-
-
 def write(path):
-    note = ("independent multi-precision reference for the optics of layered mirrors; "
-            "conventions and derivation in tests/generators/optics_reference.py")
-    lines = [text(completed(case, places)) for case, places in all_cases()]
-    with open(path, "w", encoding="ascii") as file:
-        file.write('{"note": ' + json.dumps(note) + ',\n"cases": [\n')
-        file.write(",\n".join(lines) + "\n]}\n")
-    print(f"wrote {len(lines)} cases")
-
-
-def differences(fresh, stored, where, exact):
-    """Places where two parsed documents differ by more than 20 digits (or at all if exact)."""
-    if isinstance(fresh, dict) and isinstance(stored, dict) and fresh.keys() == stored.keys():
-        loose = ("results", "depth_m", "index_weight", "strain_weight", "in_plane_weight")
-        return [d for key in fresh for d in differences(
-            fresh[key], stored[key], f"{where}/{key}", exact and key not in loose)]
-    if isinstance(fresh, list) and isinstance(stored, list) and len(fresh) == len(stored):
-        return [d for j, pair in enumerate(zip(fresh, stored))
-                for d in differences(*pair, f"{where}/{j}", exact)]
-    if fresh == stored:
-        return []
-    if not exact and isinstance(fresh, str) and isinstance(stored, str):
-        if abs(mpf(fresh) - mpf(stored)) <= mpf(10) ** -20 * abs(mpf(fresh)):
-            return []
-    return [f"{where}: regenerated {fresh}, stored {stored}"]
+    write_cases(path, "independent multi-precision reference for the optics of layered mirrors; "
+                "conventions and derivation in tests/generators/optics_reference.py",
+                (completed(case, places) for case, places in all_cases()))
 
 
 def sample(every, path):
-    with open(path, encoding="ascii") as file:
-        stored = json.load(file, parse_float=str)["cases"]
-    described_cases = list(all_cases())
-    found = [] if len(stored) == len(described_cases) else ["number of cases"]
-    chosen = list(zip(described_cases, stored))[::every]
-    for (case, places), kept in chosen:
-        fresh = json.loads(text(completed(case, places)), parse_float=str)
-        found += differences(fresh, kept, case["name"], True)
-    for line in found:
-        print(line, file=sys.stderr)
-    print(f"checked {len(chosen)} cases")
-    return 1 if found else 0
+    return check_sample(path, [partial(completed, *described) for described in all_cases()], every)
 
 
 def main():

@@ -13,16 +13,16 @@ there are no fringes and the coherent result is the reference. Every input is an
 Usage: part_reference.py [--output FILE] | --sample
 """
 import argparse
-import json
 import os
 import sys
+from functools import partial
 
 from mpmath import mp, mpc, mpf
 
 sys.dont_write_bytecode = True  # the source folder stays clean when this runs as a test
-from optics_reference import differences, text
 from optics_reference_cases import alternating, radians
 from optics_reference_model import Waves, layer_powers
+from reference_file import check_sample, write_cases
 
 DATA = os.path.join(os.path.dirname(os.path.abspath(__file__)), "..", "data",
                     "part_reference.json")
@@ -144,11 +144,6 @@ def relative_sensitivity(case):
     return int(mp.ceil(abs(losses[0] - losses[1]) / (step * total)))
 
 
-def completed(case):
-    return dict(case, results={"intensities": incoherent(case), "amplitudes": coherent(case),
-                               "relative_sensitivity": relative_sensitivity(case)})
-
-
 def finite(value):
     """JSON has no infinity: the logarithm of nothing is null."""
     if isinstance(value, dict):
@@ -156,21 +151,9 @@ def finite(value):
     return None if isinstance(value, mpf) and mp.isinf(value) else value
 
 
-def lines():
-    return [text(finite(completed(case))) for case in all_parts()]
-
-
-def sample(path):
-    with open(path, encoding="ascii") as file:
-        stored = json.load(file, parse_float=str)["cases"]
-    fresh = [json.loads(line, parse_float=str) for line in lines()]
-    found = [] if len(stored) == len(fresh) else ["number of cases"]
-    for made, kept in zip(fresh, stored):
-        found += differences(made, kept, made["name"], True)
-    for line in found:
-        print(line, file=sys.stderr)
-    print(f"checked {len(fresh)} cases")
-    return 1 if found else 0
+def finished(case):
+    return finite(dict(case, results={"intensities": incoherent(case), "amplitudes": coherent(case),
+                               "relative_sensitivity": relative_sensitivity(case)}))
 
 
 def main():
@@ -180,12 +163,10 @@ def main():
     options = parser.parse_args()
     mp.dps = 120
     if options.sample:
-        return sample(options.output)
-    note = ("independent multi-precision reference for whole parts; conventions and derivation in "
-            "tests/generators/part_reference.py")
-    with open(options.output, "w", encoding="ascii") as file:
-        file.write('{"note": ' + json.dumps(note) + ',\n"cases": [\n')
-        file.write(",\n".join(lines()) + "\n]}\n")
+        return check_sample(options.output, [partial(finished, case) for case in all_parts()], 1)
+    write_cases(options.output, "independent multi-precision reference for whole parts; "
+                "conventions and derivation in tests/generators/part_reference.py",
+                (finished(case) for case in all_parts()))
     return 0
 
 

@@ -19,17 +19,17 @@ truncation 1e-40. Conventions, units and the meaning of the keys: see optics_ref
 Usage: readout_reference.py [--output FILE] | --sample N | --verify
 """
 import argparse
-import json
 import os
 import random
 import sys
+from functools import partial
 
 from mpmath import mp, mpc, mpf
 
 sys.dont_write_bytecode = True  # the source folder stays clean when this runs as a test
-from optics_reference import differences, text
 from optics_reference_cases import alternating, described, radians
 from optics_reference_model import Waves, weight
+from reference_file import check_sample, write_cases
 
 WORKING_DIGITS = 120
 DATA = os.path.join(os.path.dirname(os.path.abspath(__file__)), "..", "data",
@@ -193,29 +193,13 @@ def verify():
 
 
 def sample(every, path):
-    with open(path, encoding="ascii") as file:
-        stored = json.load(file, parse_float=str)["cases"]
-    described_cases = list(all_cases())
-    found = [] if len(stored) == len(described_cases) else ["another number of cases"]
-    chosen = list(zip(described_cases, stored))[::every]
-    for (case, places), kept in chosen:
-        fresh = json.loads(text(completed(case, places)), parse_float=str)
-        found += differences(fresh, kept, case["name"], True)
-    for line in found:
-        print(line, file=sys.stderr)
-    print(f"checked {len(chosen)} cases")
-    return 1 if found else 0
+    return check_sample(path, [partial(completed, *described) for described in all_cases()], every)
 
 
 def write(path):
-    note = ("independent multi-precision reference for readout weights at oblique incidence; "
-            "conventions and derivation in tests/generators/readout_reference.py")
-    lines = [text(completed(case, places)) for case, places in all_cases()]
-    with open(path, "w", encoding="ascii") as file:
-        file.write('{"note": ' + json.dumps(note) + ',\n"cases": [\n')
-        file.write(",\n".join(lines) + "\n]}\n")
-    print(f"wrote {len(lines)} cases")
-    return 0
+    write_cases(path, "independent multi-precision reference for readout weights at oblique "
+                "incidence; conventions and derivation in tests/generators/readout_reference.py",
+                (completed(case, places) for case, places in all_cases()))
 
 
 def main():
@@ -231,7 +215,8 @@ def main():
         return verify()
     if options.sample is not None:
         return sample(max(options.sample, 1), options.output)
-    return write(options.output)
+    write(options.output)
+    return 0
 
 
 if __name__ == "__main__":
