@@ -197,6 +197,7 @@ int keep_unfinished(const SweepOptions& options, const stack::Design& design,
 }
 
 int sweep_command(const std::string& program, const SweepOptions& options) {
+    const InterruptGuard guard;  // from the start: nothing is lost while the library is read
     check_options(options);
     materials::Library library = load_library(program, options.materials);
     const stack::Design design = load_design(options.design, library);
@@ -206,14 +207,10 @@ int sweep_command(const std::string& program, const SweepOptions& options) {
                            options.output.existing());
     const std::string inputs = fingerprint(inputs_of(program, options, design));
     SweepRows rows = earlier_rows(options, plan, inputs);
-    bool complete = false;
-    {
-        const InterruptGuard guard;
-        complete = assess::run_sweep(design, library, plan, rows, [&](std::size_t done) {
-            show_progress(done, rows.size());
-            return interrupted == 0;
-        });
-    }
+    const bool complete = assess::run_sweep(design, library, plan, rows, [&](std::size_t done) {
+        show_progress(done, rows.size());
+        return interrupted == 0;
+    });
     if (!complete) return keep_unfinished(options, design, plan, inputs, rows);
     show_progress(rows.size(), rows.size());
     if (!report_gaps(rows)) return no_answer;

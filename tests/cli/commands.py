@@ -148,10 +148,16 @@ expect("[coating]" in smallest and run("appraise", "-", stdin=smallest).stdout, 
 # A sweep that is interrupted keeps what it did and goes on from there to the same bytes.
 with tempfile.TemporaryDirectory() as folder:
     folder = pathlib.Path(folder)
-    words = ["sweep", design, "--over", "frequency=1Hz:10kHz:3000:log"]
+    words = ["sweep", design, "--over", "frequency=1Hz:10kHz:2000:log"]
     whole = run(*words, "--out", folder / "whole.csv")
     started = subprocess.Popen([program, *map(str, words), "--out", str(folder / "cut.csv")], stderr=subprocess.PIPE, text=True)
-    time.sleep(0.6)
+    # Wait until the program listens to Ctrl-C (bit 1 of the signals it catches), then for some points.
+    while started.poll() is None:
+        caught = next(l for l in open(f"/proc/{started.pid}/status") if l.startswith("SigCgt"))
+        if int(caught.split()[1], 16) & 2:
+            break
+        time.sleep(0.01)
+    time.sleep(0.4)
     started.send_signal(signal.SIGINT)
     stopped = started.communicate(timeout=60)[1]
     expect(started.returncode == 3 and "with --resume goes on" in stopped, f"interrupted sweep: {started.returncode}, {stopped}")
