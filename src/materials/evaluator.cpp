@@ -268,10 +268,10 @@ double Evaluator::rule_factor(const Subject& subject, double reference, Value& v
     const bool own = rule.rule == Beyond::Rule::heat_capacity;
     const PropertyId other_id = own ? PropertyId::specific_heat : subject.id;
     const std::string& other = own ? subject.material : rule.material;
-    Value here = property(other, other_id);
+    const Value here = property(other, other_id);
     const Value there = here.number ? at(reference).property(other, other_id) : Value{};
     if (!here.number || !there.number) {
-        value = !here.number ? std::move(here) : there;
+        value = here.number ? there : here;
         return 1.0;
     }
     add_bases(value.bases, here.bases);
