@@ -6,6 +6,7 @@
 #include <numeric>
 #include <stdexcept>
 
+#include "present/json_values.hpp"
 #include "present/part_json.hpp"
 #include "present/sources.hpp"
 #include "present/wording.hpp"
@@ -16,17 +17,9 @@ namespace {
 using Json = nlohmann::ordered_json;
 using assess::Appraisal;
 
-/// The library would write a number that is not finite as null; here that is our mistake.
-Json number(double value) {
-    if (!std::isfinite(value)) throw std::logic_error("a result is not a finite number");
-    return value;
-}
-
-Json number_or_null(std::optional<double> value) { return value ? number(*value) : Json(nullptr); }
-
 Json numbers(const std::vector<double>& list) {
     Json array = Json::array();
-    for (const double value : list) array.push_back(number(value));
+    for (const double value : list) array.push_back(json_number(value));
     return array;
 }
 
@@ -38,37 +31,38 @@ Json list_or_null(const std::vector<double>& list) {
 Json operating_point(const stack::Design& design, const Appraisal& appraisal) {
     const bool normal = design.light.angle == 0.0;
     const char* names[] = {"s", "p", "unpolarised"};
-    return {{"wavelength_m", number(design.light.wavelength)},
-            {"angle_rad", number(design.light.angle)},
+    return {{"wavelength_m", json_number(design.light.wavelength)},
+            {"angle_rad", json_number(design.light.angle)},
             {"polarisation",
              normal ? Json(nullptr) : Json(names[static_cast<int>(design.light.polarisation)])},
             {"medium", design.light.medium},
-            {"medium_index", number(appraisal.mirror.incident_index.value)},
-            {"incident_power_W", number_or_null(design.light.power)},
-            {"beam_radius_m", number(design.beam_radius)},
-            {"temperature_K", number(design.temperature)}};
+            {"medium_index", json_number(appraisal.mirror.incident_index.value)},
+            {"incident_power_W", json_number_or_null(design.light.power)},
+            {"beam_radius_m", json_number(design.beam_radius)},
+            {"temperature_K", json_number(design.temperature)}};
 }
 
 Json coating(const stack::Design& design, const Appraisal& appraisal) {
     Json layers = Json::array();
     int count = 0;
     for (const stack::MirrorLayer& layer : appraisal.mirror.layers) {
-        layers.push_back({{"number", ++count},
-                          {"material", layer.material},
-                          {"reference_thickness_m", number(layer.reference_thickness)},
-                          {"thickness_m", number(layer.thickness)},
-                          {"quarter_waves", number(layer.quarter_waves)},
-                          {"refractive_index", number(layer.optical.index.value)},
-                          {"extinction_coefficient", layer.optical.extinction_known
-                                                         ? number(layer.optical.extinction.value)
-                                                         : Json(nullptr)}});
+        layers.push_back(
+            {{"number", ++count},
+             {"material", layer.material},
+             {"reference_thickness_m", json_number(layer.reference_thickness)},
+             {"thickness_m", json_number(layer.thickness)},
+             {"quarter_waves", json_number(layer.quarter_waves)},
+             {"refractive_index", json_number(layer.optical.index.value)},
+             {"extinction_coefficient", layer.optical.extinction_known
+                                            ? json_number(layer.optical.extinction.value)
+                                            : Json(nullptr)}});
     }
     return {{"layer_count", count},
-            {"thickness_m", number(appraisal.mirror.coating_thickness)},
-            {"design_wavelength_m", number(design.coating.design_wavelength)},
-            {"reference_temperature_K", number(design.coating.reference_temperature)},
-            {"optical_thickness_ratio", number(appraisal.mirror.optical_path_ratio)},
-            {"excess_loss", number(design.coating.excess_loss)},
+            {"thickness_m", json_number(appraisal.mirror.coating_thickness)},
+            {"design_wavelength_m", json_number(design.coating.design_wavelength)},
+            {"reference_temperature_K", json_number(design.coating.reference_temperature)},
+            {"optical_thickness_ratio", json_number(appraisal.mirror.optical_path_ratio)},
+            {"excess_loss", json_number(design.coating.excess_loss)},
             {"layers", std::move(layers)}};
 }
 
@@ -91,14 +85,14 @@ Json noise(const assess::Noise& result) {
     Json layers = Json::array();
     for (std::size_t j = 0; j < result.layers.size(); ++j) {
         layers.push_back({{"number", j + 1},
-                          {"bulk_energy_J_per_N2", number(result.layers[j].bulk_energy)},
-                          {"shear_energy_J_per_N2", number(result.layers[j].shear_energy)},
-                          {"psd_m2_per_Hz", number(result.layers[j].psd)}});
+                          {"bulk_energy_J_per_N2", json_number(result.layers[j].bulk_energy)},
+                          {"shear_energy_J_per_N2", json_number(result.layers[j].shear_energy)},
+                          {"psd_m2_per_Hz", json_number(result.layers[j].psd)}});
     }
     Json dominance = Json::array();
     for (const assess::Dominance& stretch : result.dominance) {
-        dominance.push_back({{"from_Hz", number(stretch.from)},
-                             {"to_Hz", number(stretch.to)},
+        dominance.push_back({{"from_Hz", json_number(stretch.from)},
+                             {"to_Hz", json_number(stretch.to)},
                              {"title", stretch.title}});
     }
     return {{"complete", result.complete},
@@ -108,7 +102,7 @@ Json noise(const assess::Noise& result) {
             {"total_psd_m2_per_Hz", list_or_null(result.total)},
             {"spot_total_psd_m2_per_Hz", list_or_null(result.spot_total)},
             {"comparisons", std::move(comparisons)},
-            {"coating_brownian_layer_frequency_Hz", number(result.layer_frequency)},
+            {"coating_brownian_layer_frequency_Hz", json_number(result.layer_frequency)},
             {"coating_brownian_layers", std::move(layers)},
             {"largest_term", std::move(dominance)}};
 }
@@ -119,29 +113,29 @@ Json reflection_band(const std::optional<assess::ReflectionBand>& band) {
     const auto edge = [](const assess::BandEdge& found) {
         const char* states[] = {"found", "beyond the data", "beyond the search"};
         const bool known = found.state == optics::EdgeState::found;
-        return Json{{"wavelength_m", known ? number(found.wavelength) : Json(nullptr)},
+        return Json{{"wavelength_m", known ? json_number(found.wavelength) : Json(nullptr)},
                     {"state", states[static_cast<int>(found.state)]},
-                    {"searched_to_m", known ? Json(nullptr) : number(found.wavelength)},
+                    {"searched_to_m", known ? Json(nullptr) : json_number(found.wavelength)},
                     {"data_end_of", found.material.empty() ? Json(nullptr) : Json(found.material)},
-                    {"shift_m", number_or_null(found.shift)}};
+                    {"shift_m", json_number_or_null(found.shift)}};
     };
     return {{"short_edge", edge(band->short_edge)},
             {"long_edge", edge(band->long_edge)},
-            {"centre_wavelength_m", number_or_null(band->centre)},
-            {"relative_half_width", number_or_null(band->relative_half_width)},
-            {"top_reflectance", number(band->top_reflectance)},
+            {"centre_wavelength_m", json_number_or_null(band->centre)},
+            {"relative_half_width", json_number_or_null(band->relative_half_width)},
+            {"top_reflectance", json_number(band->top_reflectance)},
             {"operating_wavelength_inside", band->operating_wavelength_inside},
-            {"centre_shift_m", number_or_null(band->centre_shift)}};
+            {"centre_shift_m", json_number_or_null(band->centre_shift)}};
 }
 
 Json reflected(const std::optional<assess::Reflected>& light) {
     if (!light) return nullptr;
     const bool dark = !std::isfinite(light->log_transmittance);
-    return {{"reflectance", number(light->reflectance)},
-            {"loss", number(light->loss)},
-            {"transmittance", number(light->transmittance)},
-            {"log_transmittance", dark ? Json(nullptr) : number(light->log_transmittance)},
-            {"absorptance", number(light->absorptance)}};
+    return {{"reflectance", json_number(light->reflectance)},
+            {"loss", json_number(light->loss)},
+            {"transmittance", json_number(light->transmittance)},
+            {"log_transmittance", dark ? Json(nullptr) : json_number(light->log_transmittance)},
+            {"absorptance", json_number(light->absorptance)}};
 }
 
 Json around(const Appraisal& appraisal) {
@@ -150,8 +144,8 @@ Json around(const Appraisal& appraisal) {
     for (const assess::Departure& departure : appraisal.around->departures) {
         const bool missing = !departure.missing.empty();
         departures.push_back(
-            {{"wavelength_m", number(departure.wavelength)},
-             {"angle_rad", number(departure.angle)},
+            {{"wavelength_m", json_number(departure.wavelength)},
+             {"angle_rad", json_number(departure.angle)},
              {"not_computed_because", missing ? Json(departure.missing) : Json(nullptr)},
              {"absorptance_is_lower_limit",
               missing ? Json(nullptr) : Json(!departure.absorption_known)},
@@ -161,7 +155,7 @@ Json around(const Appraisal& appraisal) {
     }
     return {{"stop_band_s", reflection_band(appraisal.around->s_band)},
             {"stop_band_p", reflection_band(appraisal.around->p_band)},
-            {"top_reflectance", number(appraisal.around->top_reflectance)},
+            {"top_reflectance", json_number(appraisal.around->top_reflectance)},
             {"departures", std::move(departures)}};
 }
 
@@ -171,38 +165,38 @@ Json face(const assess::Face& optics, const stack::Mirror& mirror) {
     for (std::size_t j = 0; j < optics.stored_energy.size(); ++j) {
         layers.push_back({{"number", j + 1},
                           {"absorptance", mirror.layers[j].optical.extinction_known
-                                              ? number(r.layer_absorptance[j])
+                                              ? json_number(r.layer_absorptance[j])
                                               : Json(nullptr)},
-                          {"stored_energy_J_per_W", number(optics.stored_energy[j])},
-                          {"peak_intensity_ratio", number(optics.peak_intensity[j])},
-                          {"peak_depth_m", number(optics.peak_depth[j])}});
+                          {"stored_energy_J_per_W", json_number(optics.stored_energy[j])},
+                          {"peak_intensity_ratio", json_number(optics.peak_intensity[j])},
+                          {"peak_depth_m", json_number(optics.peak_depth[j])}});
     }
     const bool lower_limit = std::any_of(
         mirror.layers.begin(), mirror.layers.end(),
         [](const stack::MirrorLayer& layer) { return !layer.optical.extinction_known; });
     const bool dark = !std::isfinite(r.log_transmittance);
     Json document{{"polarisation", optics.polarisation == optics::Polarisation::s ? "s" : "p"},
-                  {"reflectance", number(r.reflectance)},
-                  {"transmittance", number(r.transmittance)},
-                  {"log_transmittance", dark ? Json(nullptr) : number(r.log_transmittance)},
-                  {"absorptance", number(r.absorptance)},
+                  {"reflectance", json_number(r.reflectance)},
+                  {"transmittance", json_number(r.transmittance)},
+                  {"log_transmittance", dark ? Json(nullptr) : json_number(r.log_transmittance)},
+                  {"absorptance", json_number(r.absorptance)},
                   {"absorptance_is_lower_limit", lower_limit},
-                  {"loss", number(r.loss)},
-                  {"reflection_amplitude_real", number(r.reflection.real())},
-                  {"reflection_amplitude_imaginary", number(r.reflection.imag())}};
+                  {"loss", json_number(r.loss)},
+                  {"reflection_amplitude_real", json_number(r.reflection.real())},
+                  {"reflection_amplitude_imaginary", json_number(r.reflection.imag())}};
     std::optional<double> phase, delay, dispersion;
     if (optics.phase) {
         phase = optics.phase->reflection_phase;
         delay = optics.phase->group_delay;
         dispersion = optics.phase->group_delay_dispersion;
     }
-    document["reflection_phase_rad"] = number_or_null(phase);
-    document["group_delay_s"] = number_or_null(delay);
-    document["group_delay_dispersion_s2"] = number_or_null(dispersion);
+    document["reflection_phase_rad"] = json_number_or_null(phase);
+    document["group_delay_s"] = json_number_or_null(delay);
+    document["group_delay_dispersion_s2"] = json_number_or_null(dispersion);
     document["stored_energy_J_per_W"] =
-        number(std::accumulate(optics.stored_energy.begin(), optics.stored_energy.end(), 0.0));
-    document["energy_penetration_depth_m"] = number(optics.energy_penetration_depth);
-    document["face_intensity_ratio"] = number(optics.face_intensity);
+        json_number(std::accumulate(optics.stored_energy.begin(), optics.stored_energy.end(), 0.0));
+    document["energy_penetration_depth_m"] = json_number(optics.energy_penetration_depth);
+    document["face_intensity_ratio"] = json_number(optics.face_intensity);
     document["layers"] = std::move(layers);
     document["losses"] = losses_json(optics.losses);
     document["noise"] = noise(optics.noise);
@@ -226,10 +220,10 @@ Json values_from_the_design(const stack::Design& design) {
 Json light_load(const Appraisal& appraisal) {
     if (!appraisal.light_load) return nullptr;
     const assess::LightLoad& load = *appraisal.light_load;
-    return {{"incident_power_W", number(load.power)},
-            {"absorbed_in_coating_W", number(load.absorbed)},
-            {"centre_intensity_W_per_m2", number(load.centre_intensity)},
-            {"largest_intensity_in_coating_W_per_m2", number(load.largest_intensity)}};
+    return {{"incident_power_W", json_number(load.power)},
+            {"absorbed_in_coating_W", json_number(load.absorbed)},
+            {"centre_intensity_W_per_m2", json_number(load.centre_intensity)},
+            {"largest_intensity_in_coating_W_per_m2", json_number(load.largest_intensity)}};
 }
 
 Json sources(const materials::Library& library, const Appraisal& appraisal) {
@@ -248,9 +242,9 @@ std::string appraisal_json(const stack::Design& design, const materials::Library
     Json faces = Json::array();
     for (const assess::Face& item : appraisal.faces) faces.push_back(face(item, appraisal.mirror));
     Json mirror{{"substrate", design.mirror.substrate},
-                {"substrate_index", number(appraisal.mirror.substrate_optical.index.value)},
-                {"diameter_m", number_or_null(design.mirror.diameter)},
-                {"thickness_m", number_or_null(design.mirror.thickness)}};
+                {"substrate_index", json_number(appraisal.mirror.substrate_optical.index.value)},
+                {"diameter_m", json_number_or_null(design.mirror.diameter)},
+                {"thickness_m", json_number_or_null(design.mirror.thickness)}};
     add_surface_keys(mirror, design);
     const Json document{
         {"document", "appraisal"},
@@ -262,9 +256,10 @@ std::string appraisal_json(const stack::Design& design, const materials::Library
         {"mirror", std::move(mirror)},
         {"coating", coating(design, appraisal)},
         {"values_from_the_design", values_from_the_design(design)},
-        {"reflectance", number(mean_over_faces(appraisal, &optics::Response::reflectance))},
-        {"transmittance", number(mean_over_faces(appraisal, &optics::Response::transmittance))},
-        {"absorptance", number(mean_over_faces(appraisal, &optics::Response::absorptance))},
+        {"reflectance", json_number(mean_over_faces(appraisal, &optics::Response::reflectance))},
+        {"transmittance",
+         json_number(mean_over_faces(appraisal, &optics::Response::transmittance))},
+        {"absorptance", json_number(mean_over_faces(appraisal, &optics::Response::absorptance))},
         {"light_load", light_load(appraisal)},
         {"part", part_json(design, appraisal)},
         {"around", around(appraisal)},

@@ -6,27 +6,19 @@
 #include <stdexcept>
 #include <string>
 
+#include "present/json_values.hpp"
+
 namespace stillcoat::present {
 namespace {
 
 using Json = nlohmann::ordered_json;
 
-/// The library would write a number that is not finite as null; here that is our mistake.
-Json number(double value) {
-    if (!std::isfinite(value)) throw std::logic_error("a result is not a finite number");
-    return value;
-}
-
-Json number_or_null(const std::optional<double>& value) {
-    return value ? number(*value) : Json(nullptr);
-}
-
 Json text_or_null(const std::string& text) { return text.empty() ? Json(nullptr) : Json(text); }
 
 Json pair_json(const std::optional<assess::MirrorPair>& pair) {
     if (!pair) return nullptr;
-    return {{"round_trip_loss", number(pair->round_trip_loss)},
-            {"finesse", number_or_null(pair->finesse)}};
+    return {{"round_trip_loss", json_number(pair->round_trip_loss)},
+            {"finesse", json_number_or_null(pair->finesse)}};
 }
 
 Json rear_layers(const stack::MirrorRear& rear) {
@@ -37,12 +29,12 @@ Json rear_layers(const stack::MirrorRear& rear) {
         list.push_back(
             {{"number", ++count},
              {"material", layer.material},
-             {"reference_thickness_m", number(layer.reference_thickness)},
-             {"thickness_m", number(layer.thickness)},
-             {"quarter_waves", number(layer.quarter_waves)},
-             {"refractive_index", number(optical.index.value)},
+             {"reference_thickness_m", json_number(layer.reference_thickness)},
+             {"thickness_m", json_number(layer.thickness)},
+             {"quarter_waves", json_number(layer.quarter_waves)},
+             {"refractive_index", json_number(optical.index.value)},
              {"extinction_coefficient",
-              optical.extinction_known ? number(optical.extinction.value) : Json(nullptr)}});
+              optical.extinction_known ? json_number(optical.extinction.value) : Json(nullptr)}});
     }
     return list;
 }
@@ -58,15 +50,15 @@ Json polarisation_of_part(const assess::PartView& view, bool lower_limit) {
     document["absorptance_is_lower_limit"] = nullptr;
     if (!view.response) return document;
     const optics::PartResponse& r = *view.response;
-    document["reflectance"] = number(r.reflectance);
-    document["transmittance"] = number(r.transmittance);
+    document["reflectance"] = json_number(r.reflectance);
+    document["transmittance"] = json_number(r.transmittance);
     if (std::isfinite(r.log_transmittance)) document["log_transmittance"] = r.log_transmittance;
     if (!view.absorptance_missing.empty()) return document;
-    document["absorptance"] = number(r.absorptance);
-    document["loss"] = number(r.loss);
-    document["front_absorptance"] = number(r.front_absorptance);
-    document["rear_absorptance"] = number(r.rear_absorptance);
-    document["substrate_absorptance"] = number(r.substrate_absorptance);
+    document["absorptance"] = json_number(r.absorptance);
+    document["loss"] = json_number(r.loss);
+    document["front_absorptance"] = json_number(r.front_absorptance);
+    document["rear_absorptance"] = json_number(r.rear_absorptance);
+    document["substrate_absorptance"] = json_number(r.substrate_absorptance);
     document["absorptance_is_lower_limit"] = lower_limit;
     return document;
 }
@@ -75,11 +67,11 @@ Json polarisation_of_part(const assess::PartView& view, bool lower_limit) {
 
 Json losses_json(const assess::FaceLosses& losses) {
     const bool low = losses.absorptance_is_lower_limit || losses.scatter_is_lower_limit;
-    return {{"scatter", number_or_null(losses.scatter)},
+    return {{"scatter", json_number_or_null(losses.scatter)},
             {"scatter_is_lower_limit",
              losses.scatter ? Json(losses.scatter_is_lower_limit) : Json(nullptr)},
             {"scatter_not_given_because", text_or_null(losses.scatter_missing)},
-            {"total", number_or_null(losses.total)},
+            {"total", json_number_or_null(losses.total)},
             {"total_is_lower_limit", losses.total ? Json(low) : Json(nullptr)},
             {"pair", pair_json(losses.pair)},
             {"pair_without_scatter", pair_json(losses.pair_without_scatter)}};
@@ -92,9 +84,9 @@ void add_surface_keys(Json& mirror, const stack::Design& design) {
         from = design.mirror.roughness->from;
         to = design.mirror.roughness->to;
     }
-    mirror["roughness_rms_m"] = number_or_null(rms);
-    mirror["roughness_from_per_m"] = number_or_null(from);
-    mirror["roughness_to_per_m"] = number_or_null(to);
+    mirror["roughness_rms_m"] = json_number_or_null(rms);
+    mirror["roughness_from_per_m"] = json_number_or_null(from);
+    mirror["roughness_to_per_m"] = json_number_or_null(to);
     mirror["scatter_source"] =
         text_or_null(design.mirror.scatter ? design.mirror.scatter->source : std::string());
 }
@@ -116,8 +108,8 @@ Json part_json(const stack::Design& design, const assess::Appraisal& appraisal) 
             {"passes",
              design.rear_face->passes == stack::Passes::amplitudes ? "amplitudes" : "intensities"},
             {"rear_medium", design.rear_face->medium},
-            {"rear_medium_index", number(rear.medium_index.value)},
-            {"plate_thickness_m", number(rear.plate_thickness)},
+            {"rear_medium_index", json_number(rear.medium_index.value)},
+            {"plate_thickness_m", json_number(rear.plate_thickness)},
             {"rear_layers", rear_layers(rear)},
             {"polarisations", std::move(faces)}};
 }
